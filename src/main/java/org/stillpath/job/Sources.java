@@ -1,0 +1,36 @@
+package org.stillpath.job;
+
+import org.stillpath.problem.Place;
+
+/**
+ * What a job may name besides itself: shipped media and the user's own files. Implemented by the floor that reads files;
+ * the engine never opens one itself.
+ */
+public interface Sources {
+    /**
+     * A YAML document: a shipped one by its name ({@code rods/parabolic}), or a file of the user's own ({@code
+     * ./mine.yaml}).
+     *
+     * @param name as the job has it
+     * @param asked where the job has it
+     * @return the document's top mapping, its places naming that document
+     * @throws org.stillpath.problem.ProblemException if there is no such document (near names are offered), it may not be
+     *     read, or is not sound YAML
+     */
+    Node.Mapping document(String name, Place asked);
+
+    /**
+     * A CSV table.
+     *
+     * @param name path relative to the document that names it, as it stands there
+     * @param asked where it stands
+     * @return the table
+     * @throws org.stillpath.problem.ProblemException if it may not be read or is not a sound table
+     */
+    Table table(String name, Place asked);
+
+    /** Sources for callers without files: whatever is asked for is a fault that says so. */
+    static Sources none() {
+        return NoSources.INSTANCE;
+    }
+}

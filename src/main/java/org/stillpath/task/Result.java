@@ -1,0 +1,42 @@
+package org.stillpath.task;
+
+import java.util.Collections;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Map;
+
+/**
+ * What a task found, in SI, as data.
+ *
+ * @param task name of the task
+ * @param title the job's title; empty where it has none
+ * @param headline the answer as one plain sentence for people, with units and digits that the accuracy supports
+ * @param quantities named values in the order in which they should be read
+ * @param rays traced rays in the order given; empty for tasks without rays
+ * @param tables further tables, written as CSV
+ * @param figures figures as data; empty where none was asked for
+ * @param warnings what makes the result doubtful or was assumed, in words
+ * @param cautions what can hurt, in words
+ * @param accuracyReached whether every error estimate is within the asked accuracy; if not, the exit status is 3
+ */
+public record Result(
+        String task,
+        String title,
+        String headline,
+        Map<String, Quantity> quantities,
+        List<RayRow> rays,
+        List<Table> tables,
+        List<Figure> figures,
+        List<String> warnings,
+        List<String> cautions,
+        boolean accuracyReached) {
+
+    public Result {
+        quantities = Collections.unmodifiableMap(new LinkedHashMap<>(quantities));
+        rays = List.copyOf(rays);
+        tables = List.copyOf(tables);
+        figures = List.copyOf(figures);
+        warnings = List.copyOf(warnings);
+        cautions = List.copyOf(cautions);
+    }
+}
