@@ -12,8 +12,8 @@ public sealed interface Quantity {
      * @param error the program's own estimate of the numerical error of {@code value}, in the same unit; how far the
      *     digits can be trusted, not the physics
      */
-    record Number(double value, String unit, double error) implements Quantity {
-        public Number {
+    record Amount(double value, String unit, double error) implements Quantity {
+        public Amount {
             if (!Double.isFinite(value) || !(error >= 0)) {
                 throw new IllegalArgumentException("value must be finite, error not negative: " + value + ", " + error);
             }
@@ -27,8 +27,8 @@ public sealed interface Quantity {
      * @param unit SI unit symbol
      * @param error error estimate that holds for each of them
      */
-    record Numbers(double[] values, String unit, double error) implements Quantity {
-        public Numbers {
+    record Amounts(double[] values, String unit, double error) implements Quantity {
+        public Amounts {
             values = values.clone();
         }
 
@@ -40,7 +40,7 @@ public sealed interface Quantity {
 
         @Override
         public boolean equals(Object o) {
-            return o instanceof Numbers n && Arrays.equals(values, n.values) && unit.equals(n.unit) && error == n.error;
+            return o instanceof Amounts n && Arrays.equals(values, n.values) && unit.equals(n.unit) && error == n.error;
         }
 
         @Override
@@ -50,7 +50,7 @@ public sealed interface Quantity {
 
         @Override
         public String toString() {
-            return "Numbers[" + Arrays.toString(values) + " " + unit + " ± " + error + "]";
+            return "Amounts[" + Arrays.toString(values) + " " + unit + " ± " + error + "]";
         }
     }
 
