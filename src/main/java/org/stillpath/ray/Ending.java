@@ -1,0 +1,32 @@
+package org.stillpath.ray;
+
+/** Where a ray that met all surfaces ends. */
+public sealed interface Ending {
+    /**
+     * At the first crossing of a plane of constant z after the last surface; the point where the search begins is not
+     * counted.
+     *
+     * @param z metres, job's coordinates
+     */
+    record AtZ(double z) implements Ending {}
+
+    /**
+     * At a geometric length from the start.
+     *
+     * @param length metres, positive
+     */
+    record AtLength(double length) implements Ending {}
+
+    /**
+     * At an optical length from the start.
+     *
+     * @param opticalLength metres, positive
+     */
+    record AtOpticalLength(double opticalLength) implements Ending {}
+
+    /** At the last surface, before that surface acts. */
+    record AtLastSurface() implements Ending {}
+
+    /** Directly behind the last surface, after it has acted. */
+    record BehindLastSurface() implements Ending {}
+}

@@ -1,0 +1,587 @@
+package org.stillpath.ray;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Locale;
+import java.util.Objects;
+import org.jspecify.annotations.Nullable;
+import org.stillpath.formula.Order;
+import org.stillpath.geometry.Surface;
+import org.stillpath.geometry.Vector;
+import org.stillpath.medium.IndexField;
+import org.stillpath.medium.Level;
+import org.stillpath.medium.Seam;
+
+/**
+ * Traces rays through a train to an ending.
+ *
+ * <p>Each ray is computed twice where an equation had to be integrated, the second time with a tenth of the tolerance: the
+ * second run is the result, and what lies between the two, with the rounding along the way, is its error estimate. That
+ * doubles the cost, and buys an estimate that comes from the computation. A ray whose estimate exceeds the asked accuracy is
+ * computed again, twice at most, with tolerances a hundred times smaller.
+ */
+public final class Tracer {
+    private static final double EPSILON = 0x1p-53;
+    private static final int TIGHTENINGS = 2;
+    private static final int PIECES = 1_000_000;
+
+    private final Train train;
+    private final Ending ending;
+    private final Settings settings;
+    private final Propagator.Maker engine;
+
+    /**
+     * What is asked for besides the end of a ray.
+     *
+     * @param accuracy of positions against the distance from first to last point, of optical lengths against themselves, of
+     *     directions in radians
+     * @param transfer whether the 4×4 ray-transfer matrix is carried along
+     * @param trail whether the places passed are kept, for drawing
+     */
+    public record Settings(double accuracy, boolean transfer, boolean trail) {
+        public Settings {
+            if (!(accuracy >= 1e-13 && accuracy < 1)) {
+                throw new IllegalArgumentException("accuracy must be from 1e-13 to below 1: " + accuracy);
+            }
+        }
+
+        /** The same with another choice about the trail. */
+        public Settings withTrail(boolean kept) {
+            return new Settings(accuracy, transfer, kept);
+        }
+    }
+
+    /** A tracer for one train and ending. */
+    public Tracer(Train train, Ending ending, Settings settings, Propagator.Maker engine) {
+        this.train = train;
+        this.ending = ending;
+        this.settings = settings;
+        this.engine = engine;
+        boolean last = ending instanceof Ending.AtLastSurface || ending instanceof Ending.BehindLastSurface;
+        if (last && train.elements().isEmpty()) {
+            throw new IllegalArgumentException("an ending at the last surface needs a surface");
+        }
+    }
+
+    /** Traces rays, in the order given. */
+    public List<Traced> trace(List<RayStart> starts) {
+        List<Traced> ends = new ArrayList<>(starts.size());
+        for (RayStart start : starts) {
+            ends.add(trace(start));
+        }
+        return ends;
+    }
+
+    /** Traces one ray. */
+    public Traced trace(RayStart start) {
+        double tolerance = 0.1 * settings.accuracy;
+        Run loose = new Run(start, tolerance);
+        loose.go();
+        if (!loose.integrated) {
+            return loose.traced(loose.errors(loose), 0);
+        }
+        long evaluations = loose.propagator.evaluations();
+        @Nullable Traced result = null;
+        for (int i = 0; i <= TIGHTENINGS; i++) {
+            tolerance *= 0.1;
+            Run tight = new Run(start, tolerance);
+            tight.go();
+            evaluations += tight.propagator.evaluations();
+            result = tight.traced(tight.errors(loose), evaluations);
+            if (result.accurate()) {
+                return result;
+            }
+            loose = tight;
+            tolerance *= 0.1;
+        }
+        return Objects.requireNonNull(result);
+    }
+
+    /** Length of the scene that a ray from this start sees, metres: what positions and steps are judged against. */
+    double scale(RayStart start) {
+        double scale = 0;
+        Vector from = start.position();
+        for (Element e : train.elements()) {
+            scale = Math.max(scale, e.surface().vertex().minus(from).norm());
+            if (e.surface().whole()) {
+                scale = Math.max(scale, 2 / e.surface().form().curvature());
+            }
+        }
+        if (ending instanceof Ending.AtZ at) {
+            scale = Math.max(scale, Math.abs(at.z() - from.z()));
+        } else if (ending instanceof Ending.AtLength at) {
+            scale = Math.max(scale, at.length());
+        } else if (ending instanceof Ending.AtOpticalLength at) {
+            scale = Math.max(scale, at.opticalLength());
+        }
+        if (scale == 0) {
+            for (Element e : train.elements()) {
+                double c = e.surface().form().curvature();
+                scale = Math.max(scale, c > 0 ? 1 / c : 0);
+                scale = Math.max(scale, e.action() instanceof Action.ThinLens lens ? Math.abs(lens.focalLength()) : 0);
+            }
+        }
+        return scale > 0 ? scale : 1;
+    }
+
+    /** One pass of one ray at one tolerance. */
+    private final class Run {
+        private static final double REACH = 100;
+
+        private final RayStart start;
+        private final double scale;
+        private final double limit;
+        private final Propagator propagator;
+        private final Crossing crossing = new Crossing();
+        private final Flow flow = new Flow();
+        private final Trail trail;
+        private final double[] y;
+        private final double[] rate;
+        private double[] first = new double[0];
+        private IndexField field;
+        private Status status = Status.LOST;
+        private int element = -1;
+        private String note = "";
+        private boolean integrated;
+        private double drift;
+        private double placeError;
+        private double angleError;
+
+        Run(RayStart start, double tolerance) {
+            this.start = start;
+            this.scale = scale(start);
+            this.limit = REACH * scale;
+            this.propagator = engine.make(tolerance, scale);
+            this.trail = settings.trail ? Trail.kept() : Trail.none();
+            boolean lens = train.elements().stream().anyMatch(e -> e.action() instanceof Action.ThinLens);
+            this.y = new double[State.size(settings.transfer || lens ? State.TRANSFER_COLUMNS : 0)];
+            this.rate = new double[y.length];
+            this.field = train.from();
+        }
+
+        void go() {
+            if (!launch()) {
+                return;
+            }
+            List<Element> elements = train.elements();
+            for (int i = 0; i < elements.size(); i++) {
+                element = i;
+                if (!reach(
+                        new Target.OnSurface(elements.get(i).surface()),
+                        i,
+                        elements.get(i).surface())) {
+                    return;
+                }
+                if (i == elements.size() - 1 && ending instanceof Ending.AtLastSurface) {
+                    arrive();
+                    return;
+                }
+                if (!act(elements.get(i), i)) {
+                    return;
+                }
+            }
+            element = -1;
+            finish();
+        }
+
+        private boolean launch() {
+            Vector q = start.position();
+            y[0] = q.x();
+            y[1] = q.y();
+            y[2] = q.z();
+            trail.add(y[0], y[1], y[2]);
+            double[] g = new double[3];
+            for (Level l : field.limits()) {
+                if (l.value(y[0], y[1], y[2], g) < 0) {
+                    end(Status.OUTSIDE, "the ray starts outside " + l.describe());
+                    y[3] = start.direction().x();
+                    y[4] = start.direction().y();
+                    y[5] = start.direction().z();
+                    first = y.clone();
+                    return false;
+                }
+            }
+            boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
+            double n = defined ? flow.index() : 1;
+            y[3] = n * start.direction().x();
+            y[4] = n * start.direction().y();
+            y[5] = n * start.direction().z();
+            placeError = 2 * EPSILON * q.norm();
+            angleError = 2 * EPSILON;
+            if (!defined) {
+                first = y.clone();
+                end(Status.OUTSIDE, undefined());
+                return false;
+            }
+            columns();
+            first = y.clone();
+            return true;
+        }
+
+        /** δx, δy, δpx, δpy on the start plane of constant z, with p·δp = ½∇n²·δq; columns of a level ray are across it. */
+        private void columns() {
+            if (State.columns(y) == 0) {
+                return;
+            }
+            double pz = y[5];
+            double[] force = {flow.samples().gx[0], flow.samples().gy[0]};
+            for (int c = 0; c < State.TRANSFER_COLUMNS; c++) {
+                int at = State.COLUMNS + State.COLUMN * c;
+                if (c < 2) {
+                    y[at + c] = 1;
+                    y[at + 5] = pz == 0 ? 0 : force[c] / pz;
+                } else {
+                    y[at + 3 + c - 2] = 1;
+                    y[at + 5] = pz == 0 ? 0 : -y[3 + c - 2] / pz;
+                }
+            }
+        }
+
+        /** Brings the ray to a target; says so, or ends it. {@code index} is that of the surface, −1 for the ending. */
+        private boolean reach(Target target, int index, @Nullable Surface surface) {
+            double trifle = Departure.ON * scale;
+            if (surface != null && !leaves(index) && Math.abs(target.value(y)) <= trifle * target.steepness(y, 1)) {
+                if (target.accepts(y)) {
+                    return true;
+                }
+            }
+            if (field.uniform() && field.limits().isEmpty()) {
+                return straight(target, surface);
+            }
+            return curved(target, surface);
+        }
+
+        /**
+         * Whether the ray stands on the surface that it looks for and must leave it first: it has just passed the same closed
+         * surface or mirror, or starts on a closed surface inside it.
+         */
+        private boolean leaves(int i) {
+            List<Element> elements = train.elements();
+            Surface surface = elements.get(i).surface();
+            if (i > 0) {
+                Element before = elements.get(i - 1);
+                boolean same = before.surface().frame().equals(surface.frame())
+                        && before.surface().form().equals(surface.form());
+                return same && (surface.whole() || before.action() instanceof Action.Reflect);
+            }
+            if (!surface.whole()) {
+                return false;
+            }
+            int passes = 0;
+            for (Element e : elements) {
+                boolean same = e.surface().frame().equals(surface.frame())
+                        && e.surface().form().equals(surface.form());
+                passes += same && !(e.action() instanceof Action.Reflect) ? 1 : 0;
+            }
+            return passes % 2 == 1;
+        }
+
+        private boolean straight(Target target, @Nullable Surface surface) {
+            double n = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+            Vector d = new Vector(y[3] / n, y[4] / n, y[5] / n);
+            double s;
+            if (surface != null) {
+                boolean standing = Math.abs(target.value(y)) <= Departure.ON * scale * target.steepness(y, 1);
+                double least = standing ? 10 * Departure.ON * scale : 0;
+                s = surface.firstCrossing(new Vector(y[0], y[1], y[2]), d, least, limit);
+            } else {
+                s = -target.value(y) / (target.rate(y, n) / n);
+                if (target instanceof Target.AtZ && !(s > Departure.ON * scale)) {
+                    s = Double.NaN;
+                }
+            }
+            flow.rate(field, y, rate);
+            if (!(s <= limit)) {
+                flow.shift(y, rate, scale / n);
+                trail.add(y[0], y[1], y[2]);
+                end(surface != null ? Status.MISSED : Status.LOST, surface != null ? missed() : lost());
+                return false;
+            }
+            if (s < 0) {
+                end(Status.LOST, "the length at which the ray was to end was passed before its last surface");
+                return false;
+            }
+            flow.shift(y, rate, s / n);
+            flow.polish(y, field, target, rate);
+            trail.add(y[0], y[1], y[2]);
+            travelled(s);
+            return true;
+        }
+
+        private boolean curved(Target target, @Nullable Surface surface) {
+            integrated = true;
+            Seams seams = new Seams(field, y, rate, flow, scale);
+            double travelledBefore = y[State.LENGTH];
+            for (int piece = 0; piece < PIECES; piece++) {
+                Target[] targets = seams.targets(target, y[State.LENGTH] + limit);
+                int met = propagator.advance(y, field.piece(seams.cells()), targets, trail);
+                if (met == 0) {
+                    travelled(y[State.LENGTH] - travelledBefore);
+                    drifted();
+                    return true;
+                }
+                if (met == 1) {
+                    end(surface != null ? Status.MISSED : Status.LOST, surface != null ? missed() : lost());
+                    return false;
+                }
+                if (met < 0) {
+                    end(
+                            met == Propagator.UNDEFINED ? Status.OUTSIDE : Status.LOST,
+                            met == Propagator.UNDEFINED ? undefined() : "the step became too small " + where());
+                    return false;
+                }
+                if (met < 2 + seams.limits()) {
+                    end(Status.OUTSIDE, "it left " + ((Target.OnLevel) targets[met]).describe() + " " + where());
+                    return false;
+                }
+                seams.enter(y, rate);
+            }
+            end(Status.LOST, "it crossed more than " + PIECES + " seams of its medium");
+            return false;
+        }
+
+        private boolean act(Element e, int i) {
+            Surface surface = e.surface();
+            double r = surface.distanceFromAxis(y[0], y[1], y[2]);
+            if (r > surface.aperture() * (1 + 4 * EPSILON)) {
+                end(
+                        Status.CLIPPED,
+                        String.format(
+                                Locale.ROOT,
+                                "surfaces[%d] is met %.6g mm from its axis, its aperture is %.6g mm",
+                                i,
+                                1e3 * r,
+                                1e3 * surface.aperture()));
+                return false;
+            }
+            double n1 = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+            double c1 = Math.abs(new Target.OnSurface(surface).rate(y, n1))
+                    / (n1 * new Target.OnSurface(surface).steepness(y, n1));
+            Crossing.Outcome outcome;
+            IndexField into = e.into();
+            if (e.action() instanceof Action.Refract refract) {
+                outcome = crossing.refract(y, surface, field, into, refract.followTotalReflection());
+            } else if (e.action() instanceof Action.Reflect) {
+                outcome = crossing.reflect(y, surface, field);
+            } else if (e.action() instanceof Action.ThinLens lens) {
+                outcome = crossing.thinLens(y, surface, lens.focalLength(), field, start.parallel());
+            } else {
+                outcome = Crossing.Outcome.PASSED;
+            }
+            switch (outcome) {
+                case TOTAL -> {
+                    end(Status.TOTALLY_REFLECTED, "beyond the critical angle at surfaces[" + i + "]");
+                    return false;
+                }
+                case UNDEFINED -> {
+                    String why = into.explain(y[0], y[1], y[2]);
+                    end(Status.OUTSIDE, why.isEmpty() ? undefined() : why + " " + where());
+                    return false;
+                }
+                case PASSED -> field = into;
+                case REFLECTED -> {}
+            }
+            if (!(e.action() instanceof Action.Stop)) {
+                double n2 = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+                double c2 = Math.abs(new Target.OnSurface(surface).rate(y, n2))
+                        / (n2 * new Target.OnSurface(surface).steepness(y, n2));
+                double curvature = surface.form().curvature();
+                placeError /= Math.max(c1, 1e-8);
+                angleError = angleError * Math.max(1, n1 * c1 / (n2 * Math.max(c2, 1e-8)))
+                        + (placeError * curvature * Math.abs(n2 * c2 - n1 * c1) + 2 * EPSILON * n1)
+                                / (n2 * Math.max(c2, 1e-8));
+            }
+            return true;
+        }
+
+        private void finish() {
+            if (ending instanceof Ending.BehindLastSurface) {
+                arrive();
+                return;
+            }
+            Target target;
+            if (ending instanceof Ending.AtZ at) {
+                target = new Target.AtZ(at.z());
+            } else if (ending instanceof Ending.AtLength at) {
+                target = new Target.AtLength(at.length());
+            } else if (ending instanceof Ending.AtOpticalLength at) {
+                target = new Target.AtOpticalLength(at.opticalLength());
+            } else {
+                throw new IllegalStateException("an ending at the last surface needs a surface");
+            }
+            if (!(ending instanceof Ending.AtZ) && target.value(y) > 0) {
+                end(Status.LOST, "the length at which the ray was to end was passed before its last surface");
+                return;
+            }
+            if (reach(target, -1, null)) {
+                arrive();
+            }
+        }
+
+        private void arrive() {
+            status = Status.ARRIVED;
+            element = -1;
+        }
+
+        private void end(Status how, String why) {
+            status = how;
+            note = why;
+        }
+
+        private String missed() {
+            return "the ray does not meet surfaces[" + element + "]";
+        }
+
+        private String lost() {
+            return String.format(Locale.ROOT, "the ray had not ended after %.6g m", y[State.LENGTH]);
+        }
+
+        private String undefined() {
+            // the state is the last sound one: what is wrong lies just ahead of it
+            for (double ahead = 0; ahead <= 1e-2 * scale; ahead = ahead == 0 ? 1e-15 * scale : 4 * ahead) {
+                double n = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+                String why = field.explain(y[0] + ahead * y[3] / n, y[1] + ahead * y[4] / n, y[2] + ahead * y[5] / n);
+                if (!why.isEmpty()) {
+                    return why + " " + where();
+                }
+            }
+            return "the index is undefined " + where();
+        }
+
+        private String where() {
+            return String.format(Locale.ROOT, "at (%.6g, %.6g, %.6g) mm", 1e3 * y[0], 1e3 * y[1], 1e3 * y[2]);
+        }
+
+        private void travelled(double s) {
+            double size = Math.abs(y[0]) + Math.abs(y[1]) + Math.abs(y[2]);
+            placeError += angleError * s + 2 * EPSILON * (size + s);
+        }
+
+        /** Takes note of how far |p| has drifted from n since it was last set. */
+        private void drifted() {
+            if (flow.sample(field, y[0], y[1], y[2], Order.VALUE)) {
+                double pp = y[3] * y[3] + y[4] * y[4] + y[5] * y[5];
+                drift = Math.max(drift, Math.abs(pp / (1 + flow.samples().value[0]) - 1));
+            }
+        }
+
+        Traced.Errors errors(Run other) {
+            double place = 0;
+            double angle = 0;
+            double optical = 0;
+            double length = 0;
+            if (other.status != status) {
+                place = scale;
+                angle = 1;
+                optical = scale;
+                length = scale;
+            } else if (other != this) {
+                place = distance(y, other.y, 0, 1);
+                double n = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+                angle = distance(y, other.y, 3, n);
+                optical = Math.abs(State.opticalLength(y) - State.opticalLength(other.y));
+                length = Math.abs(y[State.LENGTH] - other.y[State.LENGTH]);
+            }
+            double n = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+            return new Traced.Errors(
+                    place + placeError,
+                    angle + angleError + drift,
+                    optical + n * placeError + 4 * EPSILON * Math.abs(State.opticalLength(y)),
+                    length + placeError + 4 * EPSILON * y[State.LENGTH],
+                    drift);
+        }
+
+        Traced traced(Traced.Errors errors, long evaluations) {
+            boolean defined = flow.sample(field, y[0], y[1], y[2], Order.VALUE);
+            double n = defined ? flow.index() : Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+            double across = new Vector(y[0], y[1], y[2]).minus(start.position()).norm();
+            double accuracy = settings.accuracy;
+            boolean accurate = status != Status.ARRIVED
+                    || (errors.position() <= accuracy * Math.max(across, y[State.LENGTH] * 1e-3)
+                            && errors.direction() <= accuracy
+                            && errors.opticalLength() <= accuracy * Math.abs(State.opticalLength(y)));
+            return new Traced(status, element, y, first, n, errors, accurate, note, trail.points(), evaluations);
+        }
+    }
+
+    private static double distance(double[] a, double[] b, int at, double unit) {
+        double dx = a[at] - b[at];
+        double dy = a[at + 1] - b[at + 1];
+        double dz = a[at + 2] - b[at + 2];
+        return Math.sqrt(dx * dx + dy * dy + dz * dz) / unit;
+    }
+
+    /** The cells of a field's seams that a ray is in, and the targets that bound them. */
+    private static final class Seams {
+        private final List<Seam> seams;
+        private final List<Level> limits;
+        private final int[] cells;
+        private final Flow flow;
+        private final IndexField field;
+        private final double scale;
+        private final double[] gradient = new double[3];
+
+        Seams(IndexField field, double[] y, double[] rate, Flow flow, double scale) {
+            this.field = field;
+            this.flow = flow;
+            this.seams = field.seams();
+            this.limits = field.limits();
+            this.scale = scale;
+            this.cells = new int[seams.size()];
+            enter(y, rate);
+        }
+
+        int limits() {
+            return limits.size();
+        }
+
+        int[] cells() {
+            return cells;
+        }
+
+        /** Finds the cells that the ray is in or, standing on a knot, is about to enter. */
+        void enter(double[] y, double[] rate) {
+            for (int i = 0; i < cells.length; i++) {
+                Seam seam = seams.get(i);
+                double u = seam.coordinate().value(y[0], y[1], y[2], gradient);
+                double steep =
+                        Math.sqrt(gradient[0] * gradient[0] + gradient[1] * gradient[1] + gradient[2] * gradient[2]);
+                double trifle = Departure.ON * scale * steep;
+                int cell = seam.cell(u);
+                boolean onLower = cell > 0 && u - seam.knot(cell - 1) <= trifle;
+                boolean onUpper = cell < seam.count() && seam.knot(cell) - u <= trifle;
+                if (onLower || onUpper) {
+                    double slope = gradient[0] * y[3] + gradient[1] * y[4] + gradient[2] * y[5];
+                    if (slope == 0 && flow.rate(field, y, rate)) {
+                        double[] ahead = y.clone();
+                        flow.shift(ahead, rate, 1e-4 * scale);
+                        slope = seam.coordinate().value(ahead[0], ahead[1], ahead[2], gradient) - u;
+                    }
+                    int knot = onLower ? cell - 1 : cell;
+                    cell = slope > 0 ? knot + 1 : knot;
+                }
+                cells[i] = cell;
+            }
+        }
+
+        /** The goal first, then the length limit, the limits of the field, and the knots around the cells. */
+        Target[] targets(Target goal, double limit) {
+            List<Target> targets = new ArrayList<>();
+            targets.add(goal);
+            targets.add(new Target.AtLength(limit));
+            for (Level l : limits) {
+                targets.add(new Target.OnLevel(l, 0));
+            }
+            for (int i = 0; i < cells.length; i++) {
+                Seam seam = seams.get(i);
+                if (cells[i] > 0) {
+                    targets.add(new Target.OnLevel(seam.coordinate(), seam.knot(cells[i] - 1)));
+                }
+                if (cells[i] < seam.count()) {
+                    targets.add(new Target.OnLevel(seam.coordinate(), seam.knot(cells[i])));
+                }
+            }
+            return targets.toArray(Target[]::new);
+        }
+    }
+}
