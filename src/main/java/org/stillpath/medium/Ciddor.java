@@ -2,7 +2,6 @@ package org.stillpath.medium;
 
 import java.util.ArrayList;
 import java.util.List;
-import java.util.Locale;
 
 /**
  * The refractivity of moist air after P. E. Ciddor, "Refractive index of air: new equations for the visible and near
@@ -122,33 +121,25 @@ public final class Ciddor {
     public List<String> warnings(double wavelength) {
         List<String> list = new ArrayList<>();
         if (wavelength < SHORTEST || wavelength > LONGEST) {
-            list.add(String.format(
-                    Locale.ROOT,
-                    "the wavelength %.6g nm lies outside the range of Ciddor 1996 for air, 300 nm to 1690 nm",
-                    wavelength / 1e-9));
+            list.add(outside("wavelength", Words.number(wavelength * 1e9) + " nm", "300 nm to 1690 nm"));
         }
         double t = temperature - ZERO_CELSIUS;
         if (t < -40 || t > 100) {
-            list.add(String.format(
-                    Locale.ROOT,
-                    "the temperature %.6g degC lies outside the range of Ciddor 1996 for air, -40 degC to 100 degC",
-                    t));
+            list.add(outside("temperature", Words.number(t) + " degC", "-40 degC to 100 degC"));
         }
         if (pressure < 80e3 || pressure > 120e3) {
-            list.add(String.format(
-                    Locale.ROOT,
-                    "the pressure %.6g kPa lies outside the range of Ciddor 1996 for air, 80 kPa to 120 kPa",
-                    pressure / 1e3));
+            list.add(outside("pressure", Words.number(pressure / 1e3) + " kPa", "80 kPa to 120 kPa"));
         }
-        if (vapourPressure > saturationPressure(temperature) * 1.001) {
-            list.add(String.format(
-                    Locale.ROOT,
-                    "the vapour pressure %.6g Pa is above saturation, %.6g Pa at %.6g degC",
-                    vapourPressure,
-                    saturationPressure(temperature),
-                    t));
+        double saturation = saturationPressure(temperature);
+        if (vapourPressure > saturation * 1.001) {
+            list.add("the vapour pressure " + Words.number(vapourPressure) + " Pa is above saturation, "
+                    + Words.number(saturation) + " Pa at " + Words.number(t) + " degC");
         }
         return List.copyOf(list);
+    }
+
+    private static String outside(String what, String value, String range) {
+        return "the " + what + " " + value + " lies outside the range of Ciddor 1996 for air, " + range;
     }
 
     /**

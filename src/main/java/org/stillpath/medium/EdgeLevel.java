@@ -14,9 +14,9 @@ record EdgeLevel(Along along, double edge, boolean upper) implements Level {
         if (!upper) {
             return u - edge;
         }
-        gradient[0] = -gradient[0];
-        gradient[1] = -gradient[1];
-        gradient[2] = -gradient[2];
+        gradient[0] = 0 - gradient[0];
+        gradient[1] = 0 - gradient[1];
+        gradient[2] = 0 - gradient[2];
         return edge - u;
     }
 
