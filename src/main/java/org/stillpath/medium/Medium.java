@@ -1,0 +1,85 @@
+package org.stillpath.medium;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Locale;
+import java.util.Optional;
+import org.stillpath.geometry.Frame;
+import org.stillpath.geometry.Vector;
+
+/**
+ * A named medium of a job: what its index is, in which frame, and how far it may be believed. Immutable. It becomes an
+ * {@link IndexField} once the wavelength and the frame are known.
+ */
+public sealed interface Medium permits UniformMedium, AirMedium, FieldMedium {
+    /** Origin, axis, validity, source and warnings. */
+    Declaration declaration();
+
+    /**
+     * The medium at one wavelength, in a frame.
+     *
+     * @param wavelength vacuum wavelength in metres; NaN is allowed where {@link #needsWavelength} is false
+     * @param frame where the medium's own frame lies in the job, from {@link #frame}
+     * @throws IllegalArgumentException if the medium needs a wavelength and none is given
+     */
+    IndexField field(double wavelength, Frame frame);
+
+    /** Whether the index depends on the wavelength, so that the job must name one. */
+    boolean needsWavelength();
+
+    /** Its name in the job. */
+    default String name() {
+        return declaration().name();
+    }
+
+    /** Origin of its frame in the job's coordinates (metres), where it overrides the train's. */
+    default Optional<Vector> origin() {
+        return declaration().origin();
+    }
+
+    /** Direction of its z axis in the job's coordinates, where it overrides the train's. */
+    default Optional<Vector> axis() {
+        return declaration().axis();
+    }
+
+    /** Where it was published; empty where nothing is said. */
+    default String source() {
+        return declaration().source();
+    }
+
+    /** What was assumed, or is doubtful, whatever the wavelength. */
+    default List<String> warnings() {
+        return declaration().warnings();
+    }
+
+    /**
+     * What is doubtful at one wavelength, besides {@link #warnings()}: a wavelength outside the range that the medium was
+     * published for.
+     */
+    default List<String> warningsAt(double wavelength) {
+        List<String> list = new ArrayList<>();
+        declaration().range().ifPresent(r -> {
+            if (wavelength < r.shortest() || wavelength > r.longest()) {
+                list.add(String.format(
+                        Locale.ROOT,
+                        "the wavelength %s nm lies outside the range of medium `%s`, %s nm to %s nm",
+                        Words.number(wavelength * 1e9),
+                        name(),
+                        Words.number(r.shortest() * 1e9),
+                        Words.number(r.longest() * 1e9)));
+            }
+        });
+        return List.copyOf(list);
+    }
+
+    /**
+     * The frame of the medium in the job's coordinates: the given origin and the job's axes, unless the medium says
+     * otherwise.
+     *
+     * @param defaultOrigin where the train puts its origin, metres
+     */
+    default Frame frame(Vector defaultOrigin) {
+        Vector o = origin().orElse(defaultOrigin);
+        return axis().map(a -> Frame.along(o, a)).orElseGet(() -> Frame.at(o));
+    }
+}

@@ -1,0 +1,148 @@
+package org.stillpath.medium;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Locale;
+import org.stillpath.formula.Order;
+import org.stillpath.formula.Samples;
+
+/**
+ * A quantity tabulated along one coordinate and joined by a spline.
+ *
+ * <p>Every knot is a seam: a cubic spline's third derivative jumps there even in its smoothest form, which would cost a
+ * high-order integrator its order if it stepped across.
+ */
+public final class Profile implements ScalarField {
+    private final Along along;
+    private final Spline spline;
+    private final List<String> warnings;
+
+    private Profile(Along along, Spline spline, List<String> warnings) {
+        this.along = along;
+        this.spline = spline;
+        this.warnings = warnings;
+    }
+
+    /**
+     * A profile along a coordinate.
+     *
+     * @param spline the quantity in SI against the coordinate in metres; for {@link Along#R} and {@link Along#RHO} its
+     *     knots must not be negative
+     * @param shown what has to be added to a value of the spline to show it in a message: 1 where it holds n − 1
+     */
+    public static Profile of(Along along, Spline spline, double shown) {
+        if (along.isDistance() && spline.first() < 0) {
+            throw new IllegalArgumentException("knots along a distance must not be negative: " + spline.first());
+        }
+        List<String> told = new ArrayList<>();
+        Spline.Overshoot over = spline.overshoot();
+        if (over.cells() > 0) {
+            told.add(String.format(
+                    Locale.ROOT,
+                    "the %s leaves the range of its data by %.3g at %s = %s, between two knots%s; "
+                            + "`interpolate: monotone` would not",
+                    spline.interpolation().word() + (spline.interpolation() == Interpolation.CLAMPED ? " spline" : ""),
+                    over.amount(),
+                    along.word(),
+                    Words.length(over.place()),
+                    over.cells() > 1 ? " (and in " + (over.cells() - 1) + " other places)" : ""));
+        }
+        if (along.isDistance() && spline.first() == 0) {
+            double slope = spline.slope(0, 0);
+            double span = spline.last() - spline.first();
+            double range = range(spline);
+            if (Math.abs(slope) * span > 1e-9 * range) {
+                told.add(String.format(
+                        Locale.ROOT,
+                        "the slope at %s = 0 is %.3g 1/mm, so that the profile has a tip on the axis; "
+                                + "`interpolate: clamped` makes it flat there",
+                        along.word(),
+                        slope * 1e-3));
+            }
+        }
+        for (int c : new int[] {Spline.BELOW, spline.knots().length - 1}) {
+            double edge = c < 0 ? spline.first() : spline.last();
+            double rate = spline.slope(spline.cell(edge), edge) / spline.value(edge);
+            if (spline.beyond() == Beyond.EXPONENTIAL
+                    && (c < 0 ? rate < 0 : rate > 0)
+                    && !(along.isDistance() && edge == 0)) {
+                told.add(String.format(
+                        Locale.ROOT,
+                        "beyond %s = %s the exponential grows away from the value %.9g at the edge",
+                        along.word(),
+                        Words.length(edge),
+                        spline.value(edge) + shown));
+            }
+        }
+        return new Profile(along, spline, List.copyOf(told));
+    }
+
+    /** The coordinate that the table runs along. */
+    public Along along() {
+        return along;
+    }
+
+    /** The table. */
+    public Spline spline() {
+        return spline;
+    }
+
+    @Override
+    public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
+        for (int i = 0; i < count; i++) {
+            double u = along.at(x[i], y[i], z[i]);
+            int c = spline.cell(u);
+            out.value[i] = spline.value(c, u);
+            if (order != Order.VALUE) {
+                along.spread(u, spline.slope(c, u), spline.curvature(c, u), x[i], y[i], z[i], order, out, i);
+            }
+        }
+    }
+
+    @Override
+    public List<Level> limits() {
+        if (spline.beyond() != Beyond.FAULT) {
+            return List.of();
+        }
+        List<Level> list = new ArrayList<>();
+        if (!(along.isDistance() && spline.first() == 0)) {
+            list.add(new EdgeLevel(along, spline.first(), false));
+        }
+        list.add(new EdgeLevel(along, spline.last(), true));
+        return List.copyOf(list);
+    }
+
+    @Override
+    public List<Seam> seams(double wavelength) {
+        double[] knots = spline.knots();
+        // a distance never passes below 0
+        int from = along.isDistance() && knots[0] == 0 ? 1 : 0;
+        return List.of(new Seam(new AlongLevel(along), java.util.Arrays.copyOfRange(knots, from, knots.length)));
+    }
+
+    @Override
+    public String explain(double x, double y, double z, double wavelength) {
+        double u = along.at(x, y, z);
+        if (spline.beyond() == Beyond.FAULT && (u < spline.first() || u > spline.last())) {
+            return along.word() + " = " + Words.length(u) + " is outside the table, which runs from "
+                    + Words.length(spline.first()) + " to " + Words.length(spline.last())
+                    + "; `beyond:` says what holds there";
+        }
+        return "";
+    }
+
+    @Override
+    public List<String> warnings() {
+        return warnings;
+    }
+
+    private static double range(Spline spline) {
+        double low = Double.POSITIVE_INFINITY;
+        double high = Double.NEGATIVE_INFINITY;
+        for (double v : spline.values()) {
+            low = Math.min(low, v);
+            high = Math.max(high, v);
+        }
+        return high - low;
+    }
+}

@@ -1,0 +1,52 @@
+package org.stillpath.medium;
+
+import java.util.List;
+import org.stillpath.formula.Order;
+import org.stillpath.formula.Samples;
+
+/**
+ * A quantity as a function of place in a medium's own frame (metres): a formula, a profile, a grid. What the quantity is
+ * (an index less one, a temperature) is known to the medium that holds it. Implementations are immutable and may be
+ * called from several threads at once.
+ */
+public interface ScalarField {
+    /**
+     * Samples the quantity at the first {@code count} points.
+     *
+     * @param x coordinates in metres of the medium's frame; likewise {@code y} and {@code z}
+     * @param wavelength vacuum wavelength in metres; NaN where none is needed
+     * @param order what is wanted; arrays of {@code out} beyond it are left as they are
+     * @param out receives values, gradients and Hessians in SI; {@code value} is NaN where the quantity is undefined
+     */
+    void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out);
+
+    /** Whether the quantity is the same everywhere. */
+    default boolean isConstant() {
+        return false;
+    }
+
+    /** Whether the wavelength matters. */
+    default boolean needsWavelength() {
+        return false;
+    }
+
+    /** Margins of the region where the quantity is known, in the medium's frame; each is positive inside. */
+    default List<Level> limits() {
+        return List.of();
+    }
+
+    /** Where the quantity or a derivative of it jumps, in the medium's frame. */
+    default List<Seam> seams(double wavelength) {
+        return List.of();
+    }
+
+    /** Says in words why the quantity is undefined at a point of the medium's frame; empty text where it is defined. */
+    default String explain(double x, double y, double z, double wavelength) {
+        return "";
+    }
+
+    /** What was assumed, or is doubtful, about the quantity, in words. */
+    default List<String> warnings() {
+        return List.of();
+    }
+}
