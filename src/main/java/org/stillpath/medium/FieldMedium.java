@@ -25,7 +25,7 @@ public record FieldMedium(Declaration declaration, ScalarField scalar, boolean f
         PlacedIndex placed = new PlacedIndex(scalar, fromOne, nu, wavelength, frame, declaration.valid());
         if (scalar.isConstant()) {
             Scratch s = new Scratch().point(0, 0, 0);
-            placed.sampleExcess(s.x, s.y, s.z, 1, Order.VALUE, s.samples);
+            placed.sample(s.x, s.y, s.z, 1, Order.VALUE, s.samples);
             double excess = s.samples.value[0];
             if (!Double.isNaN(excess)) {
                 // N = √(1 + e) − 1 without cancellation

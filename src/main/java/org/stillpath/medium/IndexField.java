@@ -30,25 +30,6 @@ public interface IndexField {
         return false;
     }
 
-    /**
-     * Whether {@link #sampleExcess} keeps digits that n² would lose: the field is known as a refractivity N = n − 1, and
-     * n² − 1 = N(2 + N) is formed from that.
-     */
-    default boolean thin() {
-        return false;
-    }
-
-    /**
-     * The same as {@link #sample}, but with n² − 1 in place of n² in {@code value}: for air and other media whose index
-     * is near 1. Derivatives are the same.
-     */
-    default void sampleExcess(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
-        sample(x, y, z, count, order, out);
-        for (int i = 0; i < count; i++) {
-            out.value[i] -= 1;
-        }
-    }
-
     /** Margins of the region where the field is valid: each is positive inside. Empty: valid everywhere. */
     default List<Level> limits() {
         return List.of();

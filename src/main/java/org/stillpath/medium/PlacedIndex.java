@@ -66,17 +66,14 @@ final class PlacedIndex implements IndexField {
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
-        fill(x, y, z, count, order, out, false);
-    }
-
-    @Override
-    public boolean thin() {
-        return fromOne;
-    }
-
-    @Override
-    public void sampleExcess(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
-        fill(x, y, z, count, order, out, true);
+        if (moved) {
+            Scratch s = scratch.get().with(count);
+            carry(x, y, z, count, s);
+            scalar.sample(s.x, s.y, s.z, count, wavelength, order, out);
+        } else {
+            scalar.sample(x, y, z, count, wavelength, order, out);
+        }
+        fill(count, order, out);
     }
 
     @Override
@@ -109,14 +106,8 @@ final class PlacedIndex implements IndexField {
         return ", at [" + Words.length(x) + ", " + Words.length(y) + ", " + Words.length(z) + "]";
     }
 
-    private void fill(double[] x, double[] y, double[] z, int count, Order order, Samples out, boolean excess) {
-        if (moved) {
-            Scratch s = scratch.get().with(count);
-            carry(x, y, z, count, s);
-            scalar.sample(s.x, s.y, s.z, count, wavelength, order, out);
-        } else {
-            scalar.sample(x, y, z, count, wavelength, order, out);
-        }
+    /** Turns samples of the scalar into samples of n² − 1, in place. */
+    private void fill(int count, Order order, Samples out) {
         double k = 1 + excessFactor;
         for (int i = 0; i < count; i++) {
             double f = out.value[i];
@@ -126,7 +117,7 @@ final class PlacedIndex implements IndexField {
             if (!(n > 0 && n < Double.POSITIVE_INFINITY)) {
                 out.value[i] = Double.NaN;
             } else {
-                out.value[i] = excess ? refractivity * (2 + refractivity) : n * n;
+                out.value[i] = refractivity * (2 + refractivity);
             }
             if (order == Order.VALUE) {
                 continue;

@@ -20,25 +20,7 @@ record UniformIndex(double refractivity, List<Level> limits) implements IndexFie
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
-        fill((1 + refractivity) * (1 + refractivity), count, order, out);
-    }
-
-    @Override
-    public boolean uniform() {
-        return true;
-    }
-
-    @Override
-    public boolean thin() {
-        return true;
-    }
-
-    @Override
-    public void sampleExcess(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
-        fill(refractivity * (2 + refractivity), count, order, out);
-    }
-
-    private static void fill(double value, int count, Order order, Samples out) {
+        double value = refractivity * (2 + refractivity);
         for (int i = 0; i < count; i++) {
             out.value[i] = value;
             if (order != Order.VALUE) {
@@ -55,5 +37,10 @@ record UniformIndex(double refractivity, List<Level> limits) implements IndexFie
                 out.hzz[i] = 0;
             }
         }
+    }
+
+    @Override
+    public boolean uniform() {
+        return true;
     }
 }

@@ -61,7 +61,7 @@ class CiddorTest {
     void builtInAirKeepsTheDigitsOfItsRefractivity() {
         IndexField field = AirMedium.builtIn().field(633e-9, Frame.JOB);
         Scratch s = new Scratch();
-        field.sampleExcess(s.x, s.y, s.z, 1, org.stillpath.formula.Order.VALUE, s.samples);
+        field.sample(s.x, s.y, s.z, 1, org.stillpath.formula.Order.VALUE, s.samples);
         double nu = AirMedium.laboratory().refractivity(633e-9);
         assertThat(field.uniform()).isTrue();
         assertThat(s.samples.value[0]).isEqualTo(nu * (2 + nu));
