@@ -11,6 +11,7 @@ import org.stillpath.geometry.Vector;
  * @param state the state at the end, see {@link State}, with four Jacobi columns where a transfer was asked for
  * @param start the state at the start
  * @param index refractive index at the end
+ * @param force ½∇n² at the end, in the medium in which the ray ended, three components, 1/m
  * @param errors estimated errors
  * @param accurate whether the errors are within the asked accuracy
  * @param note in words, why it ended early and where; empty where it arrived
@@ -23,6 +24,7 @@ public record Traced(
         double[] state,
         double[] start,
         double index,
+        double[] force,
         Errors errors,
         boolean accurate,
         String note,
@@ -45,6 +47,13 @@ public record Traced(
         state = state.clone();
         start = start.clone();
         trail = trail.clone();
+        force = force.clone();
+    }
+
+    /** ½∇n² at the end (a copy). */
+    @Override
+    public double[] force() {
+        return force.clone();
     }
 
     /** The state at the end (a copy). */
@@ -94,10 +103,9 @@ public record Traced(
      * The 4×4 ray-transfer matrix by rows: d(x, y, px, py at the end)/d(x, y, px, py at the start), both on planes of constant
      * z through the ray's ends, p the index times the direction cosines.
      *
-     * @param force ½∇n² at the end, three components, 1/m
      * @throws IllegalStateException if no transfer was carried
      */
-    public double[][] transfer(double[] force) {
+    public double[][] transfer() {
         if (!hasTransfer()) {
             throw new IllegalStateException("no transfer matrix was carried along this ray");
         }

@@ -6,6 +6,7 @@ import java.util.Locale;
 import java.util.Objects;
 import org.jspecify.annotations.Nullable;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Surface;
 import org.stillpath.geometry.Vector;
 import org.stillpath.medium.IndexField;
@@ -492,7 +493,9 @@ public final class Tracer {
         }
 
         Traced traced(Traced.Errors errors, long evaluations) {
-            boolean defined = flow.sample(field, y[0], y[1], y[2], Order.VALUE);
+            boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
+            Samples at = flow.samples();
+            double[] force = defined ? new double[] {at.gx[0], at.gy[0], at.gz[0]} : new double[3];
             double n = defined ? flow.index() : Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
             double across = new Vector(y[0], y[1], y[2]).minus(start.position()).norm();
             double accuracy = settings.accuracy;
@@ -500,7 +503,7 @@ public final class Tracer {
                     || (errors.position() <= accuracy * Math.max(across, y[State.LENGTH] * 1e-3)
                             && errors.direction() <= accuracy
                             && errors.opticalLength() <= accuracy * Math.abs(State.opticalLength(y)));
-            return new Traced(status, element, y, first, n, errors, accurate, note, trail.points(), evaluations);
+            return new Traced(status, element, y, first, n, force, errors, accurate, note, trail.points(), evaluations);
         }
     }
 

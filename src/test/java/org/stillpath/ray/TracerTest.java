@@ -77,7 +77,7 @@ class TracerTest {
         Train rod = new Train(
                 air, List.of(refract(Surface.plane(0), Fields.rod(1.6, g)), refract(Surface.plane(length), air)));
         Traced end = trace(rod, new Ending.BehindLastSurface(), Vector.ZERO, Vector.Z);
-        double[][] m = end.transfer(new double[3]);
+        double[][] m = end.transfer();
         assertThat(m[0][0]).isCloseTo(0, within(1e-12));
         assertThat(m[2][0]).isCloseTo(-480, within(1e-9));
         assertThat(m[0][2]).isCloseTo(1 / 480.0, within(1e-14));
