@@ -114,10 +114,7 @@ final class LensTask implements Task {
             double scale = axial.scale();
             boolean afocal = g.afocal(scale);
             constants(axial, afocal);
-            String headline = afocal
-                    ? "The train is afocal: angular magnification "
-                            + Display.of(g.angularMagnification(), "1", axial.error())
-                    : "Effective focal length " + said("effective-focal-length");
+            String headline = constants(axial, afocal);
             if (object.isPresent()) {
                 headline = conjugates(axial, object.get(), afocal).orElse(headline);
             }
@@ -152,7 +149,9 @@ final class LensTask implements Task {
                     accurate);
         }
 
-        private void constants(Axial axial, boolean afocal) {
+        /** The Gaussian constants; returns the sentence that says the chief of them. */
+        private String constants(Axial axial, boolean afocal) {
+            String sentence = "";
             Gaussian g = axial.mean();
             double e = axial.error();
             double scale = axial.scale();
@@ -160,15 +159,12 @@ final class LensTask implements Task {
                 double power = g.power();
                 double relative = e / (scale * Math.abs(power));
                 put("power", power, "1/m", e / scale);
-                put("effective-focal-length", 1 / power, "m", relative / Math.abs(power));
+                sentence = "Effective focal length "
+                        + said(put("effective-focal-length", 1 / power, "m", relative / Math.abs(power)));
                 put("front-focal-length", g.before() / power, "m", g.before() * relative / Math.abs(power));
                 put("rear-focal-length", g.behind() / power, "m", g.behind() * relative / Math.abs(power));
                 double focalError = e / Math.abs(power);
-                put(
-                        "back-focal-distance",
-                        g.backFocalDistance(),
-                        "m",
-                        g.behind() * focalError + Math.abs(g.backFocalDistance()) * relative);
+                put("back-focal-distance", g.backFocalDistance(), "m", backFocalError(axial));
                 put(
                         "front-focal-distance",
                         g.frontFocalDistance(),
@@ -193,8 +189,18 @@ final class LensTask implements Task {
             }
             quantities.put("afocal", new Quantity.Word(afocal ? "yes" : "no"));
             if (afocal) {
-                put("angular-magnification", g.angularMagnification(), "1", e * Math.max(1, g.before() / g.behind()));
+                double magnification = g.angularMagnification();
+                double error = e * Math.max(1, g.before() / g.behind());
+                sentence = "The train is afocal: angular magnification "
+                        + said(put("angular-magnification", magnification, "1", error));
             }
+            return sentence;
+        }
+
+        private static double backFocalError(Axial axial) {
+            Gaussian g = axial.mean();
+            double power = Math.abs(g.power());
+            return axial.error() / power * (g.behind() + Math.abs(g.backFocalDistance()) / axial.scale());
         }
 
         /** Image of the object; returns the sentence that answers the job, if there is a better one than the focal length. */
@@ -208,7 +214,7 @@ final class LensTask implements Task {
                     return Optional.empty();
                 }
                 double back = g.backFocalDistance();
-                quantities.put("image-distance", quantities.get("back-focal-distance"));
+                put("image-distance", back, "m", backFocalError(axial));
                 quantities.put("image-kind", new Quantity.Word(kind(back, scale)));
                 return Optional.empty();
             }
@@ -223,22 +229,21 @@ final class LensTask implements Task {
             double image = g.imageDistance(thing.distance());
             double magnification = g.magnification(thing.distance());
             double slope = e * (reach / scale) / below;
-            put(
+            Quantity.Amount at = put(
                     "image-distance",
                     image,
                     "m",
                     g.behind() * e * reach / below + g.behind() * above / below * slope + ROUNDING * Math.abs(image));
-            put("magnification", magnification, "1", Math.abs(magnification) * slope + ROUNDING);
+            Quantity.Amount times =
+                    put("magnification", magnification, "1", Math.abs(magnification) * slope + ROUNDING);
             String kind = kind(image, scale);
             String orientation = magnification > 0 ? "erect" : "inverted";
             quantities.put("image-kind", new Quantity.Word(kind));
             quantities.put("image-orientation", new Quantity.Word(orientation));
-            return Optional.of(
-                    kind.equals("real")
-                            ? "Real, " + orientation + " image " + said("image-distance") + " behind the last vertex, "
-                                    + said("magnification") + " times as large"
-                            : "Virtual, " + orientation + " image " + saidPositive("image-distance")
-                                    + " before the last vertex, " + said("magnification") + " times as large");
+            boolean real = kind.equals("real");
+            String distance = Display.of(Math.abs(image), "m", at.error()).toString();
+            return Optional.of((real ? "Real, " : "Virtual, ") + orientation + " image " + distance
+                    + (real ? " behind" : " before") + " the last vertex, " + said(times) + " times as large");
         }
 
         private static String kind(double distance, double scale) {
@@ -333,19 +338,15 @@ final class LensTask implements Task {
             return Double.isFinite(least) ? least : 1;
         }
 
-        private void put(String name, double value, String unit, double error) {
+        private Quantity.Amount put(String name, double value, String unit, double error) {
             // an exact zero with a sign is no finding
-            quantities.put(name, new Quantity.Amount(value == 0 ? 0 : value, unit, error));
+            Quantity.Amount amount = new Quantity.Amount(value == 0 ? 0 : value, unit, error);
+            quantities.put(name, amount);
+            return amount;
         }
 
-        private String said(String name) {
-            Quantity.Amount q = (Quantity.Amount) quantities.get(name);
+        private static String said(Quantity.Amount q) {
             return Display.of(q.value(), q.unit(), q.error()).toString();
-        }
-
-        private String saidPositive(String name) {
-            Quantity.Amount q = (Quantity.Amount) quantities.get(name);
-            return Display.of(Math.abs(q.value()), q.unit(), q.error()).toString();
         }
     }
 
