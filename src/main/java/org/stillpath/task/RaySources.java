@@ -95,6 +95,9 @@ final class RaySources {
         Optional<Value> sampling = s.find("sampling");
         if (sampling.isPresent()) {
             Pupil pupil = Pupil.read(sampling.get());
+            // a filled beam is round: the axis across it may stay in the job, a count beside the sampling may not
+            s.find("across").ifPresent(v -> v.word("x", "y", "z"));
+            s.find("count").ifPresent(v -> v.fault("\"sampling\" says how many rays there are; leave \"count\" out"));
             s.finish();
             along.ifPresent(a -> {
                 Vector e1 = first(a);
