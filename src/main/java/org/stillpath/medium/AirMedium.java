@@ -44,4 +44,9 @@ public record AirMedium(Declaration declaration, Ciddor law) implements Medium {
         list.addAll(law.warnings(wavelength));
         return List.copyOf(list);
     }
+
+    @Override
+    public Medium with(Declaration other) {
+        return new AirMedium(other, law);
+    }
 }

@@ -121,19 +121,19 @@ public final class Ciddor {
     public List<String> warnings(double wavelength) {
         List<String> list = new ArrayList<>();
         if (wavelength < SHORTEST || wavelength > LONGEST) {
-            list.add(outside("wavelength", Words.number(wavelength * 1e9) + " nm", "300 nm to 1690 nm"));
+            list.add(outside("wavelength", Told.wavelength(wavelength), "300 nm to 1690 nm"));
         }
         double t = temperature - ZERO_CELSIUS;
         if (t < -40 || t > 100) {
-            list.add(outside("temperature", Words.number(t) + " degC", "-40 degC to 100 degC"));
+            list.add(outside("temperature", Told.number(t) + " degC", "-40 degC to 100 degC"));
         }
         if (pressure < 80e3 || pressure > 120e3) {
-            list.add(outside("pressure", Words.number(pressure / 1e3) + " kPa", "80 kPa to 120 kPa"));
+            list.add(outside("pressure", Told.number(pressure / 1e3) + " kPa", "80 kPa to 120 kPa"));
         }
         double saturation = saturationPressure(temperature);
         if (vapourPressure > saturation * 1.001) {
-            list.add("the vapour pressure " + Words.number(vapourPressure) + " Pa is above saturation, "
-                    + Words.number(saturation) + " Pa at " + Words.number(t) + " degC");
+            list.add("the vapour pressure " + Told.number(vapourPressure) + " Pa is above saturation, "
+                    + Told.number(saturation) + " Pa at " + Told.number(t) + " degC");
         }
         return List.copyOf(list);
     }

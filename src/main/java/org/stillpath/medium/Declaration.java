@@ -45,16 +45,6 @@ public record Declaration(
         return new Declaration(name, origin, axis, valid, range, source, all);
     }
 
-    /** The same in a frame with a given origin. */
-    public Declaration withOrigin(Vector place) {
-        return new Declaration(name, Optional.of(place), axis, valid, range, source, warnings);
-    }
-
-    /** The same in a frame with a given axis. */
-    public Declaration withAxis(Vector direction) {
-        return new Declaration(name, origin, Optional.of(direction), valid, range, source, warnings);
-    }
-
     /**
      * Vacuum wavelengths between which a medium was published.
      *

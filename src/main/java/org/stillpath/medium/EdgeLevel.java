@@ -22,6 +22,6 @@ record EdgeLevel(Along along, double edge, boolean upper) implements Level {
 
     @Override
     public String describe() {
-        return along.word() + (upper ? " < " : " > ") + Words.length(edge) + ", the edge of the table";
+        return along.word() + (upper ? " < " : " > ") + Told.length(edge) + ", the edge of the table";
     }
 }

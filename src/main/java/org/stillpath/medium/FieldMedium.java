@@ -46,4 +46,9 @@ public record FieldMedium(Declaration declaration, ScalarField scalar, boolean f
         list.addAll(scalar.warnings());
         return List.copyOf(list);
     }
+
+    @Override
+    public Medium with(Declaration other) {
+        return new FieldMedium(other, scalar, fromOne, relativeToAir);
+    }
 }

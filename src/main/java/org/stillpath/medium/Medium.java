@@ -2,7 +2,6 @@ package org.stillpath.medium;
 
 import java.util.ArrayList;
 import java.util.List;
-import java.util.Locale;
 import java.util.Optional;
 import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Vector;
@@ -26,6 +25,9 @@ public sealed interface Medium permits UniformMedium, AirMedium, FieldMedium {
 
     /** Whether the index depends on the wavelength, so that the job must name one. */
     boolean needsWavelength();
+
+    /** The same medium with another declaration. */
+    Medium with(Declaration other);
 
     /** Its name in the job. */
     default String name() {
@@ -60,13 +62,8 @@ public sealed interface Medium permits UniformMedium, AirMedium, FieldMedium {
         List<String> list = new ArrayList<>();
         declaration().range().ifPresent(r -> {
             if (wavelength < r.shortest() || wavelength > r.longest()) {
-                list.add(String.format(
-                        Locale.ROOT,
-                        "the wavelength %s nm lies outside the range of medium `%s`, %s nm to %s nm",
-                        Words.number(wavelength * 1e9),
-                        name(),
-                        Words.number(r.shortest() * 1e9),
-                        Words.number(r.longest() * 1e9)));
+                list.add("the wavelength " + Told.wavelength(wavelength) + " lies outside the range of medium `"
+                        + name() + "`, " + Told.wavelength(r.shortest()) + " to " + Told.wavelength(r.longest()));
             }
         });
         return List.copyOf(list);

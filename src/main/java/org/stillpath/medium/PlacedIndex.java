@@ -103,7 +103,7 @@ final class PlacedIndex implements IndexField {
     }
 
     private static String at(double x, double y, double z) {
-        return ", at [" + Words.length(x) + ", " + Words.length(y) + ", " + Words.length(z) + "]";
+        return ", at [" + Told.length(x) + ", " + Told.length(y) + ", " + Told.length(z) + "]";
     }
 
     /** Turns samples of the scalar into samples of n² − 1, in place. */

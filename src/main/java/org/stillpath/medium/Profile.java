@@ -44,7 +44,7 @@ public final class Profile implements ScalarField {
                     spline.interpolation().word() + (spline.interpolation() == Interpolation.CLAMPED ? " spline" : ""),
                     over.amount(),
                     along.word(),
-                    Words.length(over.place()),
+                    Told.length(over.place()),
                     over.cells() > 1 ? " (and in " + (over.cells() - 1) + " other places)" : ""));
         }
         if (along.isDistance() && spline.first() == 0) {
@@ -70,7 +70,7 @@ public final class Profile implements ScalarField {
                         Locale.ROOT,
                         "beyond %s = %s the exponential grows away from the value %.9g at the edge",
                         along.word(),
-                        Words.length(edge),
+                        Told.length(edge),
                         spline.value(edge) + shown));
             }
         }
@@ -124,8 +124,8 @@ public final class Profile implements ScalarField {
     public String explain(double x, double y, double z, double wavelength) {
         double u = along.at(x, y, z);
         if (spline.beyond() == Beyond.FAULT && (u < spline.first() || u > spline.last())) {
-            return along.word() + " = " + Words.length(u) + " is outside the table, which runs from "
-                    + Words.length(spline.first()) + " to " + Words.length(spline.last())
+            return along.word() + " = " + Told.length(u) + " is outside the table, which runs from "
+                    + Told.length(spline.first()) + " to " + Told.length(spline.last())
                     + "; `beyond:` says what holds there";
         }
         return "";

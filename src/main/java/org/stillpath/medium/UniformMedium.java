@@ -36,4 +36,9 @@ public record UniformMedium(Declaration declaration, double index, boolean relat
     public boolean needsWavelength() {
         return relativeToAir;
     }
+
+    @Override
+    public Medium with(Declaration other) {
+        return new UniformMedium(other, index, relativeToAir);
+    }
 }
