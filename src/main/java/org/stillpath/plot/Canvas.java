@@ -31,6 +31,15 @@ final class Canvas {
         items.add(new Item.Stroke(new double[] {x0, x1}, new double[] {y0, y1}, pen));
     }
 
+    /** How many items there are; a place to come back to with {@link #addAt}. */
+    int count() {
+        return items.size();
+    }
+
+    void addAt(int place, Item item) {
+        items.add(place, item);
+    }
+
     void miss(String text) {
         unplaced.add(text);
     }
@@ -52,8 +61,8 @@ final class Canvas {
     }
 
     /** Label words in a box of {@link #width} by {@link #height}. */
-    void words(String text, Box box, Ink ink) {
-        words(text, box.left(), box.top() + Typeface.ASCENDER * SIZE, SIZE, Typeface.regular(), ink, true);
+    void words(String text, Box box, Ink ink, boolean halo) {
+        words(text, box.left(), box.top() + Typeface.ASCENDER * SIZE, SIZE, Typeface.regular(), ink, halo);
     }
 
     static double width(String text) {

@@ -5,7 +5,7 @@ import java.util.Locale;
 /** The colours of the house theme: four neutrals, and the set of Okabe &amp; Ito (2008), "Color universal design". */
 enum Ink {
     INK(0x222222, true),
-    GREY(0x666666, true),
+    GREY(0x5A5A5A, true),
     LIGHT(0xB0B0B0, true),
     PAPER(0xFFFFFF, true),
     BLUE(0x0072B2, false),

@@ -21,33 +21,55 @@ final class Labels {
         this.frame = frame;
     }
 
-    private record Line(Polyline points, double price) {}
+    private record Line(Polyline points, double price, Object owner) {}
 
     /**
      * A place for a label.
      *
      * @param box the room taken
      * @param price how much worse than the best place, in points of crossed line
+     * @param x the point that the label names; {@code y} likewise
      */
-    record Place(Box box, double price) {}
+    record Place(Box box, double price, double x, double y) {
+        /** Where the box is next to the point, and the point: the tie between the two. */
+        Polyline tie() {
+            double nx = Math.min(Math.max(x, box.left()), box.right());
+            double ny = Math.min(Math.max(y, box.top()), box.bottom());
+            return new Polyline(new double[] {x, nx}, new double[] {y, ny});
+        }
+
+        /** Whether the label is so far away that a thin line must tie it to its thing. */
+        boolean isTied() {
+            return tie().length() > TIED;
+        }
+    }
+
+    /** Room kept to the lines of other things, so that it is plain what a label belongs to, points. */
+    private static final double DISTANCE = 4;
+
+    /** From this distance on a label is tied to its thing by a thin line, points. */
+    private static final double TIED = 8;
+
+    /** What a label pays for each point by which it crosses the tie of another. */
+    private static final double TIE_PRICE = 5;
 
     /** Nothing may be put here. */
     void block(Box box) {
         taken.add(box);
     }
 
-    /** A label may cross this line at {@code price} for each point of its length. */
-    void line(Polyline points, double price) {
-        lines.add(new Line(points, price));
+    /** A label may cross this line at {@code price} for each point of its length; it may come close to that of its own thing. */
+    void line(Polyline points, double price, Object owner) {
+        lines.add(new Line(points, price, owner));
     }
 
-    /** Takes the best of the places; empty where none is free. */
-    Optional<Box> place(List<Place> places) {
+    /** Takes the best of the places for a label of {@code owner}; empty where none is free. */
+    Optional<Place> place(List<Place> places, Object owner) {
         Place best = null;
         double least = Double.POSITIVE_INFINITY;
         for (Place p : places) {
-            if (p.price() < least && isFree(p.box())) {
-                double price = p.price() + crossed(p.box());
+            if (p.price() < least && isFree(p)) {
+                double price = p.price() + crossed(p.box(), owner);
                 if (price < least) {
                     least = price;
                     best = p;
@@ -58,17 +80,28 @@ final class Labels {
             return Optional.empty();
         }
         taken.add(best.box());
-        return Optional.of(best.box());
+        if (best.isTied()) {
+            lines.add(new Line(best.tie(), TIE_PRICE, best));
+        }
+        return Optional.of(best);
     }
 
-    private boolean isFree(Box box) {
-        return frame.holds(box) && taken.stream().noneMatch(t -> t.meets(box, GAP));
+    private boolean isFree(Place p) {
+        if (!frame.holds(p.box()) || taken.stream().anyMatch(t -> t.meets(p.box(), GAP))) {
+            return false;
+        }
+        Polyline tie = p.tie();
+        return !p.isTied()
+                || taken.stream()
+                        .filter(t -> !t.holds(p.x(), p.y()))
+                        .allMatch(t -> t.part(tie.x()[0], tie.y()[0], tie.x()[1], tie.y()[1])
+                                .isEmpty());
     }
 
-    private double crossed(Box box) {
+    private double crossed(Box box, Object owner) {
         double price = 0;
-        Box near = box.grown(0.8);
         for (Line line : lines) {
+            Box near = box.grown(line.owner() == owner ? 0.8 : DISTANCE);
             double[] x = line.points().x();
             double[] y = line.points().y();
             double sum = 0;

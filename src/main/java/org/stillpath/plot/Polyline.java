@@ -59,6 +59,25 @@ record Polyline(double[] x, double[] y) {
         return parts;
     }
 
+    /** The parts of the line outside a box. */
+    List<Polyline> outside(Box box) {
+        List<Polyline> parts = new ArrayList<>();
+        List<double[]> run = new ArrayList<>();
+        run.add(new double[] {x[0], y[0]});
+        for (int i = 1; i < x.length; i++) {
+            Box.Part part = box.part(x[i - 1], y[i - 1], x[i], y[i]);
+            if (!part.isEmpty()) {
+                run.add(between(i, part.from()));
+                flush(run, parts);
+                run.add(between(i, part.to()));
+            }
+            run.add(new double[] {x[i], y[i]});
+        }
+        flush(run, parts);
+        parts.removeIf(p -> p.length() < 0.5);
+        return parts;
+    }
+
     private double[] between(int i, double t) {
         return new double[] {x[i - 1] + t * (x[i] - x[i - 1]), y[i - 1] + t * (y[i] - y[i - 1])};
     }

@@ -15,7 +15,7 @@ import java.awt.image.DataBufferInt;
 final class Raster {
     private static final double DOTS_PER_INCH = 200;
     private static final double HALO = 2.2;
-    private static final Color HALO_COLOUR = new Color(255, 255, 255, 200);
+    private static final Color HALO_COLOUR = new Color(255, 255, 255, 180);
 
     private final Picture picture;
 

@@ -8,11 +8,10 @@ import java.util.List;
 /**
  * A length scale: a readable unit and ticks at round values.
  *
- * @param unit unit symbol
- * @param metres the unit in metres
+ * @param unitIndex place of the unit in the table of units
  * @param ticks from below
  */
-record Scale(String unit, double metres, List<Tick> ticks) {
+record Scale(int unitIndex, List<Tick> ticks) {
     private static final String[] UNITS = {"km", "m", "mm", "µm", "nm"};
     private static final double[] SIZES = {1e3, 1, 1e-3, 1e-6, 1e-9};
 
@@ -30,6 +29,11 @@ record Scale(String unit, double metres, List<Tick> ticks) {
      * @param text number in the scale's unit
      */
     record Tick(double at, String text) {}
+
+    /** Unit symbol. */
+    String unit() {
+        return UNITS[unitIndex];
+    }
 
     /** Place of the unit for a magnitude in the tables above. */
     static int unitFor(double metres) {
@@ -58,7 +62,7 @@ record Scale(String unit, double metres, List<Tick> ticks) {
             BigDecimal value = step.multiply(BigDecimal.valueOf(k));
             ticks.add(new Tick(value.doubleValue() * size, plain(value, Math.max(step.scale(), 0))));
         }
-        return new Scale(UNITS[unit], size, ticks);
+        return new Scale(unit, ticks);
     }
 
     /** The least of 1, 2, 5 times a power of ten that is not below {@code least}. */
@@ -75,8 +79,7 @@ record Scale(String unit, double metres, List<Tick> ticks) {
     }
 
     /** The greatest length of 1, 2, 5 times a power of ten that is not above {@code most}, in metres. */
-    static Tick roundLength(double most) {
-        int unit = unitFor(most);
+    static Tick roundLength(double most, int unit) {
         BigDecimal best = step(most / SIZES[unit] / 10);
         for (int i = 0; i < 4; i++) {
             BigDecimal next = step(best.doubleValue() * 1.01);

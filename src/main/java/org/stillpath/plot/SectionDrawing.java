@@ -119,7 +119,7 @@ final class SectionDrawing {
 
     private Layout layout(Bounds b, double stripBottom) {
         boolean full = width == Width.FULL;
-        double most = full ? 215 : 160;
+        double most = full ? 195 : 160;
         double least = full ? 96 : 84;
         double plotTop = stripBottom + Axes.ABOVE;
         double left = Canvas.EDGE + 30;
@@ -198,17 +198,17 @@ final class SectionDrawing {
             return top;
         }
         double y = top + 3;
-        double right = Canvas.EDGE;
-        if (shade.isPresent()) {
-            right = ramp(shade.get(), y + Typeface.ASCENDER * Canvas.SIZE + (layout.exaggeration() == 1 ? 0 : 7));
-        }
+        double baseline = y + Typeface.ASCENDER * Canvas.SIZE;
         if (layout.exaggeration() == 1) {
+            shade.ifPresent(s -> ramp(s, baseline));
             return y + Canvas.SIZE * 1.2;
         }
         double room = barsWidth(layout);
         double edge = width.points() - Canvas.EDGE - 8;
-        if (shade.isPresent() && right + 14 > edge - room) {
-            y += Canvas.SIZE * 1.25 + 7;
+        if (shade.isPresent()) {
+            boolean beside = Canvas.EDGE + rampWidth(shade.get()) + 14 < edge - room;
+            ramp(shade.get(), beside ? y + BARS_HEIGHT - 3 : baseline);
+            y += beside ? 0 : Canvas.SIZE * 1.25 + 4;
         }
         bars(layout, edge - room, y);
         return y + BARS_HEIGHT;
@@ -217,17 +217,29 @@ final class SectionDrawing {
     private static final double BARS_HEIGHT = 27;
     private static final double RAMP_WIDTH = 44;
 
-    private double ramp(Shade s, double baseline) {
-        String unit = s.shading().unit().equals("1") ? "" : " " + s.shading().unit();
-        double x = canvas.words(
-                Canvas.clean(s.shading().quantity() + "  " + s.lowText() + unit), Canvas.EDGE, baseline, Ink.INK);
+    private static String unit(Shade s) {
+        return s.shading().unit().equals("1")
+                ? ""
+                : " " + Canvas.clean(s.shading().unit());
+    }
+
+    private static String rampStart(Shade s) {
+        return Canvas.clean(s.shading().quantity()) + "  " + s.lowText() + unit(s);
+    }
+
+    private static double rampWidth(Shade s) {
+        return Canvas.width(rampStart(s)) + RAMP_WIDTH + 8 + Canvas.width(s.highText() + unit(s));
+    }
+
+    private void ramp(Shade s, double baseline) {
+        double x = canvas.words(rampStart(s), Canvas.EDGE, baseline, Ink.INK);
         int[] colours = new int[64];
         for (int i = 0; i < colours.length; i++) {
             colours[i] = 0xFF000000 | Cividis.pale((i + 0.5) / colours.length);
         }
         double height = Typeface.CAPITAL * Canvas.SIZE + 1;
         canvas.add(new Item.Colours(x + 4, baseline - height + 0.5, RAMP_WIDTH, height, colours.length, 1, colours));
-        return canvas.words(s.highText() + Canvas.clean(unit), x + RAMP_WIDTH + 8, baseline, Ink.INK);
+        canvas.words(s.highText() + unit(s), x + RAMP_WIDTH + 8, baseline, Ink.INK);
     }
 
     private static String told(double exaggeration) {
@@ -238,11 +250,13 @@ final class SectionDrawing {
     }
 
     private static Scale.Tick barAcross(Layout layout) {
-        return Scale.roundLength(56 / layout.view().across());
+        return Scale.roundLength(
+                56 / layout.view().across(), layout.axes().across().unitIndex());
     }
 
     private static Scale.Tick barUp(Layout layout) {
-        return Scale.roundLength((BARS_HEIGHT - 7) / layout.view().up());
+        return Scale.roundLength(
+                (BARS_HEIGHT - 7) / layout.view().up(), layout.axes().up().unitIndex());
     }
 
     private static double barsWidth(Layout layout) {
@@ -275,8 +289,9 @@ final class SectionDrawing {
     private void draw(Layout layout) {
         Box plot = layout.plot();
         View view = layout.view();
-        Labels labels = new Labels(plot);
+        Labels labels = new Labels(new Box(plot.left() + 4, plot.top(), plot.right(), plot.bottom() - 1));
         shade.ifPresent(s -> canvas.add(s.colours(view, plot)));
+        int above = canvas.count();
         Map<String, List<Polyline>> contours = contours(plot, view, labels);
         List<Drawn> drawn = new ArrayList<>();
         int principal = 0;
@@ -298,6 +313,8 @@ final class SectionDrawing {
                 drawLine(d, pen, plot, light, labels);
             }
         }
+        // crosses above everything: rays end on stops and surfaces
+        drawn.stream().filter(d -> d.line().role() == Role.LOST_RAY).forEach(d -> cross(d, plot, labels));
         for (Mark mark : figure.marks()) {
             double x = view.x(mark.u());
             double y = view.y(mark.v());
@@ -307,7 +324,8 @@ final class SectionDrawing {
             }
         }
         layout.axes().draw(canvas, plot, view, Canvas.clean(figure.across()), Canvas.clean(figure.up()));
-        place(drawn, contours, plot, view, labels);
+        place(drawn, plot, view, labels);
+        contours.forEach((text, lines) -> contour(text, lines, above, labels));
     }
 
     private Map<String, List<Polyline>> contours(Box plot, View view, Labels labels) {
@@ -322,8 +340,7 @@ final class SectionDrawing {
                     .filter(l -> l.length() > 2)
                     .toList();
             for (Polyline line : lines) {
-                canvas.stroke(line, CONTOUR);
-                labels.line(line, 0.25);
+                labels.line(line, 0.25, level);
             }
             all.put(Scale.plain(level, Math.max(level.scale(), 0)), lines);
         }
@@ -364,7 +381,7 @@ final class SectionDrawing {
     private void drawLine(Drawn d, Pen pen, Box plot, Polyline light, Labels labels) {
         Role role = d.line().role();
         for (Polyline part : d.parts()) {
-            labels.line(part, price(role));
+            labels.line(part, price(role), d.line());
         }
         switch (role) {
             case MIRROR -> hatch(d, behind(d.whole(), light), plot, labels);
@@ -378,9 +395,6 @@ final class SectionDrawing {
         d.parts().forEach(part -> canvas.stroke(part, pen));
         if (role == Role.THIN_LENS) {
             tips(d, pen, plot, labels);
-        }
-        if (role == Role.LOST_RAY) {
-            cross(d, plot, labels);
         }
     }
 
@@ -432,7 +446,7 @@ final class SectionDrawing {
                 rim.add(new double[] {at[0] + nx * HATCH / 2, at[1] + ny * HATCH / 2});
             }
             if (rim.size() >= 2) {
-                labels.line(Polyline.of(rim), 2);
+                labels.line(Polyline.of(rim), 2, d.line());
             }
         }
     }
@@ -468,6 +482,10 @@ final class SectionDrawing {
                     new double[] {x, bx - end[3] * half, bx + end[3] * half},
                     new double[] {y, by + end[2] * half, by - end[2] * half},
                     pen.ink()));
+            // no other thing's label stands at the foot as if it named the arrow
+            double fx = p.x()[0];
+            double fy = p.y()[0] - end[3] * 7;
+            labels.block(new Box(fx, fy, fx, fy).grown(6));
             labels.block(new Box(Math.min(x, bx), Math.min(y, by), Math.max(x, bx), Math.max(y, by)).grown(half / 2));
         }
     }
@@ -520,13 +538,15 @@ final class SectionDrawing {
     private void cross(Drawn d, Box plot, Labels labels) {
         double x = d.whole().x()[d.whole().size() - 1];
         double y = d.whole().y()[d.whole().size() - 1];
-        Box room = new Box(x, y, x, y).grown(2.6);
+        Box room = new Box(x, y, x, y).grown(3);
         if (!plot.holds(room)) {
             return;
         }
-        Pen pen = Pen.firm(Ink.VERMILLION, 1.1);
-        canvas.segment(x - 2.4, y - 2.4, x + 2.4, y + 2.4, pen);
-        canvas.segment(x - 2.4, y + 2.4, x + 2.4, y - 2.4, pen);
+        for (Pen pen : List.of(Pen.firm(Ink.PAPER, 2.6), Pen.firm(Ink.VERMILLION, 1.2))) {
+            double arm = pen.ink() == Ink.PAPER ? 3 : 2.6;
+            canvas.segment(x - arm, y - arm, x + arm, y + arm, pen);
+            canvas.segment(x - arm, y + arm, x + arm, y - arm, pen);
+        }
         labels.block(room);
     }
 
@@ -576,19 +596,16 @@ final class SectionDrawing {
             Side.LEFT);
     private static final double[] GAPS = {2, 5, 10, 18, 30};
 
-    /** From this distance on a label is tied to its thing by a thin line, points. */
-    private static final double TIED = 8;
-
     /** A point beside which a label may stand, with the sides in order of preference. */
     private record Anchor(double x, double y, List<Side> sides) {}
 
-    private void place(List<Drawn> drawn, Map<String, List<Polyline>> contours, Box plot, View view, Labels labels) {
+    private void place(List<Drawn> drawn, Box plot, View view, Labels labels) {
         // the short and fixed ones first, those that can slide along a line last
         for (Mark mark : figure.marks()) {
             double x = view.x(mark.u());
             double y = view.y(mark.v());
             if (plot.holds(x, y)) {
-                label(mark.label(), List.of(new Anchor(x, y, AROUND)), Ink.INK, labels);
+                label(mark.label(), List.of(new Anchor(x, y, AROUND)), Ink.INK, labels, mark);
             } else if (!mark.label().isBlank()) {
                 canvas.miss(Canvas.clean(mark.label()));
             }
@@ -598,11 +615,15 @@ final class SectionDrawing {
         for (Role role : order) {
             for (Drawn d : drawn) {
                 if (d.line().role() == role) {
-                    label(d.line().label(), anchors(d), role == Role.LOST_RAY ? Ink.VERMILLION : Ink.INK, labels);
+                    label(
+                            d.line().label(),
+                            anchors(d),
+                            role == Role.LOST_RAY ? Ink.VERMILLION : Ink.INK,
+                            labels,
+                            d.line());
                 }
             }
         }
-        contours.forEach((text, lines) -> contourLabel(text, lines, labels));
     }
 
     private static List<Anchor> anchors(Drawn d) {
@@ -618,10 +639,12 @@ final class SectionDrawing {
         double[] last = longest.at(1);
         switch (d.line().role()) {
             case SURFACE, MIRROR, STOP, THIN_LENS, PLANE -> {
+                // tips of a lens reach past its ends
+                double past = d.line().role() == Role.THIN_LENS ? 4 : 0;
                 double[] upper = first[1] < last[1] ? first : last;
                 double[] lower = first[1] < last[1] ? last : first;
-                anchors.add(new Anchor(upper[0], upper[1], END_UP));
-                anchors.add(new Anchor(lower[0], lower[1], END_DOWN));
+                anchors.add(new Anchor(upper[0], upper[1] - past, END_UP));
+                anchors.add(new Anchor(lower[0], lower[1] + past, END_DOWN));
                 for (double part : new double[] {0.5, 0.25, 0.75}) {
                     double[] at = longest.at(part);
                     anchors.add(new Anchor(at[0], at[1], ALONG));
@@ -648,14 +671,13 @@ final class SectionDrawing {
         return anchors;
     }
 
-    private void label(String words, List<Anchor> anchors, Ink ink, Labels labels) {
+    private void label(String words, List<Anchor> anchors, Ink ink, Labels labels, Object owner) {
         String text = Canvas.clean(words).strip();
         if (text.isEmpty()) {
             return;
         }
         double w = Canvas.width(text);
         double h = Canvas.height();
-        Map<Box, Anchor> of = new LinkedHashMap<>();
         List<Labels.Place> places = new ArrayList<>();
         for (int a = 0; a < anchors.size(); a++) {
             Anchor anchor = anchors.get(a);
@@ -665,45 +687,41 @@ final class SectionDrawing {
                     double x = anchor.x() + side.dx * (GAPS[g] + w / 2);
                     double y = anchor.y() + side.dy * (GAPS[g] + h / 2);
                     Box box = new Box(x - w / 2, y - h / 2, x + w / 2, y + h / 2);
-                    of.putIfAbsent(box, anchor);
-                    places.add(new Labels.Place(box, 2.0 * a + GAPS[g] + 1.2 * s));
+                    places.add(new Labels.Place(box, 2.0 * a + GAPS[g] + 1.2 * s, anchor.x(), anchor.y()));
                 }
             }
         }
-        Optional<Box> box = labels.place(places);
-        if (box.isEmpty()) {
+        Optional<Labels.Place> place = labels.place(places, owner);
+        if (place.isEmpty()) {
             canvas.miss(text);
             return;
         }
-        Anchor anchor = of.get(box.get());
-        if (anchor != null) {
-            tie(anchor, box.get());
+        if (place.get().isTied()) {
+            canvas.stroke(place.get().tie(), Pen.firm(Ink.GREY, 0.4));
         }
-        canvas.words(text, box.get(), ink);
+        canvas.words(text, place.get().box(), ink, true);
     }
 
-    private void tie(Anchor anchor, Box box) {
-        double x = Math.min(Math.max(anchor.x(), box.left()), box.right());
-        double y = Math.min(Math.max(anchor.y(), box.top()), box.bottom());
-        if (Math.hypot(x - anchor.x(), y - anchor.y()) > TIED) {
-            canvas.segment(anchor.x(), anchor.y(), x, y, Pen.firm(Ink.GREY, 0.4));
-        }
-    }
-
-    private void contourLabel(String text, List<Polyline> lines, Labels labels) {
+    /** Draws the lines of one level, below everything but the shading, with a gap for their label. */
+    private void contour(String text, List<Polyline> lines, int above, Labels labels) {
         double w = Canvas.width(text) / 2;
         double h = Canvas.height() / 2;
         List<Labels.Place> places = new ArrayList<>();
         for (int l = 0; l < lines.size(); l++) {
-            for (double part : new double[] {0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8, 0.12, 0.88}) {
-                double[] at = lines.get(l).at(part);
+            for (int part = 2; part < 40; part++) {
+                double[] at = lines.get(l).at(part / 41.0);
                 Box box = new Box(at[0] - w, at[1] - h, at[0] + w, at[1] + h);
-                places.add(new Labels.Place(box, 3.0 * l));
+                places.add(new Labels.Place(box, 3.0 * l, at[0], at[1]));
             }
         }
-        Optional<Box> box = labels.place(places);
-        if (box.isPresent()) {
-            canvas.words(text, box.get(), Ink.GREY);
+        Optional<Labels.Place> place = labels.place(places, text);
+        for (Polyline line : lines) {
+            List<Polyline> parts =
+                    place.map(p -> line.outside(p.box().grown(0.5))).orElse(List.of(line));
+            parts.forEach(p -> canvas.addAt(above, new Item.Stroke(p.x(), p.y(), CONTOUR)));
+        }
+        if (place.isPresent()) {
+            canvas.words(text, place.get().box(), Ink.GREY, false);
         } else if (!lines.isEmpty()) {
             canvas.miss(text);
         }

@@ -101,7 +101,7 @@ final class Shade {
             return levels;
         }
         double range = high - low;
-        for (double least = range / 6; ; least *= 1.05) {
+        for (double least = range / 10; ; least *= 1.05) {
             BigDecimal step = Scale.step(least);
             levels.clear();
             BigDecimal start = BigDecimal.valueOf(Math.ceil((low + 0.03 * range) / step.doubleValue()));

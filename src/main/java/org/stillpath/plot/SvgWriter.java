@@ -87,7 +87,7 @@ final class SvgWriter {
         if (w.halo()) {
             attribute("stroke", Ink.PAPER.hex());
             attribute("stroke-width", "2.2");
-            attribute("stroke-opacity", "0.78");
+            attribute("stroke-opacity", "0.7");
             attribute("paint-order", "stroke");
         }
         attribute("x", number(w.x()));
