@@ -47,6 +47,8 @@ public record SectionFigure(
         SURFACE,
         /** A mirror. */
         MIRROR,
+        /** The ground of a sightline, hatched below. */
+        GROUND,
         /** An ideal thin lens, drawn as a line with tips. */
         THIN_LENS,
         /** The opaque part of a stop, or the rim of an aperture. */

@@ -1,0 +1,24 @@
+package org.stillpath.plot;
+
+import org.stillpath.task.Figure;
+import org.stillpath.task.SectionFigure;
+
+/** Draws figures: the one place that knows which class draws which kind of {@link Figure}. */
+public final class Pictures {
+    private Pictures() {}
+
+    /**
+     * Lays a figure out at one of the two widths.
+     *
+     * @param figure what to show
+     * @param width how wide; the height follows from what is shown
+     * @return the laid-out picture; the same bytes for the same data, on every machine
+     */
+    public static Picture of(Figure figure, Width width) {
+        if (figure instanceof SectionFigure section) {
+            return new SectionDrawing(section, width).picture();
+        }
+        throw new IllegalArgumentException("figure " + figure.name() + " is of a kind that nothing draws: "
+                + figure.getClass().getSimpleName());
+    }
+}
