@@ -57,65 +57,29 @@ public final class TextReport {
     }
 
     private static void rays(List<RayRow> rays, StringBuilder text) {
-        List<RayRow> shown = rays.subList(0, Math.min(rays.size(), MOST_RAYS));
-        double[] positions = new double[3 * shown.size()];
-        double[] positionErrors = new double[shown.size()];
-        double[] opticals = new double[shown.size()];
-        double[] opticalErrors = new double[shown.size()];
-        for (int i = 0; i < shown.size(); i++) {
-            RayRow ray = shown.get(i);
-            positions[3 * i] = ray.position().x();
-            positions[3 * i + 1] = ray.position().y();
-            positions[3 * i + 2] = ray.position().z();
-            opticals[i] = ray.opticalLength();
-            positionErrors[i] = ray.errors().getOrDefault("position", 0.0);
-            opticalErrors[i] = ray.errors().getOrDefault("optical-length", 0.0);
-        }
-        Column.Cells position = Column.of(positions, positionErrors, "m");
-        Column.Cells optical = Column.of(opticals, opticalErrors, "m");
-        List<List<String>> columns = new ArrayList<>();
-        columns.add(column("ray", range(shown.size())));
-        columns.add(column("status", shown.stream().map(r -> Labels.of(r.status())).toList()));
-        for (int axis = 0; axis < 3; axis++) {
-            List<String> numbers = new ArrayList<>();
-            for (int i = 0; i < shown.size(); i++) {
-                numbers.add(position.texts().get(3 * i + axis));
-            }
-            columns.add(column("xyz".charAt(axis) + " / " + position.unit(), Column.aligned(numbers)));
-        }
-        columns.add(column("optical length / " + optical.unit(), Column.aligned(optical.texts())));
-        for (int i = 0; i <= shown.size(); i++) {
-            List<String> cells = new ArrayList<>();
-            for (List<String> column : columns) {
-                int width = column.stream().mapToInt(PlainText::columns).max().orElse(0);
-                cells.add(padded(column.get(i), width));
-            }
-            line(cells, text);
-        }
-        for (int i = 0; i < shown.size(); i++) {
-            if (!shown.get(i).note().isEmpty()) {
-                text.append(PlainText.wrapped(
-                        "ray " + i + ": " + shown.get(i).note(), "  ", "  ", WIDTH));
+        RayTable table = RayTable.of(rays, MOST_RAYS);
+        List<List<String>> lines = new ArrayList<>();
+        lines.add(table.headers());
+        lines.addAll(table.rows());
+        int[] widths = new int[table.headers().size()];
+        for (List<String> cells : lines) {
+            for (int i = 0; i < widths.length; i++) {
+                widths[i] = Math.max(widths[i], PlainText.columns(cells.get(i)));
             }
         }
-        if (shown.size() < rays.size()) {
-            text.append("  and " + (rays.size() - shown.size()) + " more rays: see --json or --out\n");
+        for (List<String> cells : lines) {
+            List<String> padded = new ArrayList<>();
+            for (int i = 0; i < widths.length; i++) {
+                padded.add(padded(cells.get(i), widths[i]));
+            }
+            line(padded, text);
         }
-    }
-
-    private static List<String> range(int count) {
-        List<String> numbers = new ArrayList<>();
-        for (int i = 0; i < count; i++) {
-            numbers.add(String.valueOf(i));
+        for (String note : table.notes()) {
+            text.append(PlainText.wrapped(note, "  ", "    ", WIDTH));
         }
-        return numbers;
-    }
-
-    private static List<String> column(String header, List<String> cells) {
-        List<String> all = new ArrayList<>();
-        all.add(header);
-        all.addAll(cells);
-        return all;
+        if (table.left() > 0) {
+            text.append("  and ").append(table.left()).append(" more rays: see --json or --out\n");
+        }
     }
 
     private static void line(List<String> cells, StringBuilder text) {
