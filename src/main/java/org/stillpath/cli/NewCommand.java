@@ -15,7 +15,7 @@ import picocli.CommandLine.Parameters;
         mixinStandardHelpOptions = true,
         description = "Prints a commented starter job of a task.")
 final class NewCommand implements Callable<Integer> {
-    private static final List<String> STARTERS = List.of("trace", "lens");
+    static final List<String> STARTERS = List.of("trace", "lens");
     private static final List<String> LATER = List.of("between", "sightline", "window");
 
     private final Console console;

@@ -4,6 +4,7 @@ import java.io.PrintWriter;
 import java.nio.charset.StandardCharsets;
 import java.util.List;
 import java.util.concurrent.Callable;
+import org.stillpath.problem.Place;
 import org.stillpath.problem.Problem;
 import org.stillpath.problem.ProblemException;
 import picocli.CommandLine;
@@ -48,7 +49,7 @@ final class Program implements Callable<Integer> {
                 .setOut(new PrintWriter(console.out(), false, StandardCharsets.UTF_8))
                 .setErr(new PrintWriter(console.err(), false, StandardCharsets.UTF_8))
                 .setParameterExceptionHandler((e, given) -> refuse(e, console))
-                .setExecutionExceptionHandler((e, command, parsed) -> excuse(e, console));
+                .setExecutionExceptionHandler((e, command, parsed) -> fail(e, console));
         int status = line.execute(args);
         line.getOut().flush();
         line.getErr().flush();
@@ -73,23 +74,35 @@ final class Program implements Callable<Integer> {
         return Problem.Kind.INPUT.exitStatus();
     }
 
-    /** What is left to say when something was thrown: no stack trace ever reaches a user. */
-    static int excuse(Throwable e, Console console) {
-        if (e instanceof ProblemException wrong) {
-            return console.tell(wrong.problems());
-        }
+    private static int fail(Exception e, Console console) {
+        List<Problem> faults = e instanceof ProblemException wrong ? wrong.problems() : List.of(excuse("stillpath", e));
+        return console.tell(faults);
+    }
+
+    /**
+     * What is left to say when something was thrown that nobody meant to throw: no stack trace ever reaches a user.
+     *
+     * @param name what was being worked on
+     */
+    static Problem excuse(String name, Throwable e) {
+        Place place = Place.of(name);
         if (e instanceof OutOfMemoryError) {
-            console.say("stillpath: memory: the job needs more than the "
-                    + Runtime.getRuntime().maxMemory() / (1 << 20)
-                    + " MB that Java may use; ask for fewer rays or a smaller grid, or set JDK_JAVA_OPTIONS=-Xmx8g");
-            return Problem.Kind.INPUT.exitStatus();
+            return Problem.input(
+                    place,
+                    "",
+                    "memory: the job needs more than the " + Runtime.getRuntime().maxMemory() / (1 << 20)
+                            + " MB that Java may use; ask for fewer rays or a smaller grid, or give Java more:"
+                            + " JDK_JAVA_OPTIONS=-Xmx8g");
         }
         StackTraceElement[] trace = e.getStackTrace();
-        console.say("stillpath: this is a fault of the program, not of the job: "
-                + e.getClass().getSimpleName()
-                + (e.getMessage() == null ? "" : " (" + e.getMessage() + ")")
-                + " at " + (trace.length == 0 ? "an unknown place" : trace[0].toString())
-                + "; please report it together with the job file");
-        return Problem.Kind.ACCURACY.exitStatus();
+        return new Problem(
+                Problem.Kind.ACCURACY,
+                place,
+                "",
+                "no result, by a fault of the program and not of the job: "
+                        + e.getClass().getSimpleName()
+                        + (e.getMessage() == null ? "" : " (" + e.getMessage() + ")")
+                        + " at " + (trace.length == 0 ? "an unknown place" : trace[0].toString())
+                        + "; please report it together with the job file");
     }
 }
