@@ -46,7 +46,7 @@ record Row(String name, String value, String unit, String error) {
             return new Row(name, "unknown", "", "");
         }
         // what lies within its own error of zero is zero to a reader, in a unit of ordinary size
-        Display.Readable shown = Display.of(Math.abs(value) <= error ? 0 : value, unit, error);
+        Display.Reading shown = Display.of(Math.abs(value) <= error ? 0 : value, unit, error);
         return new Row(name, shown.number(), shown.unit(), errorText(error, unit));
     }
 
