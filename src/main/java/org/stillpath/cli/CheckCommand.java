@@ -1,0 +1,66 @@
+package org.stillpath.cli;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.concurrent.Callable;
+import org.stillpath.problem.ProblemException;
+import org.stillpath.report.PlainText;
+import org.stillpath.task.Tasks;
+import picocli.CommandLine.Command;
+import picocli.CommandLine.Option;
+import picocli.CommandLine.Parameters;
+
+/** {@code stillpath check FILE.yaml...}: says what is wrong with job and medium files, and where; computes nothing. */
+@Command(
+        name = "check",
+        mixinStandardHelpOptions = true,
+        description = "Reads job and medium files and says what is wrong and where; computes nothing.")
+final class CheckCommand implements Callable<Integer> {
+    private final Console console;
+
+    @Parameters(arity = "1..*", paramLabel = "FILE.yaml", description = "job or medium files")
+    private List<String> files = List.of();
+
+    @Option(
+            names = "--set",
+            paramLabel = "PATH=VALUE",
+            description = "override one value of the file, as for run; may be repeated")
+    private List<String> settings = new ArrayList<>();
+
+    @Option(names = "--allow-outside", description = "let files name files outside their own folder")
+    private boolean allowOutside;
+
+    CheckCommand(Console console) {
+        this.console = console;
+    }
+
+    @Override
+    public Integer call() {
+        int status = 0;
+        for (String name : files) {
+            status = Math.max(status, check(name));
+        }
+        return status;
+    }
+
+    private int check(String name) {
+        try {
+            Job job = Job.read(name, settings, allowOutside);
+            boolean medium = ShippedMedia.isMedium(job.file().root());
+            job.work((root, sources) -> {
+                if (medium) {
+                    ShippedMedia.read(root, job.name(), sources);
+                } else {
+                    Tasks.check(root, sources);
+                }
+                return root;
+            });
+            console.out().print(PlainText.of(name) + ": sound " + (medium ? "medium" : "job") + "\n");
+            return 0;
+        } catch (ProblemException e) {
+            return console.tell(e.problems());
+        } catch (RuntimeException | StackOverflowError e) {
+            return console.tell(List.of(Program.excuse(name, e)));
+        }
+    }
+}

@@ -1,0 +1,143 @@
+package org.stillpath.cli;
+
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Locale;
+import java.util.concurrent.Callable;
+import org.stillpath.formula.Order;
+import org.stillpath.formula.Samples;
+import org.stillpath.geometry.Vector;
+import org.stillpath.io.FileSources;
+import org.stillpath.job.Node;
+import org.stillpath.medium.IndexField;
+import org.stillpath.medium.Level;
+import org.stillpath.medium.Medium;
+import org.stillpath.problem.Place;
+import org.stillpath.problem.ProblemException;
+import org.stillpath.report.PlainText;
+import org.stillpath.unit.Display;
+import picocli.CommandLine.Command;
+import picocli.CommandLine.Parameters;
+
+/** {@code stillpath media [NAME]}: what ships with the program. */
+@Command(
+        name = "media",
+        mixinStandardHelpOptions = true,
+        description = {
+            "Lists the media that ship with the program; shows one: source, validity, index",
+            "at sample points."
+        })
+final class MediaCommand implements Callable<Integer> {
+    /** Vacuum wavelengths of the sample points: the lines F, d and C, a common laser, and the infrared. */
+    private static final double[] WAVELENGTHS = {486.13e-9, 587.56e-9, 632.99e-9, 656.27e-9, 1064e-9};
+
+    private static final double SAMPLE_WAVELENGTH = 587.56e-9;
+
+    private final Console console;
+
+    @Parameters(arity = "0..1", paramLabel = "NAME", description = "a medium of the list, such as rods/parabolic")
+    private String name = "";
+
+    MediaCommand(Console console) {
+        this.console = console;
+    }
+
+    @Override
+    public Integer call() {
+        try {
+            String text = name.isEmpty() ? list() : shown();
+            console.out().writeBytes(text.getBytes(StandardCharsets.UTF_8));
+            return 0;
+        } catch (ProblemException e) {
+            return console.tell(e.problems());
+        }
+    }
+
+    private static String list() {
+        StringBuilder text = new StringBuilder();
+        for (String shipped : FileSources.shipped()) {
+            if (!shipped.startsWith("demo/") && !shipped.startsWith("materials/")) {
+                text.append(shipped).append('\n');
+            }
+        }
+        return text.toString();
+    }
+
+    private String shown() {
+        Place place = Place.of("media");
+        Node.Mapping declaration = new Node.Mapping(
+                place, List.of(new Node.Entry("from", place, new Node.Scalar(place, name, false))));
+        Medium medium = ShippedMedia.read(declaration, name, FileSources.of(Path.of("media.yaml"), false));
+        StringBuilder text = new StringBuilder(PlainText.of(name)).append('\n');
+        text.append(PlainText.wrapped(
+                medium.source().isEmpty() ? "none given" : medium.source(), "  source:   ", "            ", 80));
+        IndexField field = medium.field(SAMPLE_WAVELENGTH, medium.frame(Vector.ZERO));
+        List<String> limits = field.limits().stream().map(Level::describe).toList();
+        text.append(PlainText.wrapped(
+                limits.isEmpty() ? "everywhere" : String.join(" and ", limits), "  valid:    ", "            ", 80));
+        text.append('\n');
+        if (field.uniform()) {
+            uniform(medium, text);
+        } else {
+            varying(field, text);
+        }
+        for (String warning : medium.warnings()) {
+            text.append(PlainText.wrapped(warning, "warning: ", "         ", 80));
+        }
+        return text.toString();
+    }
+
+    private static void uniform(Medium medium, StringBuilder text) {
+        text.append("  wavelength / nm   index\n");
+        double[] wavelengths = medium.needsWavelength() ? WAVELENGTHS : new double[] {SAMPLE_WAVELENGTH};
+        for (double wavelength : wavelengths) {
+            IndexField field = medium.field(wavelength, medium.frame(Vector.ZERO));
+            text.append(String.format(
+                    Locale.ROOT, "  %15.2f   %.9f%n", wavelength * 1e9, index(field, 0, 0, 0)).replace("\r", ""));
+        }
+    }
+
+    private static void varying(IndexField field, StringBuilder text) {
+        text.append("  index at 587.56 nm, from the origin of the medium's frame\n");
+        double extent = extent(field);
+        for (int axis = 0; axis < 3; axis++) {
+            List<String> cells = new ArrayList<>();
+            for (int i = 0; i <= 3; i++) {
+                double u = extent * i / 4;
+                double n = index(field, axis == 0 ? u : 0, axis == 1 ? u : 0, axis == 2 ? u : 0);
+                cells.add(String.format(
+                        Locale.ROOT,
+                        "%s %s",
+                        Display.of(u, "m", 0),
+                        Double.isNaN(n) ? "undefined" : String.format(Locale.ROOT, "%.6f", n)));
+            }
+            text.append("  ").append("xyz".charAt(axis)).append(":  ").append(String.join("   ", cells)).append('\n');
+        }
+    }
+
+    /** Half the way along x that the medium may be used, 1 mm where there is no end to it. */
+    private static double extent(IndexField field) {
+        double[] gradient = new double[3];
+        double inside = 0;
+        for (double x = 1e-6; x < 1e3; x *= 1.05) {
+            double at = x;
+            boolean valid = field.limits().stream().allMatch(limit -> limit.value(at, 0, 0, gradient) > 0)
+                    && !Double.isNaN(index(field, x, 0, 0));
+            if (!valid) {
+                // two digits read better than the exact edge
+                double digit = Math.pow(10, Math.floor(Math.log10(inside)) - 1);
+                return inside == 0 ? 1e-3 : Math.floor(inside / digit) * digit;
+            }
+            inside = x;
+        }
+        return 1e-3;
+    }
+
+    private static double index(IndexField field, double x, double y, double z) {
+        Samples out = new Samples(1);
+        field.sample(new double[] {x}, new double[] {y}, new double[] {z}, 1, Order.VALUE, out);
+        return Math.sqrt(1 + out.value[0]);
+    }
+}

@@ -1,0 +1,67 @@
+package org.stillpath.report;
+
+import java.util.ArrayList;
+import java.util.List;
+import org.stillpath.task.RayRow;
+
+/**
+ * Traced rays as a table for people: number, status, where it ended, optical length; units in the headers.
+ *
+ * @param headers column headers
+ * @param rows cells by rows, numbers padded on the left so that their points stand in one line
+ * @param left how many rays were left out at the end
+ * @param notes why rays ended early, one line a ray
+ */
+record RayTable(List<String> headers, List<List<String>> rows, int left, List<String> notes) {
+
+    /** The first {@code most} rays. */
+    static RayTable of(List<RayRow> all, int most) {
+        List<RayRow> rays = all.subList(0, Math.min(all.size(), most));
+        int count = rays.size();
+        double[] positions = new double[3 * count];
+        double[] positionErrors = new double[count];
+        double[] opticals = new double[count];
+        double[] opticalErrors = new double[count];
+        for (int i = 0; i < count; i++) {
+            RayRow ray = rays.get(i);
+            positions[3 * i] = ray.position().x();
+            positions[3 * i + 1] = ray.position().y();
+            positions[3 * i + 2] = ray.position().z();
+            opticals[i] = ray.opticalLength();
+            positionErrors[i] = ray.errors().getOrDefault("position", 0.0);
+            opticalErrors[i] = ray.errors().getOrDefault("optical-length", 0.0);
+        }
+        Column.Cells position = Column.of(positions, positionErrors, "m");
+        Column.Cells optical = Column.of(opticals, opticalErrors, "m");
+        List<List<String>> axes = new ArrayList<>();
+        for (int axis = 0; axis < 3; axis++) {
+            List<String> numbers = new ArrayList<>();
+            for (int i = 0; i < count; i++) {
+                numbers.add(position.texts().get(3 * i + axis));
+            }
+            axes.add(Column.aligned(numbers));
+        }
+        List<String> lengths = Column.aligned(optical.texts());
+        List<List<String>> rows = new ArrayList<>();
+        List<String> notes = new ArrayList<>();
+        for (int i = 0; i < count; i++) {
+            RayRow ray = rays.get(i);
+            rows.add(List.of(
+                    String.valueOf(i),
+                    Labels.of(ray.status()),
+                    axes.get(0).get(i),
+                    axes.get(1).get(i),
+                    axes.get(2).get(i),
+                    lengths.get(i)));
+            if (!ray.note().isEmpty()) {
+                notes.add("ray " + i + ": " + ray.note());
+            }
+        }
+        String unit = " / " + position.unit();
+        return new RayTable(
+                List.of("ray", "status", "x" + unit, "y" + unit, "z" + unit, "optical length / " + optical.unit()),
+                rows,
+                all.size() - count,
+                notes);
+    }
+}
