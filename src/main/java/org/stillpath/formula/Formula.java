@@ -1,0 +1,404 @@
+package org.stillpath.formula;
+
+import java.util.ArrayList;
+import java.util.Collections;
+import java.util.EnumMap;
+import java.util.EnumSet;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+import java.util.Set;
+import java.util.TreeMap;
+import org.jspecify.annotations.Nullable;
+import org.stillpath.formula.Term.Operator;
+import org.stillpath.unit.Dimension;
+
+/**
+ * A formula of the place with exact first and second derivatives, checked for dimension. Immutable and thread-safe.
+ *
+ * <p>Sampled directly it walks its operations, which is the reference and is ready at once; {@link #compiled()} makes
+ * bytecode for the same operations. Derivatives are symbolic ({@link Derivatives} says how, and how they behave on the
+ * axis), against dual numbers, which repeat the same work for every component, and against differences, which lose half
+ * the digits. They are made when they are first asked for, since many formulas never are.
+ */
+public final class Formula implements ScalarFunction {
+    /** Longest text that is read, in UTF-16 code units. */
+    public static final int LONGEST_TEXT = 4000;
+    /** Deepest nesting of parentheses, signs and powers that is read. */
+    public static final int DEEPEST_NESTING = 100;
+
+    private final Tree tree;
+    private final Dimension dimension;
+    private final List<String> arguments;
+    private final Set<Coordinate> coordinates;
+    /** Place of each of {@link #arguments} among the tree's names. */
+    private final int[] argumentPlaces;
+
+    private final Map<Order, Program> programs = new EnumMap<>(Order.class);
+
+    private Formula(Tree tree, Dimension dimension, Optional<Formula> within) {
+        this.tree = tree;
+        this.dimension = dimension;
+        EnumSet<Coordinate> used = EnumSet.noneOf(Coordinate.class);
+        TreeMap<Integer, String> mentioned = new TreeMap<>();
+        for (Term term : tree.terms()) {
+            if (term instanceof Term.Position t) {
+                used.add(t.coordinate());
+            } else if (term instanceof Term.Argument t) {
+                mentioned.put(t.index(), tree.arguments().get(t.index()));
+            }
+        }
+        coordinates = Collections.unmodifiableSet(used);
+        arguments = within.map(Formula::arguments).orElseGet(() -> List.copyOf(mentioned.values()));
+        argumentPlaces = new int[tree.arguments().size()];
+        for (int i = 0; i < argumentPlaces.length; i++) {
+            argumentPlaces[i] = arguments.indexOf(tree.arguments().get(i));
+        }
+    }
+
+    /**
+     * Reads a formula.
+     *
+     * @param text the formula, by the grammar in the package's documentation
+     * @param names what it may mention
+     * @param expected the dimension that its value must have
+     * @throws FormulaException with all faults that could be found
+     */
+    public static Formula parse(String text, Names names, Dimension expected) throws FormulaException {
+        return of(new Parser(text, names).formula(), Optional.of(expected));
+    }
+
+    /**
+     * Reads a formula of any dimension.
+     *
+     * @throws FormulaException with all faults that could be found
+     */
+    public static Formula parse(String text, Names names) throws FormulaException {
+        return of(new Parser(text, names).formula(), Optional.empty());
+    }
+
+    static Formula of(Tree tree, Optional<Dimension> expected) throws FormulaException {
+        return new Formula(tree, DimensionCheck.check(tree, expected), Optional.empty());
+    }
+
+    /** The formula as written. */
+    public String text() {
+        return tree.rootText();
+    }
+
+    /** The dimension of its value. */
+    public Dimension dimension() {
+        return dimension;
+    }
+
+    /** Names of the `with` values that it uses, in the order in which they were given. */
+    public List<String> arguments() {
+        return arguments;
+    }
+
+    /** The coordinates that it mentions. */
+    public Set<Coordinate> coordinates() {
+        return coordinates;
+    }
+
+    /** Whether it mentions a coordinate. */
+    public boolean uses(Coordinate c) {
+        return coordinates.contains(c);
+    }
+
+    /** Whether its value is the same at every place. */
+    public boolean uniform() {
+        return coordinates.isEmpty() || coordinates.equals(EnumSet.of(Coordinate.WAVELENGTH));
+    }
+
+    @Override
+    public void sample(
+            double[] x,
+            double[] y,
+            double[] z,
+            int count,
+            double[] argumentValues,
+            double wavelength,
+            Chart chart,
+            Order order,
+            Samples out) {
+        check(x, y, z, count, argumentValues, out);
+        if (count == 0) {
+            return;
+        }
+        Program program = program(order);
+        Samples[] charts = charts(program.charts(), x, y, z, count, chart, order);
+        Evaluator.run(program, x, y, z, count, argumentValues, wavelength, charts, order, out);
+    }
+
+    void check(double[] x, double[] y, double[] z, int count, double[] argumentValues, Samples out) {
+        int room = Math.min(Math.min(x.length, y.length), Math.min(z.length, out.capacity()));
+        if (count < 0 || count > room) {
+            throw new IllegalArgumentException("count must lie between 0 and the arrays' " + room + ": " + count);
+        }
+        if (argumentValues.length != arguments.size()) {
+            throw new IllegalArgumentException(
+                    "values are needed for " + arguments + ": " + argumentValues.length + " were given");
+        }
+    }
+
+    /** Samples of the charted coordinates in use, by {@link Coordinate#slot()}. */
+    static Samples[] charts(
+            Set<Coordinate> used, double[] x, double[] y, double[] z, int count, Chart chart, Order order) {
+        if (used.isEmpty()) {
+            return NO_CHARTS;
+        }
+        Samples[] charts = new Samples[Coordinate.CHARTED.size()];
+        for (Coordinate c : used) {
+            Samples s = new Samples(count);
+            chart.sample(c, x, y, z, count, order, s);
+            charts[c.slot()] = s;
+        }
+        return charts;
+    }
+
+    private static final Samples[] NO_CHARTS = {};
+
+    /** The operations for one order, made on first use. */
+    Program program(Order order) {
+        synchronized (programs) {
+            @Nullable Program known = programs.get(order);
+            if (known == null) {
+                Graph graph = new Graph();
+                int root = build(graph);
+                Derivatives derivatives = new Derivatives(graph, root);
+                known = Program.from(
+                        graph,
+                        order == Order.VALUE
+                                ? List.of(root)
+                                : derivatives
+                                        .cartesian(root, order == Order.HESSIAN)
+                                        .outputs());
+                programs.put(order, known);
+            }
+            return known;
+        }
+    }
+
+    /** The tree as nodes of a graph; the number of its root. */
+    private int build(Graph g) {
+        int[] ids = new int[tree.size()];
+        for (int i = 0; i < ids.length; i++) {
+            ids[i] = node(g, tree.terms().get(i), ids);
+        }
+        return ids[tree.root()];
+    }
+
+    private int node(Graph g, Term term, int[] ids) {
+        if (term instanceof Term.Constant t) {
+            return g.constant(t.value());
+        } else if (term instanceof Term.Position t) {
+            return switch (t.coordinate()) {
+                case X -> g.x;
+                case Y -> g.y;
+                case Z -> g.z;
+                case R -> g.r();
+                case RHO -> g.rho();
+                case WAVELENGTH -> g.wavelength();
+                case HEIGHT, CLEARANCE, DISTANCE -> g.chart(t.coordinate(), 0);
+            };
+        } else if (term instanceof Term.Argument t) {
+            return g.argument(argumentPlaces[t.index()]);
+        } else if (term instanceof Term.Negative t) {
+            return g.negate(ids[t.operand()]);
+        } else if (term instanceof Term.Binary t) {
+            int a = ids[t.left()];
+            int b = ids[t.right()];
+            return switch (t.operator()) {
+                case PLUS -> g.add(a, b);
+                case MINUS -> g.subtract(a, b);
+                case TIMES -> g.multiply(a, b);
+                case OVER -> g.divide(a, b);
+                case POWER -> g.raise(a, b);
+            };
+        } else if (term instanceof Term.Call t) {
+            return g.call(Op.valueOf(t.function().name()), ids[t.operand()]);
+        } else if (term instanceof Term.Pair t) {
+            int a = ids[t.left()];
+            int b = ids[t.right()];
+            return t.function() == Function.HYPOT
+                    ? g.hypot(a, b)
+                    : g.call(Op.valueOf(t.function().name()), a, b);
+        }
+        throw new IllegalArgumentException("a formula at fault has no value: " + tree.text());
+    }
+
+    /** The same function in its fast form. */
+    public ScalarFunction compiled() {
+        return this;
+    }
+
+    /**
+     * Where the formula switches between branches: every |u|, minimum, maximum and root of a square in it that depends on
+     * the place. Zeros of an absolute value that only touch (|r|) are left out.
+     */
+    public List<Kink> kinks() {
+        List<Kink> kinks = new ArrayList<>();
+        for (int i = 0; i < tree.size(); i++) {
+            Term term = tree.terms().get(i);
+            Optional<Tree> difference = Optional.empty();
+            if (term instanceof Term.Call t && t.function() == Function.ABS) {
+                difference = Optional.of(tree.part(t.operand()));
+            } else if (term instanceof Term.Call t
+                    && t.function() == Function.SQRT
+                    && tree.terms().get(t.operand()) instanceof Term.Binary power
+                    && power.operator() == Operator.POWER) {
+                difference = Optional.of(tree.part(power.left()));
+            } else if (term instanceof Term.Pair t && (t.function() == Function.MIN || t.function() == Function.MAX)) {
+                difference = Optional.of(Tree.difference(
+                        tree.part(t.left()),
+                        tree.part(t.right()),
+                        tree.starts().get(i),
+                        tree.ends().get(i)));
+            }
+            difference.ifPresent(d -> {
+                try {
+                    Formula f = new Formula(d, DimensionCheck.check(d, Optional.empty()), Optional.of(this));
+                    if (!f.uniform() && f.mayChangeSign()) {
+                        kinks.add(new Kink(f));
+                    }
+                } catch (FormulaException e) {
+                    throw new IllegalStateException("a part of a checked formula is at fault: " + d, e);
+                }
+            });
+        }
+        return List.copyOf(kinks);
+    }
+
+    private boolean mayChangeSign() {
+        return !(tree.size() == 1
+                && tree.terms().get(0) instanceof Term.Position p
+                && (p.coordinate() == Coordinate.R || p.coordinate() == Coordinate.RHO));
+    }
+
+    /** {@link #explain(double, double, double, double[], double, Chart)} without a chart. */
+    public String explain(double x, double y, double z, double[] argumentValues, double wavelength) {
+        return explain(x, y, z, argumentValues, wavelength, Chart.NONE);
+    }
+
+    /**
+     * Says in words why the formula is undefined at a point, or why its derivatives are: {@code the square root of -0.013
+     * in sqrt(1 - (g*r)^2)}. Works on the formula as written, without the simplifications of the evaluation.
+     *
+     * @return one clause without a full stop; empty if value and derivatives exist
+     */
+    public String explain(double x, double y, double z, double[] argumentValues, double wavelength, Chart chart) {
+        double[] xs = {x};
+        double[] ys = {y};
+        double[] zs = {z};
+        Samples out = new Samples(1);
+        sample(xs, ys, zs, 1, argumentValues, wavelength, chart, Order.HESSIAN, out);
+        double gradient = out.gx[0] + out.gy[0] + out.gz[0];
+        double hessian = out.hxx[0] + out.hxy[0] + out.hxz[0] + out.hyy[0] + out.hyz[0] + out.hzz[0];
+        if (Double.isFinite(out.value[0]) && Double.isFinite(gradient) && Double.isFinite(hessian)) {
+            return "";
+        }
+        double[] values = new double[tree.size()];
+        String slope = "";
+        for (int i = 0; i < values.length; i++) {
+            Term term = tree.terms().get(i);
+            values[i] = value(term, values, xs, ys, zs, argumentValues, wavelength, chart);
+            if (!Double.isFinite(values[i])) {
+                return undefined(i, term, values);
+            }
+            if (slope.isEmpty()) {
+                slope = steep(i, term, values);
+            }
+        }
+        if (!slope.isEmpty()) {
+            return slope;
+        }
+        String what = Double.isFinite(out.value[0]) ? "the derivatives of " : "";
+        return what + "`" + text() + "` cannot be computed where its value is " + Wording.brief(values[tree.root()]);
+    }
+
+    private double value(
+            Term term,
+            double[] values,
+            double[] x,
+            double[] y,
+            double[] z,
+            double[] argumentValues,
+            double wavelength,
+            Chart chart) {
+        if (term instanceof Term.Constant t) {
+            return t.value();
+        } else if (term instanceof Term.Position t) {
+            return switch (t.coordinate()) {
+                case X -> x[0];
+                case Y -> y[0];
+                case Z -> z[0];
+                case R -> Math.sqrt(x[0] * x[0] + y[0] * y[0]);
+                case RHO -> Math.sqrt(x[0] * x[0] + y[0] * y[0] + z[0] * z[0]);
+                case WAVELENGTH -> wavelength;
+                case HEIGHT, CLEARANCE, DISTANCE -> {
+                    Samples s = new Samples(1);
+                    chart.sample(t.coordinate(), x, y, z, 1, Order.VALUE, s);
+                    yield s.value[0];
+                }
+            };
+        } else if (term instanceof Term.Argument t) {
+            return argumentValues[argumentPlaces[t.index()]];
+        } else if (term instanceof Term.Negative t) {
+            return -values[t.operand()];
+        } else if (term instanceof Term.Binary t) {
+            return t.operator().apply(values[t.left()], values[t.right()]);
+        } else if (term instanceof Term.Call t) {
+            return t.function().apply(values[t.operand()]);
+        } else if (term instanceof Term.Pair t) {
+            return t.function().apply(values[t.left()], values[t.right()]);
+        }
+        return Double.NaN;
+    }
+
+    private String undefined(int i, Term term, double[] values) {
+        String in = " in `" + tree.text(i) + "`";
+        if (term instanceof Term.Binary t) {
+            return Wording.undefined(t.operator(), values[t.left()], values[t.right()]) + in;
+        } else if (term instanceof Term.Call t) {
+            return Wording.undefined(t.function(), values[t.operand()]) + in;
+        } else if (term instanceof Term.Pair) {
+            return "an overflow" + in;
+        }
+        return "`" + tree.text(i) + "` is " + Wording.brief(values[i]);
+    }
+
+    /** Says that an operation has a value but no derivative at its operands; empty if it has. */
+    private String steep(int i, Term term, double[] values) {
+        if (term instanceof Term.Call t) {
+            double a = values[t.operand()];
+            boolean edge =
+                    switch (t.function()) {
+                        case SQRT -> a == 0;
+                        case ASIN, ACOS -> Math.abs(a) == 1;
+                        default -> false;
+                    };
+            if (edge) {
+                return "the slope of the " + t.function().description() + " of " + Wording.brief(a)
+                        + " is infinite, in `" + tree.text(i) + "`";
+            }
+        } else if (term instanceof Term.Binary t && t.operator() == Operator.POWER && values[t.left()] == 0) {
+            double p = values[t.right()];
+            if (p < 2 && p != Math.rint(p)) {
+                return "0 raised to the power " + Wording.brief(p) + " has no finite second derivative, in `"
+                        + tree.text(i) + "`";
+            }
+        } else if (term instanceof Term.Pair t
+                && t.function() == Function.ATAN2
+                && values[t.left()] == 0
+                && values[t.right()] == 0) {
+            return "the arc tangent of 0 and 0 has no slope, in `" + tree.text(i) + "`";
+        }
+        return "";
+    }
+
+    @Override
+    public String toString() {
+        return "Formula[" + text() + "]";
+    }
+}
