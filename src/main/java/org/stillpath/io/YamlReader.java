@@ -323,7 +323,11 @@ public final class YamlReader {
                             + " is not closed")
                     .orElse("; a quote, bracket or brace is not closed");
         } else if (what.contains("expected ','")) {
-            remedy = "; look for a missing comma or an unclosed bracket or brace";
+            remedy = "; look for a missing comma, or close what is opened"
+                    + e.getContextMark()
+                            .filter(m -> only == null)
+                            .map(m -> " at line " + (m.getLine() + 1) + ", column " + (m.getColumn() + 1))
+                            .orElse("");
         } else if (what.contains("cannot start any token")) {
             remedy = "; a text that starts with this character needs quotes";
         }

@@ -285,7 +285,7 @@ public final class Value {
         } catch (UnitException e) {
             String message = String.valueOf(e.getMessage());
             boolean notNumber = Decimal.end(scalar.get().text().strip(), 0) == 0;
-            fault(e.offset(), notNumber ? message + "; " + trimmed(wanted) + " is needed" : message);
+            fault(e.offset(), notNumber ? message + "; " + wanted + " is needed" : message);
             return Optional.empty();
         }
     }
@@ -314,11 +314,7 @@ public final class Value {
         } else {
             there = Words.quoted(shown()) + " stands here";
         }
-        fault(there + "; " + trimmed(wanted) + " is needed");
-    }
-
-    private static String trimmed(String wanted) {
-        return wanted.endsWith(",") ? wanted.substring(0, wanted.length() - 1) : wanted;
+        fault(there + "; " + wanted + " is needed");
     }
 
     private static String counted(int n, String noun) {

@@ -3,6 +3,7 @@ package org.stillpath.problem;
 import java.util.Collection;
 import java.util.Locale;
 import java.util.Optional;
+import org.jspecify.annotations.Nullable;
 
 /**
  * The two things every message needs: a value quoted safely, and the word that was probably meant.
@@ -19,16 +20,18 @@ public final class Words {
 
     /**
      * The known word nearest to {@code word}, if one is near enough to have been meant: at most one slip in three
-     * letters, capitals not counted. The first of equally near ones.
+     * letters, capitals not counted. Capitals, then the order given, decide between equally near ones.
      */
     public static Optional<String> nearest(String word, Collection<String> known) {
         String given = shorten(word, QUOTE_LIMIT).toLowerCase(Locale.ROOT);
-        String best = null;
-        int least = Math.max(1, given.length() / 3) + 1;
+        @Nullable String best = null;
+        // capitals decide between words that are equally near without them
+        int least = 1000 * (Math.max(1, given.length() / 3) + 1);
         for (String candidate : known) {
             int d = distance(given, candidate.toLowerCase(Locale.ROOT));
-            if (d < least && d < candidate.length()) {
-                least = d;
+            int rank = 1000 * d + Math.min(999, distance(word.length() > 200 ? given : word, candidate));
+            if (rank < least && d < Math.max(given.length(), candidate.length())) {
+                least = rank;
                 best = candidate;
             }
         }
