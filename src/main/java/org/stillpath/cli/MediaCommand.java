@@ -67,8 +67,8 @@ final class MediaCommand implements Callable<Integer> {
 
     private String shown() {
         Place place = Place.of("media");
-        Node.Mapping declaration = new Node.Mapping(
-                place, List.of(new Node.Entry("from", place, new Node.Scalar(place, name, false))));
+        Node.Mapping declaration =
+                new Node.Mapping(place, List.of(new Node.Entry("from", place, new Node.Scalar(place, name, false))));
         Medium medium = ShippedMedia.read(declaration, name, FileSources.of(Path.of("media.yaml"), false));
         StringBuilder text = new StringBuilder(PlainText.of(name)).append('\n');
         text.append(PlainText.wrapped(
@@ -94,8 +94,8 @@ final class MediaCommand implements Callable<Integer> {
         double[] wavelengths = medium.needsWavelength() ? WAVELENGTHS : new double[] {SAMPLE_WAVELENGTH};
         for (double wavelength : wavelengths) {
             IndexField field = medium.field(wavelength, medium.frame(Vector.ZERO));
-            text.append(String.format(
-                    Locale.ROOT, "  %15.2f   %.9f%n", wavelength * 1e9, index(field, 0, 0, 0)).replace("\r", ""));
+            text.append(String.format(Locale.ROOT, "  %15.2f   %.9f%n", wavelength * 1e9, index(field, 0, 0, 0))
+                    .replace("\r", ""));
         }
     }
 
@@ -113,7 +113,11 @@ final class MediaCommand implements Callable<Integer> {
                         Display.of(u, "m", 0),
                         Double.isNaN(n) ? "undefined" : String.format(Locale.ROOT, "%.6f", n)));
             }
-            text.append("  ").append("xyz".charAt(axis)).append(":  ").append(String.join("   ", cells)).append('\n');
+            text.append("  ")
+                    .append("xyz".charAt(axis))
+                    .append(":  ")
+                    .append(String.join("   ", cells))
+                    .append('\n');
         }
     }
 

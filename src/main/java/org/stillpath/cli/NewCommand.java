@@ -10,10 +10,7 @@ import picocli.CommandLine.Command;
 import picocli.CommandLine.Parameters;
 
 /** {@code stillpath new TASK}: prints a commented starter job. */
-@Command(
-        name = "new",
-        mixinStandardHelpOptions = true,
-        description = "Prints a commented starter job of a task.")
+@Command(name = "new", mixinStandardHelpOptions = true, description = "Prints a commented starter job of a task.")
 final class NewCommand implements Callable<Integer> {
     static final List<String> STARTERS = List.of("trace", "lens");
     private static final List<String> LATER = List.of("between", "sightline", "window");

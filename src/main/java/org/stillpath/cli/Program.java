@@ -66,7 +66,9 @@ final class Program implements Callable<Integer> {
         if (e instanceof UnmatchedArgumentException unmatched) {
             List<String> near = unmatched.getSuggestions();
             if (!near.isEmpty()) {
-                message.append("; did you mean ").append(String.join(" or ", near)).append('?');
+                message.append("; did you mean ")
+                        .append(String.join(" or ", near))
+                        .append('?');
             }
         }
         console.say(message.toString());
@@ -90,7 +92,8 @@ final class Program implements Callable<Integer> {
             return Problem.input(
                     place,
                     "",
-                    "memory: the job needs more than the " + Runtime.getRuntime().maxMemory() / (1 << 20)
+                    "memory: the job needs more than the "
+                            + Runtime.getRuntime().maxMemory() / (1 << 20)
                             + " MB that Java may use; ask for fewer rays or a smaller grid, or give Java more:"
                             + " JDK_JAVA_OPTIONS=-Xmx8g");
         }

@@ -78,12 +78,13 @@ final class RunCommand implements Callable<Integer> {
             Job job = Job.read(name, settings, allowOutside);
             claimFolder(job, name);
             Result result = job.work((root, sources) -> {
-                if (job.isSound()) {
-                    return Optional.of(Tasks.run(root, sources, new Tasks.Options(!out.isEmpty())));
-                }
-                Tasks.check(root, sources);
-                return Optional.<Result>empty();
-            }).orElseThrow();
+                        if (job.isSound()) {
+                            return Optional.of(Tasks.run(root, sources, new Tasks.Options(!out.isEmpty())));
+                        }
+                        Tasks.check(root, sources);
+                        return Optional.<Result>empty();
+                    })
+                    .orElseThrow();
             Optional<OutputFolder> folder = out.isEmpty() ? Optional.empty() : Optional.of(write(job, result));
             tell(result, folder);
             if (!result.accuracyReached()) {

@@ -35,8 +35,8 @@ final class ShippedMedia {
      */
     static Medium read(Node.Mapping declaration, String name, Sources sources) {
         Problems problems = new Problems();
-        Node.Mapping media = new Node.Mapping(
-                declaration.place(), List.of(new Node.Entry(name, declaration.place(), declaration)));
+        Node.Mapping media =
+                new Node.Mapping(declaration.place(), List.of(new Node.Entry(name, declaration.place(), declaration)));
         Optional<Medium> medium = MediaReader.read(Optional.of(Section.of(media, "media", problems)), sources, problems)
                 .find(name);
         problems.throwIfAny();

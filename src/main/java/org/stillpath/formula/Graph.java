@@ -163,10 +163,10 @@ final class Graph {
                 return multiply(add(ka, kb), va);
             }
             if (ka == kb) {
-                if (isSquareOf(va, x) && isSquareOf(vb, y) || isSquareOf(va, y) && isSquareOf(vb, x)) {
+                if ((isSquareOf(va, x) && isSquareOf(vb, y)) || (isSquareOf(va, y) && isSquareOf(vb, x))) {
                     return multiply(ka, squareR());
                 }
-                if (isSquareR(va) && isSquareOf(vb, z) || isSquareOf(va, z) && isSquareR(vb)) {
+                if ((isSquareR(va) && isSquareOf(vb, z)) || (isSquareOf(va, z) && isSquareR(vb))) {
                     return multiply(ka, squareRho());
                 }
             }
@@ -279,7 +279,7 @@ final class Graph {
     }
 
     /** The product of whole powers, put into its normal form. */
-    private int fromFactors(TreeMap<Integer, Integer> factors) {
+    private int fromFactors(Map<Integer, Integer> factors) {
         int rest = one;
         List<Integer> operands = new ArrayList<>();
         List<Integer> exponents = new ArrayList<>();

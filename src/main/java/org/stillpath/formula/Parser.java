@@ -8,7 +8,7 @@ import java.util.Objects;
 import java.util.Optional;
 import java.util.Set;
 import org.stillpath.formula.Term.Operator;
-import org.stillpath.problem.Nearest;
+import org.stillpath.problem.Words;
 import org.stillpath.unit.Decimal;
 import org.stillpath.unit.Dimension;
 import org.stillpath.unit.Units;
@@ -303,7 +303,7 @@ final class Parser {
         if (word.isEmpty()) {
             return unexpected();
         }
-        String hint = Nearest.of(word, Units.symbols())
+        String hint = Words.nearest(word, Units.symbols())
                 .map(s -> "; did you mean `" + digits + " " + s + "`?")
                 .orElse("; a product is written with *");
         return new FormulaException(pos, "`" + word + "` is neither a unit nor a known name" + hint);
@@ -347,7 +347,7 @@ final class Parser {
     private String unknown(String word) {
         String hint = HINTS.get(word);
         if (hint == null) {
-            hint = Nearest.of(word, names.words())
+            hint = Words.nearest(word, names.words())
                     .map(n -> "did you mean `" + n + "`?")
                     .orElse(
                             pos < text.length() && text.charAt(pos) == '('

@@ -23,7 +23,11 @@ final class Column {
      * @return the numbers as text with equally many decimals each, and the readable unit that fits the largest
      */
     static Cells of(double[] values, double[] errors, String unit) {
-        double largest = Arrays.stream(values).map(Math::abs).filter(Double::isFinite).max().orElse(0);
+        double largest = Arrays.stream(values)
+                .map(Math::abs)
+                .filter(Double::isFinite)
+                .max()
+                .orElse(0);
         String shown = Display.of(largest, unit, 0).unit();
         Unit readable = Units.parse(shown.isEmpty() ? "1" : shown).orElseThrow();
         int decimals = 0;

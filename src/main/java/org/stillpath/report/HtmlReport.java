@@ -56,9 +56,13 @@ public final class HtmlReport {
                 Map.entry("version", origin.version()),
                 Map.entry("heading", result.title().isBlank() ? Labels.of(result.task()) : tidy(result.title())),
                 Map.entry("answer", tidy(result.headline())),
-                Map.entry("warnings", result.warnings().stream().map(HtmlReport::tidy).toList()),
+                Map.entry(
+                        "warnings",
+                        result.warnings().stream().map(HtmlReport::tidy).toList()),
                 Map.entry("hasCautions", !result.cautions().isEmpty()),
-                Map.entry("cautions", result.cautions().stream().map(HtmlReport::tidy).toList()),
+                Map.entry(
+                        "cautions",
+                        result.cautions().stream().map(HtmlReport::tidy).toList()),
                 Map.entry(
                         "figures",
                         pictures.stream()
@@ -70,7 +74,9 @@ public final class HtmlReport {
                 Map.entry("methods", Methods.of(result)),
                 Map.entry("conventions", Methods.conventions(result.task())),
                 Map.entry("inputs", inputs(origin.tree())),
-                Map.entry("overrides", origin.overrides().stream().map(HtmlReport::tidy).toList()),
+                Map.entry(
+                        "overrides",
+                        origin.overrides().stream().map(HtmlReport::tidy).toList()),
                 Map.entry("jobName", tidy(origin.name())),
                 Map.entry("jobText", origin.text().lines().map(HtmlReport::tidy).reduce("", (a, b) -> a + b + "\n"))));
     }
@@ -141,7 +147,8 @@ public final class HtmlReport {
             return scalar.text();
         }
         if (node instanceof Node.Sequence sequence) {
-            return String.join(", ", sequence.items().stream().map(HtmlReport::text).toList());
+            return String.join(
+                    ", ", sequence.items().stream().map(HtmlReport::text).toList());
         }
         return "";
     }

@@ -16,10 +16,11 @@ final class Methods {
                 + " with the index and its derivatives taken exactly from the medium as given, never from differences."
                 + " At surfaces the vector form of Snell's law holds with the index on the spot.");
         if (result.task().equals("lens")) {
-            paragraphs.add("Focal lengths, focal points and principal planes come from the ray-transfer matrix about the"
-                    + " axis, which is integrated beside the ray (the Jacobi equation): they are the paraxial constants"
-                    + " themselves, not a fit to rays near the axis. Geometrical optics: diffraction images and transfer"
-                    + " functions of contrast are not computed.");
+            paragraphs.add(
+                    "Focal lengths, focal points and principal planes come from the ray-transfer matrix about the"
+                            + " axis, which is integrated beside the ray (the Jacobi equation): they are the paraxial constants"
+                            + " themselves, not a fit to rays near the axis. Geometrical optics: diffraction images and transfer"
+                            + " functions of contrast are not computed.");
         }
         paragraphs.add("The numerical error beside a value is the program's own estimate of how far its digits can be"
                 + " trusted. It says nothing about how well the inputs are known: an index or a gradient known to one per"
@@ -35,15 +36,17 @@ final class Methods {
         List<String> lines = new ArrayList<>();
         lines.add("Coordinates are right-handed; light enters a train along +z.");
         lines.add("A radius of curvature is positive when its centre lies toward +z.");
-        lines.add("Wavelengths are those in vacuum. Refractive indices are absolute (against vacuum) unless the job says"
-                + " otherwise; against air they are smaller by about 3 parts in 10 000.");
+        lines.add(
+                "Wavelengths are those in vacuum. Refractive indices are absolute (against vacuum) unless the job says"
+                        + " otherwise; against air they are smaller by about 3 parts in 10 000.");
         lines.add("The optical length is the integral of index times length; travel times are those of the phase.");
         lines.add("Angles are true angles in radians.");
         if (task.equals("lens")) {
             lines.add("Back focal distance, rear principal plane and image distance count from the last vertex, front"
                     + " focal distance and front principal plane from the first; positive along the light.");
-            lines.add("The power is 1 over the effective focal length; front and rear focal lengths are the index before"
-                    + " and behind over the power.");
+            lines.add(
+                    "The power is 1 over the effective focal length; front and rear focal lengths are the index before"
+                            + " and behind over the power.");
             lines.add("A negative image distance is a virtual image; a negative magnification an inverted one.");
         } else {
             lines.add("A ray's transfer matrix maps x, y, px, py at its start plane to those at its end plane, p being"

@@ -52,6 +52,8 @@ record Row(String name, String value, String unit, String error) {
 
     private static String errorText(double error, String unit) {
         // an error has one digit that means something
-        return error > 0 && Double.isFinite(error) ? Display.of(error, unit, error).toString() : "";
+        return error > 0 && Double.isFinite(error)
+                ? Display.of(error, unit, error).toString()
+                : "";
     }
 }

@@ -56,7 +56,10 @@ class TextReportTest {
         String text = TextReport.of(result(Map.of(), rays, List.of(), List.of()));
 
         assertThat(text.lines()).allMatch(line -> PlainText.columns(line) <= 80);
-        assertThat(text).contains("  and 10 more rays").contains("ray 3: it met the face").contains("x / m");
+        assertThat(text)
+                .contains("  and 10 more rays")
+                .contains("ray 3: it met the face")
+                .contains("x / m");
         List<String> table =
                 text.lines().filter(line -> line.contains("arrived")).toList();
         assertThat(table).hasSize(19);
