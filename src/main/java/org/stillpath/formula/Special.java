@@ -1,14 +1,14 @@
 package org.stillpath.formula;
 
+import org.hipparchus.special.Erf;
+
 /**
  * Functions that the JDK lacks, for scalars, each with the source of its method; and the few small ones that derivatives
  * need. Called by the tree evaluator and by the compiled formulas alike, so that both give the same digits.
  */
 final class Special {
     /** Euler's constant (OEIS A001620). */
-    private static final double EULER = 0.577215664901532860606512090082402431;
-
-    private static final double TWO_OVER_ROOT_PI = 1.12837916709551257389615890312154517; // OEIS A190732
+    private static final double EULER = 0.5772156649015329;
 
     private Special() {}
 
@@ -17,32 +17,9 @@ final class Special {
         return 1 / Math.cosh(x);
     }
 
-    /**
-     * Error function, to about 1e-15 of itself. Below 2 the series of positive terms, NIST DLMF 7.6.2; above, one less the
-     * complement by its continued fraction, DLMF 7.9.2, evaluated from the tail; from 6 on it is 1 in double precision.
-     */
+    /** Error function, by Hipparchus. */
     static double erf(double x) {
-        double a = Math.abs(x);
-        if (!(a < 6)) {
-            return Double.isNaN(x) ? x : Math.signum(x);
-        }
-        double s = x * x;
-        if (a < 2) {
-            double term = 1;
-            double sum = 1;
-            for (int n = 1; term > 1e-17 * sum; n++) {
-                term *= 2 * s / (2 * n + 1);
-                sum += term;
-            }
-            return TWO_OVER_ROOT_PI * x * Math.exp(-s) * sum;
-        }
-        // √π e^{x²} erfc x = 1/(x + (1/2)/(x + 1/(x + (3/2)/(x + ..)))); 60 terms settle 17 digits for x ≥ 2
-        double tail = a;
-        for (int n = 60; n >= 1; n--) {
-            tail = a + 0.5 * n / tail;
-        }
-        double complement = 0.5 * TWO_OVER_ROOT_PI * Math.exp(-s) / tail;
-        return Math.copySign(1 - complement, x);
+        return Double.isNaN(x) ? x : Erf.erf(x);
     }
 
     /**
