@@ -206,11 +206,10 @@ public final class MediaReader {
      */
     static String behindOne(String text) {
         String t = text.strip();
-        int i = 0;
         if (!t.startsWith("1")) {
             return "";
         }
-        i = 1;
+        int i = 1;
         if (t.startsWith(".", i)) {
             i++;
             while (t.startsWith("0", i)) {
