@@ -1,5 +1,7 @@
 package org.stillpath.unit;
 
+import org.jspecify.annotations.Nullable;
+
 /**
  * Exponents of length, mass, time and temperature, as fractions over one common denominator, so that square roots keep
  * exact dimensions. Always in lowest terms.
@@ -191,6 +193,22 @@ public record Dimension(int length, int mass, int time, int temperature, int den
         new Named(2, 0, -2, -1, "a specific heat"),
         new Named(2, 0, -1, 0, "a diffusivity"),
     };
+
+    /** By hand: the equality that records come with is built at first use and costs a small job tens of milliseconds. */
+    @Override
+    public boolean equals(@Nullable Object other) {
+        return other instanceof Dimension o
+                && length == o.length
+                && mass == o.mass
+                && time == o.time
+                && temperature == o.temperature
+                && denominator == o.denominator;
+    }
+
+    @Override
+    public int hashCode() {
+        return (((length * 31 + mass) * 31 + time) * 31 + temperature) * 31 + denominator;
+    }
 
     private boolean is(int l, int m, int t, int k) {
         return length == l && mass == m && time == t && temperature == k && denominator == 1;
