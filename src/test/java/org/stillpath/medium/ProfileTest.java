@@ -131,7 +131,7 @@ class ProfileTest {
                 1);
         FieldMedium m = new FieldMedium(Declaration.of("sky"), thin, true, false);
         IndexField f = m.field(Double.NaN, Frame.JOB);
-        assertThat(Differences.value(f, 0, 0, 1e6)).isEqualTo(0);
+        assertThat(Differences.value(f, 0, 0, 1e6)).isBetween(0.0, 1e-100);
         assertThat(m.warnings()).singleElement().asString().contains("grows", "z = 0 mm");
     }
 
