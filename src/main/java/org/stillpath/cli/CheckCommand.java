@@ -2,8 +2,12 @@ package org.stillpath.cli;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Set;
 import java.util.concurrent.Callable;
+import org.stillpath.job.Node;
+import org.stillpath.medium.MediumFile;
 import org.stillpath.problem.ProblemException;
+import org.stillpath.problem.Problems;
 import org.stillpath.report.PlainText;
 import org.stillpath.task.Tasks;
 import picocli.CommandLine.Command;
@@ -16,6 +20,12 @@ import picocli.CommandLine.Parameters;
         mixinStandardHelpOptions = true,
         description = "Reads job and medium files and says what is wrong and where; computes nothing.")
 final class CheckCommand implements Callable<Integer> {
+    /** Keys that a job has and a medium has not. */
+    private static final Set<String> JOB_KEYS = Set.of("task", "train", "through", "rays", "media", "study");
+
+    /** Keys that say what a medium is; `from` also starts a path in a job. */
+    private static final Set<String> MEDIUM_KEYS = Set.of("index", "air", "solid", "from");
+
     private final Console console;
 
     @Parameters(arity = "1..*", paramLabel = "FILE.yaml", description = "job or medium files")
@@ -46,10 +56,12 @@ final class CheckCommand implements Callable<Integer> {
     private int check(String name) {
         try {
             Job job = Job.read(name, settings, allowOutside);
-            boolean medium = ShippedMedia.isMedium(job.file().root());
+            boolean medium = isMedium(job.file().root());
             job.work((root, sources) -> {
                 if (medium) {
-                    ShippedMedia.read(root, job.name(), sources);
+                    Problems problems = new Problems();
+                    MediumFile.of(job.name(), root, sources, problems);
+                    problems.throwIfAny();
                 } else {
                     Tasks.check(root, sources);
                 }
@@ -62,5 +74,11 @@ final class CheckCommand implements Callable<Integer> {
         } catch (RuntimeException | StackOverflowError e) {
             return console.tell(List.of(Program.excuse(name, e)));
         }
+    }
+
+    /** Whether a file holds a medium rather than a job. */
+    private static boolean isMedium(Node.Mapping root) {
+        return JOB_KEYS.stream().noneMatch(key -> root.find(key).isPresent())
+                && MEDIUM_KEYS.stream().anyMatch(key -> root.find(key).isPresent());
     }
 }

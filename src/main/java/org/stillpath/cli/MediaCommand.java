@@ -5,17 +5,19 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
+import java.util.Optional;
 import java.util.concurrent.Callable;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Vector;
 import org.stillpath.io.FileSources;
-import org.stillpath.job.Node;
 import org.stillpath.medium.IndexField;
 import org.stillpath.medium.Level;
+import org.stillpath.medium.Media;
 import org.stillpath.medium.Medium;
-import org.stillpath.problem.Place;
+import org.stillpath.medium.MediumFile;
 import org.stillpath.problem.ProblemException;
+import org.stillpath.problem.Problems;
 import org.stillpath.report.PlainText;
 import org.stillpath.unit.Display;
 import picocli.CommandLine.Command;
@@ -57,6 +59,9 @@ final class MediaCommand implements Callable<Integer> {
 
     private static String list() {
         StringBuilder text = new StringBuilder();
+        for (String builtIn : Media.of(List.of()).names()) {
+            text.append(builtIn).append('\n');
+        }
         for (String shipped : FileSources.shipped()) {
             if (!shipped.startsWith("demo/") && !shipped.startsWith("materials/")) {
                 text.append(shipped).append('\n');
@@ -66,27 +71,57 @@ final class MediaCommand implements Callable<Integer> {
     }
 
     private String shown() {
-        Place place = Place.of("media");
-        Node.Mapping declaration =
-                new Node.Mapping(place, List.of(new Node.Entry("from", place, new Node.Scalar(place, name, false))));
-        Medium medium = ShippedMedia.read(declaration, name, FileSources.of(Path.of("media.yaml"), false));
+        Optional<Medium> builtIn = Media.of(List.of()).find(name);
+        if (builtIn.isPresent()) {
+            return shown(builtIn.get(), "", "", List.of());
+        }
+        Problems problems = new Problems();
+        MediumFile file = MediumFile.read(name, FileSources.of(Path.of("media.yaml"), false), problems);
+        problems.throwIfAny();
+        return shown(file.medium(), file.title(), file.note(), file.samples());
+    }
+
+    private String shown(Medium medium, String title, String note, List<MediumFile.Sample> samples) {
         StringBuilder text = new StringBuilder(PlainText.of(name)).append('\n');
+        if (!title.isEmpty()) {
+            text.append(PlainText.wrapped(title, "  ", "  ", 80));
+        }
+        text.append('\n');
         text.append(PlainText.wrapped(
                 medium.source().isEmpty() ? "none given" : medium.source(), "  source:   ", "            ", 80));
         IndexField field = medium.field(SAMPLE_WAVELENGTH, medium.frame(Vector.ZERO));
         List<String> limits = field.limits().stream().map(Level::describe).toList();
         text.append(PlainText.wrapped(
                 limits.isEmpty() ? "everywhere" : String.join(" and ", limits), "  valid:    ", "            ", 80));
+        if (!note.isEmpty()) {
+            text.append(PlainText.wrapped(note, "  note:     ", "            ", 80));
+        }
         text.append('\n');
         if (field.uniform()) {
             uniform(medium, text);
-        } else {
+        } else if (samples.isEmpty()) {
             varying(field, text);
+        } else {
+            sampled(medium, samples, text);
         }
         for (String warning : medium.warnings()) {
             text.append(PlainText.wrapped(warning, "warning: ", "         ", 80));
         }
         return text.toString();
+    }
+
+    /** The index at the file's own sample points: computed, and as the source has it. */
+    private static void sampled(Medium medium, List<MediumFile.Sample> samples, StringBuilder text) {
+        text.append("  place in the medium's frame / mm        index      source\n");
+        for (MediumFile.Sample s : samples) {
+            double wavelength = Double.isNaN(s.wavelength()) ? SAMPLE_WAVELENGTH : s.wavelength();
+            IndexField field = medium.field(wavelength, medium.frame(Vector.ZERO));
+            String place = String.format(
+                    Locale.ROOT, "(%.4g, %.4g, %.4g)", 1e3 * s.at().x(), 1e3 * s.at().y(), 1e3 * s.at().z());
+            double n = index(field, s.at().x(), s.at().y(), s.at().z());
+            text.append(String.format(Locale.ROOT, "  %-34s %.8f  %.8f%n", place, n, s.index())
+                    .replace("\r", ""));
+        }
     }
 
     private static void uniform(Medium medium, StringBuilder text) {
