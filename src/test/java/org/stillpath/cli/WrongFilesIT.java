@@ -49,7 +49,11 @@ class WrongFilesIT {
 
     @Test
     void aWrongDimension() throws Exception {
-        refused(ROD.replace("0.304 1/mm", "0.304 mm"), "job.yaml:5:23", "media.rod.index");
+        refused(
+                ROD.replace("0.304 1/mm", "0.304 mm"),
+                "job.yaml:5:24",
+                "media.rod.index: `(g*r)^2`",
+                "cannot be subtracted from `1`, a pure number");
     }
 
     @Test
