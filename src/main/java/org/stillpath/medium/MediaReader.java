@@ -187,6 +187,10 @@ public final class MediaReader {
             index.fault("the index is empty; a number or a formula is needed");
             return new UniformMedium(d, 1, false);
         }
+        if (with.values().stream().anyMatch(q -> Double.isNaN(q.value()))) {
+            // a value that could not be read has been told, and would only make the formula look wrong
+            return new UniformMedium(d, 1, false);
+        }
         try {
             Names names = names(Names.PLACE, with);
             Formula whole = cache.formula(text, names, Dimension.NONE);
