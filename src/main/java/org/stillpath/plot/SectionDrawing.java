@@ -338,7 +338,7 @@ final class SectionDrawing {
         }
         layout.axes().draw(canvas, plot, view, Canvas.clean(figure.across()), Canvas.clean(figure.up()));
         place(drawn, plot, view, labels);
-        contours.forEach((text, lines) -> contour(text, lines, above, labels));
+        contours.forEach((text, lines) -> contour(text, lines, above, shaded(view), labels));
     }
 
     private Map<String, List<Polyline>> contours(Box plot, View view, Labels labels) {
@@ -721,8 +721,15 @@ final class SectionDrawing {
         canvas.words(text, place.get().box(), ink, true);
     }
 
+    /** The shading's rectangle on paper, with a little room below and above. */
+    private Box shaded(View view) {
+        return shade.map(Shade::shading)
+                .map(s -> new Box(view.x(s.u0()), view.y(s.v1()) - 3, view.x(s.u1()), view.y(s.v0()) + 3))
+                .orElseGet(() -> new Box(0, 0, 0, 0));
+    }
+
     /** Draws the lines of one level, below everything but the shading, with a gap for their label. */
-    private void contour(String text, List<Polyline> lines, int above, Labels labels) {
+    private void contour(String text, List<Polyline> lines, int above, Box within, Labels labels) {
         double w = Canvas.width(text) / 2;
         double h = Canvas.height() / 2;
         List<Labels.Place> places = new ArrayList<>();
@@ -730,7 +737,9 @@ final class SectionDrawing {
             for (int part = 2; part < 40; part++) {
                 double[] at = lines.get(l).at(part / 41.0);
                 Box box = new Box(at[0] - w, at[1] - h, at[0] + w, at[1] + h);
-                places.add(new Labels.Place(box, 3.0 * l, at[0], at[1]));
+                if (within.holds(box)) {
+                    places.add(new Labels.Place(box, 3.0 * l, at[0], at[1]));
+                }
             }
         }
         Optional<Labels.Place> place = labels.place(places, text, 1);
