@@ -50,6 +50,9 @@ final class Labels {
     /** How near another thing's line makes a point crowded, points. */
     private static final double CROWD = 6;
 
+    /** Price of contours, the faintest lines. */
+    static final double FAINT = 0.25;
+
     /** From this distance on a label is tied to its thing by a thin line, points. */
     private static final double TIED = 8;
 
@@ -126,6 +129,11 @@ final class Labels {
                 .filter(l -> l.owner() != owner)
                 .mapToDouble(l -> l.price() * inside(near, l.points()))
                 .sum();
+    }
+
+    /** Whether a line that is more than a contour runs under the words. */
+    boolean isCrossed(Box box) {
+        return lines.stream().anyMatch(l -> l.price() > FAINT && inside(box, l.points()) > 0);
     }
 
     /** Length of the line inside the box. */

@@ -353,7 +353,7 @@ final class SectionDrawing {
                     .filter(l -> l.length() > 2)
                     .toList();
             for (Polyline line : lines) {
-                labels.line(line, 0.25, level);
+                labels.line(line, Labels.FAINT, level);
             }
             all.put(Scale.plain(level, Math.max(level.scale(), 0)), lines);
         }
@@ -749,7 +749,8 @@ final class SectionDrawing {
             parts.forEach(p -> canvas.addAt(above, new Item.Stroke(p.x(), p.y(), CONTOUR)));
         }
         if (place.isPresent()) {
-            canvas.words(text, place.get().box(), Ink.GREY, false);
+            Box box = place.get().box();
+            canvas.words(text, box, Ink.GREY, labels.isCrossed(box));
         } else if (!lines.isEmpty()) {
             canvas.miss(text);
         }
