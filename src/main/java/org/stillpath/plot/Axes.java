@@ -14,7 +14,7 @@ record Axes(Scale across, Scale up) {
     static final double BELOW = TICK + TICK_GAP + 2 * Canvas.SIZE * 1.25 + Canvas.EDGE - 1;
 
     /** Room above the plot for the name of the upward axis, points. */
-    static final double ABOVE = Canvas.SIZE * 1.25 + 2;
+    static final double ABOVE = Canvas.SIZE * 1.25 + 4;
 
     /** Room that tick labels take at the left of the plot, points. */
     static double leftOf(Scale up) {
@@ -49,7 +49,10 @@ record Axes(Scale across, Scale up) {
         for (Scale.Tick tick : across.ticks()) {
             double x = view.x(tick.at());
             canvas.segment(x, plot.bottom(), x, plot.bottom() + TICK, LINE);
-            canvas.words(tick.text(), x - Canvas.width(tick.text()) / 2, baseline, Ink.INK);
+            double half = Canvas.width(tick.text()) / 2;
+            if (x + half <= plot.right() + 11) {
+                canvas.words(tick.text(), x - half, baseline, Ink.INK);
+            }
         }
         for (Scale.Tick tick : up.ticks()) {
             double y = view.y(tick.at());
@@ -60,6 +63,6 @@ record Axes(Scale across, Scale up) {
         String below = acrossName + " / " + across.unit();
         canvas.words(below, plot.right() - Canvas.width(below), baseline + Canvas.SIZE * 1.25, Ink.INK);
         canvas.words(
-                upName + " / " + up.unit(), Canvas.EDGE, plot.top() - Typeface.DESCENDER * Canvas.SIZE - 3, Ink.INK);
+                upName + " / " + up.unit(), Canvas.EDGE, plot.top() - Typeface.DESCENDER * Canvas.SIZE - 5, Ink.INK);
     }
 }

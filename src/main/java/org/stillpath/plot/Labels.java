@@ -45,7 +45,13 @@ final class Labels {
     }
 
     /** Room kept to the lines of other things, so that it is plain what a label belongs to, points. */
-    private static final double DISTANCE = 4;
+    static final double DISTANCE = 4;
+
+    /** How near another thing's line makes a point crowded, points. */
+    private static final double CROWD = 6;
+
+    /** Price of contours, the faintest lines. */
+    static final double FAINT = 0.25;
 
     /** From this distance on a label is tied to its thing by a thin line, points. */
     private static final double TIED = 8;
@@ -63,13 +69,17 @@ final class Labels {
         lines.add(new Line(points, price, owner));
     }
 
-    /** Takes the best of the places for a label of {@code owner}; empty where none is free. */
-    Optional<Place> place(List<Place> places, Object owner) {
+    /**
+     * Takes the best of the places for a label of {@code owner}; empty where none is free.
+     *
+     * @param distance room that the label had better keep to the lines of other things, points
+     */
+    Optional<Place> place(List<Place> places, Object owner, double distance) {
         Place best = null;
         double least = Double.POSITIVE_INFINITY;
         for (Place p : places) {
             if (p.price() < least && isFree(p)) {
-                double price = p.price() + crossed(p.box(), owner);
+                double price = p.price() + crossed(p.box(), owner, distance);
                 if (price < least) {
                     least = price;
                     best = p;
@@ -98,27 +108,51 @@ final class Labels {
                                 .isEmpty());
     }
 
-    private double crossed(Box box, Object owner) {
+    /** What crossing lines costs: three times for lines under the words, once for other things' lines close by. */
+    private double crossed(Box box, Object owner, double distance) {
         double price = 0;
+        Box under = box.grown(0.8);
+        Box near = box.grown(distance);
         for (Line line : lines) {
-            Box near = box.grown(line.owner() == owner ? 0.8 : DISTANCE);
-            double[] x = line.points().x();
-            double[] y = line.points().y();
-            double sum = 0;
-            for (int i = 1; i < x.length; i++) {
-                if (Math.max(x[i], x[i - 1]) < near.left()
-                        || Math.min(x[i], x[i - 1]) > near.right()
-                        || Math.max(y[i], y[i - 1]) < near.top()
-                        || Math.min(y[i], y[i - 1]) > near.bottom()) {
-                    continue;
-                }
-                Box.Part part = near.part(x[i - 1], y[i - 1], x[i], y[i]);
-                if (!part.isEmpty()) {
-                    sum += (part.to() - part.from()) * Math.hypot(x[i] - x[i - 1], y[i] - y[i - 1]);
-                }
+            price += line.price() * 3 * inside(under, line.points());
+            if (line.owner() != owner) {
+                price += line.price() * inside(near, line.points());
             }
-            price += sum * line.price();
         }
         return price;
+    }
+
+    /** How crowded a point is by the lines of other things: a label there would not tell which of them it names. */
+    double crowd(double x, double y, Object owner) {
+        Box near = new Box(x, y, x, y).grown(CROWD);
+        return lines.stream()
+                .filter(l -> l.owner() != owner)
+                .mapToDouble(l -> l.price() * inside(near, l.points()))
+                .sum();
+    }
+
+    /** Whether a line that is more than a contour runs under the words. */
+    boolean isCrossed(Box box) {
+        return lines.stream().anyMatch(l -> l.price() > FAINT && inside(box, l.points()) > 0);
+    }
+
+    /** Length of the line inside the box. */
+    private static double inside(Box box, Polyline points) {
+        double[] x = points.x();
+        double[] y = points.y();
+        double sum = 0;
+        for (int i = 1; i < x.length; i++) {
+            if (Math.max(x[i], x[i - 1]) < box.left()
+                    || Math.min(x[i], x[i - 1]) > box.right()
+                    || Math.max(y[i], y[i - 1]) < box.top()
+                    || Math.min(y[i], y[i - 1]) > box.bottom()) {
+                continue;
+            }
+            Box.Part part = box.part(x[i - 1], y[i - 1], x[i], y[i]);
+            if (!part.isEmpty()) {
+                sum += (part.to() - part.from()) * Math.hypot(x[i] - x[i - 1], y[i] - y[i - 1]);
+            }
+        }
+        return sum;
     }
 }

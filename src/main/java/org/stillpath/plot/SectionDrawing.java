@@ -4,11 +4,13 @@ import java.math.BigDecimal;
 import java.util.ArrayList;
 import java.util.Collections;
 import java.util.EnumMap;
+import java.util.EnumSet;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.Optional;
+import java.util.Set;
 import java.util.stream.Collectors;
 import org.stillpath.task.SectionFigure;
 import org.stillpath.task.SectionFigure.Line;
@@ -181,7 +183,7 @@ final class SectionDrawing {
         if (exaggeration == 1 && tall / Scale.size(acrossUnit) > 0.05) {
             upUnit = acrossUnit;
         }
-        int count = (int) Math.max(2, plot.width() / 45);
+        int count = (int) Math.max(2, plot.width() / 36);
         Scale across = Scale.of(u0, u1, acrossUnit, count);
         while (!Axes.isClear(across, view.across())) {
             count--;
@@ -198,10 +200,20 @@ final class SectionDrawing {
             return top;
         }
         double y = top + 3;
+        if (shade.filter(s -> rampWidth(s) > width.points() - 2 * Canvas.EDGE).isPresent()) {
+            for (String line : Canvas.wrapped(
+                    shade.get().shading().quantity(),
+                    Typeface.regular(),
+                    Canvas.SIZE,
+                    width.points() - 2 * Canvas.EDGE)) {
+                canvas.words(line, Canvas.EDGE, y + Typeface.ASCENDER * Canvas.SIZE, Ink.INK);
+                y += Canvas.SIZE * 1.25;
+            }
+        }
         double baseline = y + Typeface.ASCENDER * Canvas.SIZE;
         if (layout.exaggeration() == 1) {
             shade.ifPresent(s -> ramp(s, baseline));
-            return y + Canvas.SIZE * 1.2;
+            return y + Canvas.SIZE * 1.2 + 2;
         }
         double room = barsWidth(layout);
         double edge = width.points() - Canvas.EDGE - 8;
@@ -211,7 +223,7 @@ final class SectionDrawing {
             y += beside ? 0 : Canvas.SIZE * 1.25 + 4;
         }
         bars(layout, edge - room, y);
-        return y + BARS_HEIGHT;
+        return y + BARS_HEIGHT + 1;
     }
 
     private static final double BARS_HEIGHT = 27;
@@ -232,7 +244,8 @@ final class SectionDrawing {
     }
 
     private void ramp(Shade s, double baseline) {
-        double x = canvas.words(rampStart(s), Canvas.EDGE, baseline, Ink.INK);
+        boolean named = rampWidth(s) <= width.points() - 2 * Canvas.EDGE;
+        double x = canvas.words(named ? rampStart(s) : s.lowText() + unit(s), Canvas.EDGE, baseline, Ink.INK);
         int[] colours = new int[64];
         for (int i = 0; i < colours.length; i++) {
             colours[i] = 0xFF000000 | Cividis.pale((i + 0.5) / colours.length);
@@ -325,7 +338,7 @@ final class SectionDrawing {
         }
         layout.axes().draw(canvas, plot, view, Canvas.clean(figure.across()), Canvas.clean(figure.up()));
         place(drawn, plot, view, labels);
-        contours.forEach((text, lines) -> contour(text, lines, above, labels));
+        contours.forEach((text, lines) -> contour(text, lines, above, shaded(view), labels));
     }
 
     private Map<String, List<Polyline>> contours(Box plot, View view, Labels labels) {
@@ -340,7 +353,7 @@ final class SectionDrawing {
                     .filter(l -> l.length() > 2)
                     .toList();
             for (Polyline line : lines) {
-                labels.line(line, 0.25, level);
+                labels.line(line, Labels.FAINT, level);
             }
             all.put(Scale.plain(level, Math.max(level.scale(), 0)), lines);
         }
@@ -542,8 +555,8 @@ final class SectionDrawing {
         if (!plot.holds(room)) {
             return;
         }
-        for (Pen pen : List.of(Pen.firm(Ink.PAPER, 2.6), Pen.firm(Ink.VERMILLION, 1.2))) {
-            double arm = pen.ink() == Ink.PAPER ? 3 : 2.6;
+        for (Pen pen : List.of(Pen.firm(Ink.PAPER, 1.9), Pen.firm(Ink.VERMILLION, 1.1))) {
+            double arm = pen.ink() == Ink.PAPER ? 2.5 : 2.2;
             canvas.segment(x - arm, y - arm, x + arm, y + arm, pen);
             canvas.segment(x - arm, y + arm, x + arm, y - arm, pen);
         }
@@ -570,6 +583,10 @@ final class SectionDrawing {
             this.dy = dy;
         }
     }
+
+    /** Lines along which a label may stand anywhere: where no other line is near. */
+    private static final Set<Role> SLIDING =
+            EnumSet.of(Role.RAY, Role.LOST_RAY, Role.PRINCIPAL_RAY, Role.EXTENSION, Role.AXIS);
 
     private static final List<Side> END_UP = List.of(
             Side.ABOVE, Side.RIGHT, Side.LEFT, Side.ABOVE_RIGHT, Side.ABOVE_LEFT, Side.BELOW_RIGHT, Side.BELOW_LEFT);
@@ -605,7 +622,7 @@ final class SectionDrawing {
             double x = view.x(mark.u());
             double y = view.y(mark.v());
             if (plot.holds(x, y)) {
-                label(mark.label(), List.of(new Anchor(x, y, AROUND)), Ink.INK, labels, mark);
+                label(mark.label(), List.of(new Anchor(x, y, AROUND)), Ink.INK, labels, mark, false);
             } else if (!mark.label().isBlank()) {
                 canvas.miss(Canvas.clean(mark.label()));
             }
@@ -620,7 +637,8 @@ final class SectionDrawing {
                             anchors(d),
                             role == Role.LOST_RAY ? Ink.VERMILLION : Ink.INK,
                             labels,
-                            d.line());
+                            d.line(),
+                            SLIDING.contains(role));
                 }
             }
         }
@@ -671,7 +689,7 @@ final class SectionDrawing {
         return anchors;
     }
 
-    private void label(String words, List<Anchor> anchors, Ink ink, Labels labels, Object owner) {
+    private void label(String words, List<Anchor> anchors, Ink ink, Labels labels, Object owner, boolean slides) {
         String text = Canvas.clean(words).strip();
         if (text.isEmpty()) {
             return;
@@ -681,17 +699,18 @@ final class SectionDrawing {
         List<Labels.Place> places = new ArrayList<>();
         for (int a = 0; a < anchors.size(); a++) {
             Anchor anchor = anchors.get(a);
+            double crowd = slides ? labels.crowd(anchor.x(), anchor.y(), owner) : 0;
             for (int g = 0; g < GAPS.length; g++) {
                 for (int s = 0; s < anchor.sides().size(); s++) {
                     Side side = anchor.sides().get(s);
                     double x = anchor.x() + side.dx * (GAPS[g] + w / 2);
                     double y = anchor.y() + side.dy * (GAPS[g] + h / 2);
                     Box box = new Box(x - w / 2, y - h / 2, x + w / 2, y + h / 2);
-                    places.add(new Labels.Place(box, 2.0 * a + GAPS[g] + 1.2 * s, anchor.x(), anchor.y()));
+                    places.add(new Labels.Place(box, crowd + 2.0 * a + GAPS[g] + 1.2 * s, anchor.x(), anchor.y()));
                 }
             }
         }
-        Optional<Labels.Place> place = labels.place(places, owner);
+        Optional<Labels.Place> place = labels.place(places, owner, Labels.DISTANCE);
         if (place.isEmpty()) {
             canvas.miss(text);
             return;
@@ -702,8 +721,15 @@ final class SectionDrawing {
         canvas.words(text, place.get().box(), ink, true);
     }
 
+    /** The shading's rectangle on paper, with a little room below and above. */
+    private Box shaded(View view) {
+        return shade.map(Shade::shading)
+                .map(s -> new Box(view.x(s.u0()), view.y(s.v1()) - 3, view.x(s.u1()), view.y(s.v0()) + 3))
+                .orElseGet(() -> new Box(0, 0, 0, 0));
+    }
+
     /** Draws the lines of one level, below everything but the shading, with a gap for their label. */
-    private void contour(String text, List<Polyline> lines, int above, Labels labels) {
+    private void contour(String text, List<Polyline> lines, int above, Box within, Labels labels) {
         double w = Canvas.width(text) / 2;
         double h = Canvas.height() / 2;
         List<Labels.Place> places = new ArrayList<>();
@@ -711,17 +737,20 @@ final class SectionDrawing {
             for (int part = 2; part < 40; part++) {
                 double[] at = lines.get(l).at(part / 41.0);
                 Box box = new Box(at[0] - w, at[1] - h, at[0] + w, at[1] + h);
-                places.add(new Labels.Place(box, 3.0 * l, at[0], at[1]));
+                if (within.holds(box)) {
+                    places.add(new Labels.Place(box, 3.0 * l, at[0], at[1]));
+                }
             }
         }
-        Optional<Labels.Place> place = labels.place(places, text);
+        Optional<Labels.Place> place = labels.place(places, text, 1);
         for (Polyline line : lines) {
             List<Polyline> parts =
                     place.map(p -> line.outside(p.box().grown(0.5))).orElse(List.of(line));
             parts.forEach(p -> canvas.addAt(above, new Item.Stroke(p.x(), p.y(), CONTOUR)));
         }
         if (place.isPresent()) {
-            canvas.words(text, place.get().box(), Ink.GREY, false);
+            Box box = place.get().box();
+            canvas.words(text, box, Ink.GREY, labels.isCrossed(box));
         } else if (!lines.isEmpty()) {
             canvas.miss(text);
         }

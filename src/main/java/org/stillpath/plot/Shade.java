@@ -165,11 +165,8 @@ final class Shade {
         return new Item.Colours(left, top, right - left, bottom - top, columns, rows, argb);
     }
 
-    /** Linear between cell centres; at a rim, from the cells on the inside alone. */
+    /** Linear between cell centres; at a rim, from the cells on the inside alone, as far as these have the greater weight. */
     private double between(double c, double r) {
-        if (Double.isNaN(cell(Math.round(c), Math.round(r)))) {
-            return Double.NaN;
-        }
         long c0 = (long) Math.floor(c);
         long r0 = (long) Math.floor(r);
         double sum = 0;
@@ -184,7 +181,7 @@ final class Shade {
                 weights += weight;
             }
         }
-        return sum / weights;
+        return weights >= 0.5 ? sum / weights : Double.NaN;
     }
 
     private double cell(long c, long r) {

@@ -1,0 +1,291 @@
+package org.stillpath.plot;
+
+import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.List;
+import java.util.Optional;
+import java.util.function.DoubleBinaryOperator;
+import org.stillpath.task.SectionFigure;
+import org.stillpath.task.SectionFigure.Line;
+import org.stillpath.task.SectionFigure.Mark;
+import org.stillpath.task.SectionFigure.Role;
+import org.stillpath.task.SectionFigure.Shading;
+
+/** Figures to draw in tests, made from closed forms; they check drawing, not optics. */
+final class Scenes {
+    private Scenes() {}
+
+    static List<SectionFigure> all() {
+        return List.of(rod(), realImage(), virtualImage(), mirage(), lost(), mirrorAndLens(), tall(), awkward());
+    }
+
+    static Line line(Role role, String label, double... uv) {
+        double[] u = new double[uv.length / 2];
+        double[] v = new double[uv.length / 2];
+        for (int i = 0; i < u.length; i++) {
+            u[i] = uv[2 * i];
+            v[i] = uv[2 * i + 1];
+        }
+        return new Line(role, label, u, v);
+    }
+
+    static Shading shading(String quantity, double[] box, int columns, int rows, DoubleBinaryOperator value) {
+        double[] values = new double[columns * rows];
+        for (int r = 0; r < rows; r++) {
+            for (int c = 0; c < columns; c++) {
+                values[r * columns + c] = value.applyAsDouble(
+                        box[0] + (c + 0.5) * (box[1] - box[0]) / columns,
+                        box[2] + (r + 0.5) * (box[3] - box[2]) / rows);
+            }
+        }
+        return new Shading(quantity, "1", box[0], box[1], box[2], box[3], columns, rows, values);
+    }
+
+    /** Rod of n = n0 sech(g r): sinh(g r) = sinh(g r0) cos(g z) for rays that enter parallel (Fletcher, Murphy &amp; Young 1954). */
+    static SectionFigure rod() {
+        double g = 304;
+        double a = 0.9e-3;
+        double end = 1.2 * 2 * Math.PI / g;
+        List<Line> lines = new ArrayList<>();
+        lines.add(line(Role.AXIS, "", -2e-3, 0, end + 1e-3, 0));
+        for (int k = -5; k <= 5; k++) {
+            double r0 = k / 5.0 * 0.8e-3;
+            double[] u = new double[402];
+            double[] v = new double[402];
+            u[0] = -1.5e-3;
+            v[0] = r0;
+            for (int i = 0; i <= 400; i++) {
+                double z = end * i / 400;
+                u[i + 1] = z;
+                v[i + 1] = Math.log(Math.sinh(g * r0) * Math.cos(g * z)
+                                + Math.hypot(1, Math.sinh(g * r0) * Math.cos(g * z)))
+                        / g;
+            }
+            lines.add(new Line(Role.RAY, "", u, v));
+        }
+        lines.add(line(Role.SURFACE, "entrance face", 0, -a, 0, a));
+        lines.add(line(Role.SURFACE, "exit face", end, -a, end, a));
+        lines.add(line(Role.SURFACE, "", 0, a, end, a));
+        lines.add(line(Role.SURFACE, "", 0, -a, end, -a));
+        Shading shading = shading(
+                "refractive index",
+                new double[] {-2e-3, end + 1e-3, -1.0e-3, 1.0e-3},
+                200,
+                60,
+                (z, y) -> z < 0 || z > end || Math.abs(y) > a ? 1 : 1.607 / Math.cosh(g * y));
+        return new SectionFigure(
+                "rays",
+                "Where does the rod gather parallel light?",
+                "First focus 5.167 mm behind the entrance face (± 0.001 mm)",
+                "z",
+                "y",
+                Optional.of(shading),
+                lines,
+                List.of(new Mark("F′", Math.PI / 2 / g, 0)));
+    }
+
+    static SectionFigure realImage() {
+        double f = 50e-3;
+        double s = 75e-3;
+        double h = 10e-3;
+        double t = 1 / (1 / f - 1 / s);
+        double hi = -h * t / s;
+        return new SectionFigure(
+                "construction",
+                "Where is the image, and how large?",
+                "Real, inverted image 150.0 mm behind the lens, magnification −2.000",
+                "z",
+                "y",
+                Optional.empty(),
+                List.of(
+                        line(Role.AXIS, "axis", -90e-3, 0, 170e-3, 0),
+                        line(Role.PRINCIPAL_RAY, "parallel ray", -s, h, 0, h, t, hi),
+                        line(Role.PRINCIPAL_RAY, "ray through the centre", -s, h, 0, 0, t, hi),
+                        line(Role.PRINCIPAL_RAY, "focal ray", -s, h, 0, hi, t, hi),
+                        line(Role.THIN_LENS, "L, f = 50 mm", 0, -26e-3, 0, 20e-3),
+                        line(Role.OBJECT, "object", -s, 0, -s, h),
+                        line(Role.IMAGE, "image", t, 0, t, hi)),
+                List.of(new Mark("F", -f, 0), new Mark("F′", f, 0)));
+    }
+
+    static SectionFigure virtualImage() {
+        double f = -40e-3;
+        double s = 60e-3;
+        double h = 12e-3;
+        double t = 1 / (1 / f - 1 / s);
+        double hi = -h * t / s;
+        double out = 45e-3;
+        double slope1 = (h - hi) / (0 - t);
+        double slope3 = (0 - hi) / (0 - t);
+        return new SectionFigure(
+                "construction",
+                "Where is the image, and how large?",
+                "Virtual, erect image 24.0 mm before the lens, magnification 0.400",
+                "z",
+                "y",
+                Optional.empty(),
+                List.of(
+                        line(Role.AXIS, "", -70e-3, 0, 55e-3, 0),
+                        line(Role.EXTENSION, "", t, hi, 0, h),
+                        line(Role.EXTENSION, "", f, 0, t, hi),
+                        line(Role.PRINCIPAL_RAY, "parallel ray", -s, h, 0, h, out, h + slope1 * out),
+                        line(Role.PRINCIPAL_RAY, "ray through the centre", -s, h, 0, 0, out, slope3 * out),
+                        line(Role.PRINCIPAL_RAY, "focal ray", -s, h, 0, hi, out, hi),
+                        line(Role.THIN_LENS, "L", 0, -20e-3, 0, 20e-3),
+                        line(Role.PLANE, "H", -1.2e-3, -20e-3, -1.2e-3, 20e-3),
+                        line(Role.PLANE, "H′", 1.2e-3, -20e-3, 1.2e-3, 20e-3),
+                        line(Role.OBJECT, "object", -s, 0, -s, h),
+                        line(Role.VIRTUAL_IMAGE, "virtual image", t, 0, t, hi)),
+                List.of(new Mark("F′", f, 0), new Mark("F", -f, 0)));
+    }
+
+    static SectionFigure mirage() {
+        double[] u = new double[200];
+        double[] direct = new double[200];
+        double[] bent = new double[200];
+        for (int i = 0; i < 200; i++) {
+            double d = 900.0 * i / 199;
+            u[i] = d;
+            direct[i] = 1.5 - 0.3 * d / 900 + 0.12 * (d / 900) * (d / 900 - 1);
+            bent[i] = 0.16 + 1.3 * Math.pow((d - 460) / 460, 2) * (d < 460 ? 1.03 : 1.0);
+        }
+        Shading shading = shading(
+                "refractive index",
+                new double[] {0, 900, 0, 2},
+                60,
+                80,
+                (d, h) -> 1 + 1e-6 * (268 - 6.5 * Math.exp(-h / 0.25)));
+        return new SectionFigure(
+                "rays",
+                "What does an eye 1.5 m above the hot road see of the lamp?",
+                "Two images: the upright one at −0.46 mrad, the inverted one 4.1 mrad below it; no other was found between"
+                        + " −10 mrad and 10 mrad",
+                "distance along the sight",
+                "height above ground",
+                Optional.of(shading),
+                List.of(
+                        line(Role.GROUND, "hot road", 0, 0, 900, 0),
+                        new Line(Role.RAY, "upright image", u, direct),
+                        new Line(Role.RAY, "inverted image", u, bent)),
+                List.of(new Mark("eye", 0, 1.5), new Mark("lamp", 900, 1.2)));
+    }
+
+    static SectionFigure lost() {
+        List<Line> lines = new ArrayList<>();
+        lines.add(line(Role.AXIS, "", -6e-3, 0, 22e-3, 0));
+        for (int k = -4; k <= 4; k++) {
+            double y = k * 0.9e-3;
+            if (Math.abs(k) == 4) {
+                lines.add(line(Role.LOST_RAY, k == 4 ? "clipped" : "", -5e-3, y, 8e-3, y * 0.9));
+            } else if (k == 3) {
+                lines.add(line(Role.LOST_RAY, "totally reflected", -5e-3, y, 3e-3, y, 14e-3, 9e-3, 50, 40));
+            } else {
+                lines.add(line(Role.RAY, "", -5e-3, y, 0, y, 8e-3, y * 0.8, 20e-3, -y * 0.3));
+            }
+        }
+        double[] su = new double[41];
+        double[] sv = new double[41];
+        for (int i = 0; i <= 40; i++) {
+            double y = (i - 20) / 20.0 * 4.2e-3;
+            sv[i] = y;
+            su[i] = 14e-3 - Math.sqrt(14e-3 * 14e-3 - y * y);
+        }
+        lines.add(new Line(Role.SURFACE, "S1", su, sv));
+        lines.add(line(Role.STOP, "stop", 8e-3, 2.8e-3, 8e-3, 4.2e-3));
+        lines.add(line(Role.STOP, "", 8e-3, -2.8e-3, 8e-3, -4.2e-3));
+        lines.add(line(Role.PLANE, "sensor", 20e-3, -3e-3, 20e-3, 3e-3));
+        return new SectionFigure(
+                "rays",
+                "Which rays reach the sensor?",
+                "6 of 9 rays reach the sensor; 2 are clipped at the stop, 1 is totally reflected",
+                "z",
+                "y",
+                Optional.empty(),
+                lines,
+                List.of());
+    }
+
+    static SectionFigure mirrorAndLens() {
+        List<Line> lines = new ArrayList<>();
+        double[] mu = new double[31];
+        double[] mv = new double[31];
+        for (int i = 0; i <= 30; i++) {
+            mv[i] = (i - 15) / 15.0 * 30e-3;
+            mu[i] = 60e-3 - (80e-3 - Math.sqrt(80e-3 * 80e-3 - mv[i] * mv[i]));
+        }
+        for (int k = -2; k <= 2; k++) {
+            double y = k * 12e-3;
+            lines.add(line(Role.RAY, "", -40e-3, y, 60e-3 - y * y / 0.16, y, 20e-3, 0));
+        }
+        lines.add(new Line(Role.MIRROR, "concave mirror", mu, mv));
+        return new SectionFigure(
+                "rays",
+                "Where does the mirror focus?",
+                "Focus 40.00 mm before the mirror (± 0.02 mm)",
+                "z",
+                "y",
+                Optional.empty(),
+                lines,
+                List.of(new Mark("F", 20e-3, 0)));
+    }
+
+    static SectionFigure tall() {
+        Shading shading = shading(
+                "refractive index",
+                new double[] {-5e-3, 5e-3, -5e-3, 5e-3},
+                90,
+                90,
+                (x, y) -> Math.hypot(x, y) < 5e-3 ? Math.sqrt(2 - Math.pow(Math.hypot(x, y) / 5e-3, 2)) : Double.NaN);
+        double[] cu = new double[181];
+        double[] cv = new double[181];
+        for (int i = 0; i <= 180; i++) {
+            cu[i] = 5e-3 * Math.cos(Math.toRadians(2 * i));
+            cv[i] = 5e-3 * Math.sin(Math.toRadians(2 * i));
+        }
+        List<Line> lines = new ArrayList<>();
+        for (int k = -4; k <= 4; k++) {
+            double y = k * 1.1e-3;
+            double[] u = new double[61];
+            double[] v = new double[61];
+            double enter = -Math.sqrt(25e-6 - y * y);
+            u[0] = -8e-3;
+            v[0] = y;
+            for (int i = 1; i <= 60; i++) {
+                double t = (i - 1) / 59.0;
+                u[i] = enter + (5e-3 - enter) * t;
+                v[i] = y * (1 - t * t);
+            }
+            lines.add(new Line(Role.RAY, "", u, v));
+        }
+        lines.add(new Line(Role.SURFACE, "Luneburg sphere", cu, cv));
+        return new SectionFigure(
+                "rays",
+                "Does a Luneburg sphere focus on its rim?",
+                "All 9 rays meet within 2 nm of the rim",
+                "z",
+                "y",
+                Optional.of(shading),
+                lines,
+                List.of(new Mark("focus", 5e-3, 0)));
+    }
+
+    /** Marks on top of each other, odd characters, words too long for a line, coordinates that are not finite. */
+    static SectionFigure awkward() {
+        List<Mark> marks = new ArrayList<>();
+        for (String s : Arrays.asList("A", "B", "C", "D <&\">", "point of interest", "\u0007bell", "λ Δτ 5 µm²")) {
+            marks.add(new Mark(s, 1e-3 + marks.size() * 1e-6, 1e-3));
+        }
+        return new SectionFigure(
+                "odd",
+                "Is 1 < 2 & \"so\" on?\u0000",
+                "A <title> with \"quotes\" & an\tunbreakableword" + "x".repeat(120) + " \uD800 30° 15′ 10.5″ − × 漢",
+                "z",
+                "y",
+                Optional.empty(),
+                List.of(
+                        line(Role.RAY, "not finite", 0, 0, Double.NaN, 1e-3, 2e-3, Double.POSITIVE_INFINITY),
+                        line(Role.RAY, "flat", 0, 1e-3, 2e-3, 1e-3),
+                        line(Role.IMAGE, "no height", 1.5e-3, 1e-3, 1.5e-3, 1e-3)),
+                marks);
+    }
+}
