@@ -2,13 +2,13 @@ package org.stillpath.plot;
 
 import java.util.List;
 
-/** Axes of a plot: thin lines on two sides, ticks outward, the quantity with its unit at the end of each. */
+/** Scales and names of the two axes of a {@link Chart}, and the room that they take. */
 record Axes(Scale across, Scale up) {
     /** Length of a tick, points. */
-    private static final double TICK = 3.5;
+    static final double TICK = 3.5;
 
-    private static final double TICK_GAP = 2;
-    private static final Pen LINE = Pen.firm(Ink.INK, 0.6);
+    /** Room between a tick and its label, points. */
+    static final double TICK_GAP = 2;
 
     /** Room below the plot, points. */
     static final double BELOW = TICK + TICK_GAP + 2 * Canvas.SIZE * 1.25 + Canvas.EDGE - 1;
@@ -41,27 +41,11 @@ record Axes(Scale across, Scale up) {
         return true;
     }
 
-    /** Draws both axes around the plot. */
-    void draw(Canvas canvas, Box plot, View view, String acrossName, String upName) {
-        canvas.segment(plot.left(), plot.bottom(), plot.right(), plot.bottom(), LINE);
-        canvas.segment(plot.left(), plot.bottom(), plot.left(), plot.top(), LINE);
-        double baseline = plot.bottom() + TICK + TICK_GAP + Typeface.ASCENDER * Canvas.SIZE;
-        for (Scale.Tick tick : across.ticks()) {
-            double x = view.x(tick.at());
-            canvas.segment(x, plot.bottom(), x, plot.bottom() + TICK, LINE);
-            double half = Canvas.width(tick.text()) / 2;
-            if (x + half <= plot.right() + 11) {
-                canvas.words(tick.text(), x - half, baseline, Ink.INK);
-            }
-        }
-        for (Scale.Tick tick : up.ticks()) {
-            double y = view.y(tick.at());
-            canvas.segment(plot.left() - TICK, y, plot.left(), y, LINE);
-            double x = plot.left() - TICK - TICK_GAP - Canvas.width(tick.text());
-            canvas.words(tick.text(), x, y + Typeface.CAPITAL / 2 * Canvas.SIZE, Ink.INK);
-        }
+    /** Writes what the axes are, with their units: one at the right end below, one above the left edge. */
+    void name(Canvas canvas, Box plot, String acrossName, String upName) {
+        double baseline = plot.bottom() + TICK + TICK_GAP + (Typeface.ASCENDER + 1.25) * Canvas.SIZE;
         String below = acrossName + " / " + across.unit();
-        canvas.words(below, plot.right() - Canvas.width(below), baseline + Canvas.SIZE * 1.25, Ink.INK);
+        canvas.words(below, plot.right() - Canvas.width(below), baseline, Ink.INK);
         canvas.words(
                 upName + " / " + up.unit(), Canvas.EDGE, plot.top() - Typeface.DESCENDER * Canvas.SIZE - 5, Ink.INK);
     }

@@ -9,9 +9,10 @@ import java.util.List;
  * A length scale: a readable unit and ticks at round values.
  *
  * @param unitIndex place of the unit in the table of units
+ * @param step from tick to tick, in that unit
  * @param ticks from below
  */
-record Scale(int unitIndex, List<Tick> ticks) {
+record Scale(int unitIndex, BigDecimal step, List<Tick> ticks) {
     private static final String[] UNITS = {"km", "m", "mm", "µm", "nm"};
     private static final double[] SIZES = {1e3, 1, 1e-3, 1e-6, 1e-9};
 
@@ -33,6 +34,11 @@ record Scale(int unitIndex, List<Tick> ticks) {
     /** Unit symbol. */
     String unit() {
         return UNITS[unitIndex];
+    }
+
+    /** The unit in metres. */
+    double unitSize() {
+        return SIZES[unitIndex];
     }
 
     /** Place of the unit for a magnitude in the tables above. */
@@ -62,7 +68,7 @@ record Scale(int unitIndex, List<Tick> ticks) {
             BigDecimal value = step.multiply(BigDecimal.valueOf(k));
             ticks.add(new Tick(value.doubleValue() * size, plain(value, Math.max(step.scale(), 0))));
         }
-        return new Scale(unit, ticks);
+        return new Scale(unit, step, ticks);
     }
 
     /** The least of 1, 2, 5 times a power of ten that is not below {@code least}. */
@@ -102,6 +108,6 @@ record Scale(int unitIndex, List<Tick> ticks) {
                 out.insert(i, '\u2009');
             }
         }
-        return value.signum() < 0 ? "−" + out : out.toString();
+        return out.chars().anyMatch(c -> c >= '1' && c <= '9') && value.signum() < 0 ? "−" + out : out.toString();
     }
 }

@@ -134,8 +134,11 @@ final class SectionDrawing {
         return layout;
     }
 
-    private Layout fit(Bounds b, double top, double left, double most, double least) {
-        double right = width.points() - Canvas.EDGE - 8;
+    private Layout fit(Bounds b, double stripTop, double leftEdge, double most, double least) {
+        // whole points, since JFreeChart rounds the place of a plot to them
+        double top = Math.ceil(stripTop);
+        double left = Math.ceil(leftEdge);
+        double right = Math.floor(width.points() - Canvas.EDGE - 8);
         double inner = right - left - 2 * PAD_X;
         double u = b.acrossSpan();
         double v = b.upSpan() < FLAT * u ? 0 : b.upSpan();
@@ -155,7 +158,7 @@ final class SectionDrawing {
             exaggeration = roundFactor((width == Width.FULL ? 150 : 105) / contents);
         }
         double up = across * exaggeration;
-        double height = Math.max(least, Math.min(most, v * up + 2 * PAD_Y));
+        double height = Math.ceil(Math.max(least, Math.min(most, v * up + 2 * PAD_Y)));
         Box plot = new Box(left, top, right, top + height);
         View view = new View(b.acrossMiddle(), b.upMiddle(), (left + right) / 2, top + height / 2, across, up);
         return new Layout(plot, view, exaggeration, axes(plot, view, exaggeration));
@@ -305,6 +308,7 @@ final class SectionDrawing {
         Labels labels = new Labels(new Box(plot.left() + 4, plot.top(), plot.right(), plot.bottom() - 1));
         shade.ifPresent(s -> canvas.add(s.colours(view, plot)));
         int above = canvas.count();
+        Chart chart = new Chart(plot, view, layout.axes());
         Map<String, List<Polyline>> contours = contours(plot, view, labels);
         List<Drawn> drawn = new ArrayList<>();
         int principal = 0;
@@ -323,7 +327,7 @@ final class SectionDrawing {
                 Pen pen = pen(role, rays, role == Role.PRINCIPAL_RAY ? principal++ : 0);
                 Drawn d = new Drawn(line, whole, parts);
                 drawn.add(d);
-                drawLine(d, pen, plot, light, labels);
+                drawLine(d, pen, plot, light, labels, chart);
             }
         }
         // crosses above everything: rays end on stops and surfaces
@@ -336,7 +340,11 @@ final class SectionDrawing {
                 labels.block(new Box(x, y, x, y).grown(1.8));
             }
         }
-        layout.axes().draw(canvas, plot, view, Canvas.clean(figure.across()), Canvas.clean(figure.up()));
+        int place = above;
+        for (Item item : chart.draw(canvas)) {
+            canvas.addAt(place++, item);
+        }
+        layout.axes().name(canvas, plot, Canvas.clean(figure.across()), Canvas.clean(figure.up()));
         place(drawn, plot, view, labels);
         contours.forEach((text, lines) -> contour(text, lines, above, shaded(view), labels));
     }
@@ -391,7 +399,7 @@ final class SectionDrawing {
         };
     }
 
-    private void drawLine(Drawn d, Pen pen, Box plot, Polyline light, Labels labels) {
+    private void drawLine(Drawn d, Pen pen, Box plot, Polyline light, Labels labels, Chart chart) {
         Role role = d.line().role();
         for (Polyline part : d.parts()) {
             labels.line(part, price(role), d.line());
@@ -405,7 +413,7 @@ final class SectionDrawing {
             arrow(d, pen, plot, labels);
             return;
         }
-        d.parts().forEach(part -> canvas.stroke(part, pen));
+        d.parts().forEach(part -> chart.line(part, pen));
         if (role == Role.THIN_LENS) {
             tips(d, pen, plot, labels);
         }

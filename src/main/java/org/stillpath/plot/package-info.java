@@ -3,8 +3,9 @@
  *
  * <p>{@link org.stillpath.plot.Pictures#of Pictures.of(figure, width)} lays a {@link org.stillpath.task.Figure} out once,
  * in points (1/72 inch), and gives a {@link org.stillpath.plot.Picture}: a list of strokes, areas and words that is written
- * as SVG (words stay words) or painted as PNG at 200 dots an inch. A new kind of figure is one class beside {@code
- * SectionDrawing} and one line in {@code Pictures}.
+ * as SVG (words stay words) or painted as PNG at 200 dots an inch. Axes and lines are a JFreeChart ({@code Chart}), which
+ * draws on a sheet that keeps its strokes as items; what stands beside them, and where labels find room, is decided here.
+ * A new kind of figure is one class beside {@code SectionDrawing} and one line in {@code Pictures}.
  *
  * <p>Words are set with a typeface that ships with the program and is read here, not by the Java font system: that one
  * fails at the first word on a machine without fontconfig, even for a font of one's own, and its widths depend on the
