@@ -73,17 +73,22 @@ public final class Grid implements ScalarField {
             ci = bx.holds(ci, px) ? ci : bx.cell(px);
             cj = by.holds(cj, py) ? cj : by.cell(py);
             ck = bz.holds(ck, pz) ? ck : bz.cell(pz);
-            bx.weights(ci, px, w, 0);
-            by.weights(cj, py, w, 12);
-            bz.weights(ck, pz, w, 24);
-            if (order == Order.VALUE) {
-                value(w, ci, cj, ck, out, m);
-            } else {
-                all(w, ci, cj, ck, order, out, m);
-                if (hold) {
-                    flatten(px != x[m], py != y[m], pz != z[m], order, out, m);
-                }
+            point(ci, cj, ck, px, py, pz, w, order, out, m);
+            if (hold && order != Order.VALUE) {
+                flatten(px != x[m], py != y[m], pz != z[m], order, out, m);
             }
+        }
+    }
+
+    private void point(
+            int ci, int cj, int ck, double x, double y, double z, double[] w, Order order, Samples out, int m) {
+        bx.weights(ci, x, w, 0);
+        by.weights(cj, y, w, 12);
+        bz.weights(ck, z, w, 24);
+        if (order == Order.VALUE) {
+            value(w, ci, cj, ck, out, m);
+        } else {
+            all(w, ci, cj, ck, order, out, m);
         }
     }
 
@@ -107,6 +112,38 @@ public final class Grid implements ScalarField {
                 new Seam(new AlongLevel(Along.X), bx.knots()),
                 new Seam(new AlongLevel(Along.Y), by.knots()),
                 new Seam(new AlongLevel(Along.Z), bz.knots()));
+    }
+
+    /** The polynomial of one cell; a held grid outside its faces, where axes drop out, is not taken apart. */
+    @Override
+    public ScalarField piece(int[] cells) {
+        int ci = cells[0] - 1;
+        int cj = cells[1] - 1;
+        int ck = cells[2] - 1;
+        boolean inside =
+                ci >= 0 && ci < bx.count() - 1 && cj >= 0 && cj < by.count() - 1 && ck >= 0 && ck < bz.count() - 1;
+        return inside ? new Piece(this, ci, cj, ck) : this;
+    }
+
+    /**
+     * The polynomial of one cell, everywhere.
+     *
+     * @param whole the grid
+     * @param ci cell along x; likewise {@code cj} and {@code ck}
+     */
+    private record Piece(Grid whole, int ci, int cj, int ck) implements ScalarField {
+        @Override
+        public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
+            double[] w = whole.weights.get();
+            for (int m = 0; m < count; m++) {
+                whole.point(ci, cj, ck, x[m], y[m], z[m], w, order, out, m);
+            }
+        }
+
+        @Override
+        public String explain(double x, double y, double z, double wavelength) {
+            return whole.explain(x, y, z, wavelength);
+        }
     }
 
     @Override

@@ -3,6 +3,7 @@ package org.stillpath.medium;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
+import org.jspecify.annotations.Nullable;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Frame;
@@ -25,7 +26,12 @@ final class PlacedIndex implements IndexField {
     private final boolean turned;
     private final List<Level> limits;
     private final List<Seam> seams;
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final ThreadLocal<Scratch> scratch;
+    /**
+     * Pieces between the knots of a single seam, made when they are first asked for. Several threads may make the same
+     * one; all its fields are final, so that either serves.
+     */
+    private final @Nullable PlacedIndex[] pieces;
 
     /**
      * Places a scalar field.
@@ -62,6 +68,23 @@ final class PlacedIndex implements IndexField {
         this.seams = scalar.seams(wavelength).stream()
                 .map(s -> new Seam(FramedLevel.of(s.coordinate(), frame), s.knots()))
                 .toList();
+        this.scratch = ThreadLocal.withInitial(Scratch::new);
+        this.pieces = new PlacedIndex[seams.size() == 1 ? seams.get(0).count() + 1 : 0];
+    }
+
+    /** A piece of a field: the same but for its scalar, and smooth. */
+    private PlacedIndex(PlacedIndex whole, ScalarField piece) {
+        this.scalar = piece;
+        this.fromOne = whole.fromOne;
+        this.excessFactor = whole.excessFactor;
+        this.wavelength = whole.wavelength;
+        this.frame = whole.frame;
+        this.moved = whole.moved;
+        this.turned = whole.turned;
+        this.limits = whole.limits;
+        this.seams = List.of();
+        this.scratch = whole.scratch;
+        this.pieces = new PlacedIndex[0];
     }
 
     @Override
@@ -84,6 +107,21 @@ final class PlacedIndex implements IndexField {
     @Override
     public List<Seam> seams() {
         return seams;
+    }
+
+    @Override
+    public IndexField piece(int[] cells) {
+        if (pieces.length == 0) {
+            ScalarField piece = scalar.piece(cells);
+            return piece == scalar ? this : new PlacedIndex(this, piece);
+        }
+        PlacedIndex known = pieces[cells[0]];
+        if (known == null) {
+            ScalarField piece = scalar.piece(cells);
+            known = piece == scalar ? this : new PlacedIndex(this, piece);
+            pieces[cells[0]] = known;
+        }
+        return known;
     }
 
     @Override

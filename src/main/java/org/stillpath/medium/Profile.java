@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Locale;
 import org.stillpath.formula.Order;
@@ -91,11 +92,14 @@ public final class Profile implements ScalarField {
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
         for (int i = 0; i < count; i++) {
             double u = along.at(x[i], y[i], z[i]);
-            int c = spline.cell(u);
-            out.value[i] = spline.value(c, u);
-            if (order != Order.VALUE) {
-                along.spread(u, spline.slope(c, u), spline.curvature(c, u), x[i], y[i], z[i], order, out, i);
-            }
+            point(spline.cell(u), u, x[i], y[i], z[i], order, out, i);
+        }
+    }
+
+    private void point(int c, double u, double x, double y, double z, Order order, Samples out, int i) {
+        out.value[i] = spline.value(c, u);
+        if (order != Order.VALUE) {
+            along.spread(u, spline.slope(c, u), spline.curvature(c, u), x, y, z, order, out, i);
         }
     }
 
@@ -115,9 +119,37 @@ public final class Profile implements ScalarField {
     @Override
     public List<Seam> seams(double wavelength) {
         double[] knots = spline.knots();
-        // a distance never passes below 0
-        int from = along.isDistance() && knots[0] == 0 ? 1 : 0;
-        return List.of(new Seam(new AlongLevel(along), java.util.Arrays.copyOfRange(knots, from, knots.length)));
+        return List.of(new Seam(new AlongLevel(along), Arrays.copyOfRange(knots, firstSeam(), knots.length)));
+    }
+
+    @Override
+    public ScalarField piece(int[] cells) {
+        return new Piece(this, cells[0] + firstSeam() - 1);
+    }
+
+    /** Number of the knot that is the first seam: a distance never passes below 0. */
+    private int firstSeam() {
+        return along.isDistance() && spline.first() == 0 ? 1 : 0;
+    }
+
+    /**
+     * One cell's cubic, or what goes on beyond the table, everywhere.
+     *
+     * @param whole the profile
+     * @param cell cell of its spline
+     */
+    private record Piece(Profile whole, int cell) implements ScalarField {
+        @Override
+        public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
+            for (int i = 0; i < count; i++) {
+                whole.point(cell, whole.along.at(x[i], y[i], z[i]), x[i], y[i], z[i], order, out, i);
+            }
+        }
+
+        @Override
+        public String explain(double x, double y, double z, double wavelength) {
+            return whole.explain(x, y, z, wavelength);
+        }
     }
 
     @Override

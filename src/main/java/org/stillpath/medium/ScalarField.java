@@ -40,6 +40,16 @@ public interface ScalarField {
         return List.of();
     }
 
+    /**
+     * The smooth piece that holds in the given cells of {@link #seams}, continued beyond them; this field itself where it
+     * is smooth, or cannot be taken apart.
+     *
+     * @param cells for each seam, in their order, the cell as {@link Seam#cell} counts it
+     */
+    default ScalarField piece(int[] cells) {
+        return this;
+    }
+
     /** Says in words why the quantity is undefined at a point of the medium's frame; empty text where it is defined. */
     default String explain(double x, double y, double z, double wavelength) {
         return "";

@@ -102,7 +102,7 @@ final class Chart {
         axis.setTickMarkOutsideLength((float) Axes.TICK);
         axis.setTickMarkInsideLength(0);
         axis.setMinorTickMarksVisible(false);
-        axis.setTickLabelInsets(new RectangleInsets(Axes.TICK, 0, 0, Axes.TICK + Axes.TICK_GAP));
+        axis.setTickLabelInsets(new RectangleInsets(Axes.TICK, Axes.TICK, 0, 0));
         return axis;
     }
 

@@ -122,6 +122,31 @@ class GridTest {
     }
 
     @Test
+    void aPieceIsThePolynomialOfItsCell() {
+        Grid g = Grid.of(X, Y, Z, values(), Beyond.FAULT);
+        double[] p = {0.5, 1.1, 4.4};
+        int[] cells = new int[3];
+        for (int i = 0; i < 3; i++) {
+            cells[i] = g.seams(Double.NaN).get(i).cell(p[i]);
+        }
+        ScalarField piece = g.piece(cells);
+        assertThat(value(piece, p[0], p[1], p[2])).isEqualTo(value(g, p[0], p[1], p[2]));
+        // a fourth difference of a cubic is 0, also across the faces at x = 0.3 and 0.9; the grid's own is not
+        assertThat(fourthDifference(piece)).isCloseTo(0, within(1e-14));
+        assertThat(Math.abs(fourthDifference(g))).isGreaterThan(1e-6);
+        assertThat(g.piece(new int[] {0, 1, 1})).isSameAs(g);
+    }
+
+    private static double fourthDifference(ScalarField f) {
+        double h = 0.35;
+        return value(f, 0.6 - 2 * h, 1.1, 4.4)
+                - 4 * value(f, 0.6 - h, 1.1, 4.4)
+                + 6 * value(f, 0.6, 1.1, 4.4)
+                - 4 * value(f, 0.6 + h, 1.1, 4.4)
+                + value(f, 0.6 + 2 * h, 1.1, 4.4);
+    }
+
+    @Test
     void refusesWhatIsNoGrid() {
         assertThatThrownBy(() -> Grid.of(X, Y, Z, new double[3], Beyond.FAULT)).hasMessageContaining("nodes");
         assertThatThrownBy(() -> Grid.of(new double[] {0}, Y, Z, new double[24], Beyond.FAULT))
@@ -145,7 +170,7 @@ class GridTest {
         return v;
     }
 
-    private static double value(Grid g, double x, double y, double z) {
+    private static double value(ScalarField g, double x, double y, double z) {
         Samples s = new Samples(1);
         g.sample(new double[] {x}, new double[] {y}, new double[] {z}, 1, Double.NaN, Order.VALUE, s);
         return s.value[0];

@@ -160,4 +160,25 @@ class ProfileTest {
                 + s.hzz[0] * d.z() * d.z()
                 + 2 * (s.hxy[0] * d.x() * d.y() + s.hxz[0] * d.x() * d.z() + s.hyz[0] * d.y() * d.z());
     }
+
+    @ParameterizedTest
+    @EnumSource(Interpolation.class)
+    void aPieceIsTheFieldInItsCellAndSmoothBeyond(Interpolation how) {
+        IndexField f = field(Along.R, how, Beyond.LINEAR, Frame.at(new Vector(0, 0, 1)));
+        Seam seam = f.seams().get(0);
+        for (double r : new double[] {0.1e-3, 0.3e-3, 0.7e-3, 1.2e-3}) {
+            int cell = seam.cell(r);
+            IndexField piece = f.piece(new int[] {cell});
+            assertThat(Differences.value(piece, r, 0, 0)).isEqualTo(Differences.value(f, r, 0, 0));
+            assertThat(f.piece(new int[] {cell})).isSameAs(piece);
+            assertThat(piece.seams()).isEmpty();
+            if (cell > 0) {
+                // on both sides of its lower knot the piece is one polynomial: its gradient does not jump
+                double knot = seam.knot(cell - 1);
+                double below = sample(piece, new Vector(knot - 1e-12, 0, 0)).gx[0];
+                double above = sample(piece, new Vector(knot + 1e-12, 0, 0)).gx[0];
+                assertThat(below).isCloseTo(above, within(1e-4));
+            }
+        }
+    }
 }
