@@ -115,10 +115,12 @@ final class Derivatives {
         Arrays.fill(hessian, g.zero);
         for (int i = 0; i < n; i++) {
             int[] along = {g.zero, g.zero, g.zero};
-            for (int j = 0; j < n; j++) {
-                int mixed = partial(first[i], coordinates.get(j));
+            // a derivative may depend on coordinates that the formula itself does not: 1/(1 + r²) of atan(r) on r²
+            for (int j : coordinates(first[i])) {
+                int mixed = partial(first[i], j);
+                int[] slope = slope(j);
                 for (int b = 0; b < 3; b++) {
-                    along[b] = g.add(along[b], g.times(mixed, slopes[j][b]));
+                    along[b] = g.add(along[b], g.times(mixed, slope[b]));
                 }
             }
             int[] bend = bend(coordinates.get(i), first[i], slopes[i]);

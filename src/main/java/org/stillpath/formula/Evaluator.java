@@ -4,8 +4,8 @@ import java.util.Arrays;
 import java.util.List;
 
 /**
- * Runs a {@link Program} one operation at a time over a block of points, a column of results an operation. The reference
- * for the compiled form: every operation is the JDK's or {@link Special}'s, in the order of the program. Against walking
+ * Runs a {@link Program} one operation at a time over a block of points, a column of results an operation. Every
+ * operation is the JDK's or {@link Special}'s, in the order of the program. Against walking
  * the operations point by point this costs a scratch array a call and gains the vector units for the simple operations.
  */
 final class Evaluator {

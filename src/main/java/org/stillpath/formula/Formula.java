@@ -16,12 +16,11 @@ import org.stillpath.unit.Dimension;
 /**
  * A formula of the place with exact first and second derivatives, checked for dimension. Immutable and thread-safe.
  *
- * <p>Sampled directly it walks its operations, which is the reference and is ready at once; {@link #compiled()} makes
- * bytecode for the same operations. Derivatives are symbolic ({@link Derivatives} says how, and how they behave on the
+ * <p>Sampling walks its operations over blocks of points, which is ready at once. Derivatives are symbolic ({@link Derivatives} says how, and how they behave on the
  * axis), against dual numbers, which repeat the same work for every component, and against differences, which lose half
  * the digits. They are made when they are first asked for, since many formulas never are.
  */
-public final class Formula implements ScalarFunction {
+public final class Formula {
     /** Longest text that is read, in UTF-16 code units. */
     public static final int LONGEST_TEXT = 4000;
     /** Deepest nesting of parentheses, signs and powers that is read. */
@@ -111,7 +110,18 @@ public final class Formula implements ScalarFunction {
         return coordinates.isEmpty() || coordinates.equals(EnumSet.of(Coordinate.WAVELENGTH));
     }
 
-    @Override
+    /**
+     * Samples the function at the first {@code count} points. Allocates scratch space once a call and nothing a point.
+     *
+     * @param x points in the formula's own frame, in metres, at least {@code count} of them; likewise {@code y}, {@code z}
+     * @param argumentValues values of {@link #arguments()} in that order, in SI
+     * @param wavelength vacuum wavelength in metres; any value if the formula does not use it
+     * @param chart gives height, clearance and distance; {@link Chart#NONE} if the formula uses none of them
+     * @param order what is wanted; arrays of {@code out} beyond it are left as they are
+     * @param out receives the value in SI, its gradient and its Hessian with respect to x, y and z of the same frame. The
+     *     value is NaN on a domain fault or an overflow; a derivative that does not exist is NaN or infinite in its own
+     *     array; {@link #explain} says why.
+     */
     public void sample(
             double[] x,
             double[] y,
@@ -228,9 +238,17 @@ public final class Formula implements ScalarFunction {
         throw new IllegalArgumentException("a formula at fault has no value: " + tree.text());
     }
 
-    /** The same function in its fast form. */
-    public ScalarFunction compiled() {
-        return this;
+    /** {@link #sample(double[], double[], double[], int, double[], double, Chart, Order, Samples)} without a chart. */
+    public void sample(
+            double[] x,
+            double[] y,
+            double[] z,
+            int count,
+            double[] arguments,
+            double wavelength,
+            Order order,
+            Samples out) {
+        sample(x, y, z, count, arguments, wavelength, Chart.NONE, order, out);
     }
 
     /**

@@ -4,7 +4,7 @@ import org.hipparchus.special.Erf;
 
 /**
  * Functions that the JDK lacks, for scalars, each with the source of its method; and the few small ones that derivatives
- * need. Called by the tree evaluator and by the compiled formulas alike, so that both give the same digits.
+ * need.
  */
 final class Special {
     /** Euler's constant (OEIS A001620). */

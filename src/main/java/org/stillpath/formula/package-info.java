@@ -1,11 +1,11 @@
 /**
- * Floor 2: formulas, from text to tree to dimension check to exact derivatives to bytecode.
+ * Floor 2: formulas, from text to tree to dimension check to exact derivatives.
  *
  * <p>{@link org.stillpath.formula.Formula#parse} reads a formula against the {@link org.stillpath.formula.Names} it may
  * mention; its faults come back together with their offsets. A {@link org.stillpath.formula.Formula} is sampled at arrays
  * of points into {@link org.stillpath.formula.Samples}. On the way the text becomes a tree (sealed records in postfix
  * order, so that no walk recurses), the tree a graph of shared expressions with its derivatives, the graph a list of
- * operations; these are walked, or compiled. Height, clearance and distance come from a {@link
+ * operations, which is walked. Height, clearance and distance come from a {@link
  * org.stillpath.formula.Chart}.
  *
  * <p>The grammar, in EBNF; blanks may stand between its symbols:

@@ -11,7 +11,7 @@ import org.stillpath.unit.Dimension;
 
 /**
  * Formulas that were understood once, by text and by what they may mention. A study that reads the same job many times
- * with other {@code with} values hands one cache to every reading, so that each formula is parsed and compiled once.
+ * with other {@code with} values hands one cache to every reading, so that each formula is parsed and differentiated once.
  * May be shared between threads. Faults are not kept.
  */
 public final class FormulaCache {

@@ -9,20 +9,17 @@ import org.stillpath.formula.Formula;
 import org.stillpath.formula.Kink;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
-import org.stillpath.formula.ScalarFunction;
 
 /**
- * A quantity given by a formula. The values of its {@code with} names are run-time arguments: the same compiled formula
+ * A quantity given by a formula. The values of its {@code with} names are run-time arguments: the same formula
  * serves any number of them.
  */
 public final class FormulaField implements ScalarField {
     private final Formula formula;
-    private final ScalarFunction compiled;
     private final double[] arguments;
 
     private FormulaField(Formula formula, double[] arguments) {
         this.formula = formula;
-        this.compiled = formula.compiled();
         this.arguments = arguments;
     }
 
@@ -38,7 +35,7 @@ public final class FormulaField implements ScalarField {
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
-        compiled.sample(x, y, z, count, arguments, wavelength, order, out);
+        formula.sample(x, y, z, count, arguments, wavelength, order, out);
     }
 
     @Override

@@ -2,18 +2,17 @@ package org.stillpath.medium;
 
 import org.stillpath.formula.Formula;
 import org.stillpath.formula.Order;
-import org.stillpath.formula.ScalarFunction;
 
 /** A formula as a level in a medium's frame: the margin of a condition, or the difference that switches a kink. */
 final class FormulaLevel implements Level {
-    private final ScalarFunction compiled;
+    private final Formula formula;
     private final double[] arguments;
     private final double wavelength;
     private final String text;
     private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
 
     FormulaLevel(Formula formula, double[] arguments, double wavelength, String text) {
-        this.compiled = formula.compiled();
+        this.formula = formula;
         this.arguments = arguments;
         this.wavelength = wavelength;
         this.text = text;
@@ -22,7 +21,7 @@ final class FormulaLevel implements Level {
     @Override
     public double value(double x, double y, double z, double[] gradient) {
         Scratch s = scratch.get().point(x, y, z);
-        compiled.sample(s.x, s.y, s.z, 1, arguments, wavelength, Order.GRADIENT, s.samples);
+        formula.sample(s.x, s.y, s.z, 1, arguments, wavelength, Order.GRADIENT, s.samples);
         gradient[0] = s.samples.gx[0];
         gradient[1] = s.samples.gy[0];
         gradient[2] = s.samples.gz[0];

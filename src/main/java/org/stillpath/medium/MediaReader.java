@@ -62,7 +62,7 @@ public final class MediaReader {
         return read(media, sources, problems, new FormulaCache());
     }
 
-    /** The same with formulas that earlier readings may have parsed and compiled already. */
+    /** The same with formulas that earlier readings may have parsed already. */
     public static Media read(Optional<Section> media, Sources sources, Problems problems, FormulaCache cache) {
         if (media.isEmpty()) {
             return Media.of(List.of());
