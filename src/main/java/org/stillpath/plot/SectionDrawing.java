@@ -77,7 +77,7 @@ final class SectionDrawing {
 
     Picture picture() {
         double right = width.points();
-        double top = canvas.heading(figure.question(), figure.answer(), right);
+        double top = canvas.heading(figure.question(), typeset(figure.answer()), right);
         Bounds bounds = bounds();
         // the height of the strip depends only on whether heights are exaggerated, which no shift of the plot changes
         Layout trial = layout(bounds, top);
@@ -85,7 +85,12 @@ final class SectionDrawing {
         Layout layout = layout(bounds, below);
         draw(layout);
         double bottom = layout.plot().bottom() + Axes.BELOW;
-        return canvas.picture(figure.answer(), description(layout), right, bottom);
+        return canvas.picture(typeset(figure.answer()), description(layout), right, bottom);
+    }
+
+    /** Plain text's hyphen before a number as the minus sign that it means. */
+    private static String typeset(String plain) {
+        return plain.replaceAll("(?<![\\w.])-(?=\\d)", "−");
     }
 
     // ---- where things go

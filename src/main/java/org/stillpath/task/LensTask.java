@@ -234,7 +234,7 @@ final class LensTask implements Task {
                     image,
                     "m",
                     g.behind() * e * reach / below + g.behind() * above / below * slope + ROUNDING * Math.abs(image));
-            Quantity.Amount times =
+            Quantity.Amount ratio =
                     put("magnification", magnification, "1", Math.abs(magnification) * slope + ROUNDING);
             String kind = kind(image, scale);
             String orientation = magnification > 0 ? "erect" : "inverted";
@@ -243,7 +243,7 @@ final class LensTask implements Task {
             boolean real = kind.equals("real");
             String distance = Display.of(Math.abs(image), "m", at.error()).toString();
             return Optional.of((real ? "Real, " : "Virtual, ") + orientation + " image " + distance
-                    + (real ? " behind" : " before") + " the last vertex, " + said(times) + " times as large");
+                    + (real ? " behind" : " before") + " the last vertex, magnification " + said(ratio));
         }
 
         private static String kind(double distance, double scale) {
