@@ -26,7 +26,7 @@ import org.stillpath.unit.Dimension;
  */
 public enum Workload {
     /** A parabolic rod, 20 mm, skew rays at heights to 0.8 mm. */
-    ROD("n0*sqrt(1 - (g*r)^2)", Map.of("n0", 1.6, "g", 300.0), 20e-3 / 1.6, new double[] {0.8e-9, 0.8e-12, 0.8e-15}) {
+    ROD("n0*sqrt(1 - (g*r)^2)", Map.of("n0", 1.6, "g", 300.0), 20e-3, 1.6, new double[] {0.8e-9, 0.8e-12, 0.8e-15}) {
         @Override
         Vector[] ray(Random random) {
             return skew(random);
@@ -36,7 +36,7 @@ public enum Workload {
     EVEN_POWERS(
             "n0*sqrt(1 - (g*r)^2 + 2/3*(g*r)^4 - 17/45*(g*r)^6)",
             Map.of("n0", 1.6, "g", 300.0),
-            20e-3 / 1.6,
+            20e-3, 1.6,
             new double[] {0.8e-9, 0.8e-12, 0.8e-15}) {
         @Override
         Vector[] ray(Random random) {
@@ -48,7 +48,7 @@ public enum Workload {
             "1 + 2.7e-4*exp(-((2*R*z + rho^2)/(R + sqrt(r^2 + (z + R)^2)))/H)*288/(288 + 8*exp(-((2*R*z + rho^2)/(R +"
                     + " sqrt(r^2 + (z + R)^2)))/w))",
             Map.of("R", 6371e3, "H", 8400.0, "w", 2.0),
-            20e3,
+            20e3, 1,
             new double[] {1e-3, 1e-6, 1e-9}) {
         @Override
         Vector[] ray(Random random) {
@@ -62,7 +62,7 @@ public enum Workload {
     PLATE(
             "1.5 + 1e-3*exp(-2*r^2/w^2)*(1 + 0.3*sin(pi*z/L))",
             Map.of("w", 5e-3, "L", 25e-3),
-            25e-3 / 1.5,
+            25e-3, 1.5,
             new double[] {5e-9, 5e-12, 5e-15}) {
         @Override
         Vector[] ray(Random random) {
@@ -78,12 +78,14 @@ public enum Workload {
     private final String formula;
     private final Map<String, Double> values;
     private final double end;
+    private final double length;
     private final double[] accuracies;
 
-    Workload(String formula, Map<String, Double> values, double length, double[] accuracies) {
+    Workload(String formula, Map<String, Double> values, double length, double index, double[] accuracies) {
         this.formula = formula;
         this.values = values;
-        this.end = length;
+        this.length = length;
+        this.end = length / index;
         this.accuracies = accuracies;
     }
 
@@ -105,7 +107,7 @@ public enum Workload {
 
     /** Length of the scene, metres. */
     double scale() {
-        return end;
+        return length;
     }
 
     /** Largest distance from the true end that is allowed at a level from 1 to 3, metres. */

@@ -52,7 +52,12 @@ public final class Tracer {
         }
     }
 
-    /** A tracer for one train and ending. */
+    /** A tracer for one train and ending with the production engine. */
+    public Tracer(Train train, Ending ending, Settings settings) {
+        this(train, ending, settings, NystromPropagator::new);
+    }
+
+    /** The same with an engine of one's own choice. */
     public Tracer(Train train, Ending ending, Settings settings, Propagator.Maker engine) {
         this.train = train;
         this.ending = ending;

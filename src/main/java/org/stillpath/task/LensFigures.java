@@ -7,7 +7,6 @@ import org.stillpath.geometry.Vector;
 import org.stillpath.ray.Action;
 import org.stillpath.ray.Element;
 import org.stillpath.ray.Ending;
-import org.stillpath.ray.HipparchusPropagator;
 import org.stillpath.ray.RayStart;
 import org.stillpath.ray.Status;
 import org.stillpath.ray.Traced;
@@ -59,8 +58,7 @@ final class LensFigures {
         double before = Math.max(0.4 * scale, 1e-9);
         double behind = behind();
         Ending ending = new Ending.AtZ(last + along * behind);
-        Tracer tracer =
-                new Tracer(train, ending, new Tracer.Settings(ACCURACY, false, true), HipparchusPropagator::new);
+        Tracer tracer = new Tracer(train, ending, new Tracer.Settings(ACCURACY, false, true));
         double height = beamHeight();
         List<Traced> traced = new ArrayList<>();
         for (int i = 0; i < RAYS; i++) {
@@ -237,11 +235,7 @@ final class LensFigures {
 
     /** The beam's height, made smaller until its rim goes through. */
     private double largestThatPasses(double wanted) {
-        Tracer tracer = new Tracer(
-                train,
-                new Ending.BehindLastSurface(),
-                new Tracer.Settings(ACCURACY, false, false),
-                HipparchusPropagator::new);
+        Tracer tracer = new Tracer(train, new Ending.BehindLastSurface(), new Tracer.Settings(ACCURACY, false, false));
         double h = wanted;
         for (int i = 0; i < 12; i++) {
             Vector from = object.filter(t -> t.distance() > 0)

@@ -14,7 +14,6 @@ import org.stillpath.problem.ProblemException;
 import org.stillpath.ray.Action;
 import org.stillpath.ray.Element;
 import org.stillpath.ray.Ending;
-import org.stillpath.ray.HipparchusPropagator;
 import org.stillpath.ray.RayStart;
 import org.stillpath.ray.Status;
 import org.stillpath.ray.Traced;
@@ -310,7 +309,7 @@ final class LensTask implements Task {
             Tracer.Settings settings = new Tracer.Settings(accuracy, true, false);
             Vector first = of.elements().get(0).surface().vertex();
             RayStart start = RayStart.of(new Vector(0, 0, first.z()), Vector.Z);
-            Traced t = new Tracer(of, new Ending.BehindLastSurface(), settings, HipparchusPropagator::new).trace(start);
+            Traced t = new Tracer(of, new Ending.BehindLastSurface(), settings).trace(start);
             if (t.status() != Status.ARRIVED) {
                 throw new ProblemException(Problem.input(
                         place,

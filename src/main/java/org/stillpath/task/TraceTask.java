@@ -9,7 +9,6 @@ import java.util.Optional;
 import org.stillpath.job.Section;
 import org.stillpath.job.Value;
 import org.stillpath.ray.Ending;
-import org.stillpath.ray.HipparchusPropagator;
 import org.stillpath.ray.RayStart;
 import org.stillpath.ray.Status;
 import org.stillpath.ray.Traced;
@@ -79,7 +78,7 @@ final class TraceTask implements Task {
             Scene scene, List<RayStart> starts, Ending ending, boolean transfer, List<String> figures) {
         Train train = scene.trainAt(scene.wavelength());
         Tracer.Settings settings = new Tracer.Settings(scene.accuracy(), transfer, !figures.isEmpty());
-        List<Traced> traced = new Tracer(train, ending, settings, HipparchusPropagator::new).trace(starts);
+        List<Traced> traced = new Tracer(train, ending, settings).trace(starts);
         List<RayRow> rows = new ArrayList<>(traced.size());
         for (Traced t : traced) {
             rows.add(row(t));

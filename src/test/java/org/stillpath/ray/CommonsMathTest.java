@@ -58,12 +58,22 @@ class CommonsMathTest {
 
     private static void compare(
             double accuracy, IndexField field, Vector from, Vector toward, double z, Field written) {
+        for (Propagator.Maker engine : Engines.ALL) {
+            compare(engine, accuracy, field, from, toward, z, written);
+        }
+    }
+
+    private static void compare(
+            Propagator.Maker engine,
+            double accuracy,
+            IndexField field,
+            Vector from,
+            Vector toward,
+            double z,
+            Field written) {
         Vector d = toward.unit();
         Traced end = new Tracer(
-                        Train.through(field),
-                        new Ending.AtZ(z),
-                        new Tracer.Settings(accuracy, false, false),
-                        HipparchusPropagator::new)
+                        Train.through(field), new Ending.AtZ(z), new Tracer.Settings(accuracy, false, false), engine)
                 .trace(RayStart.of(from, d));
         double[] f = new double[3];
         written.at(from.x(), from.y(), from.z(), f);

@@ -16,8 +16,7 @@ class InterfaceTest {
     private static final IndexField AIR = Fields.uniform(1);
 
     private static Traced trace(Train train, Ending ending, Vector from, Vector direction) {
-        return new Tracer(train, ending, new Tracer.Settings(1e-12, false, false), HipparchusPropagator::new)
-                .trace(RayStart.of(from, direction));
+        return Engines.trace(train, ending, new Tracer.Settings(1e-12, false, false), RayStart.of(from, direction));
     }
 
     private static Train plane(double before, double behind) {

@@ -13,7 +13,7 @@ class TracerTest {
     private static final Tracer.Settings FINE = new Tracer.Settings(1e-12, true, false);
 
     private static Traced trace(Train train, Ending ending, Vector from, Vector direction) {
-        return new Tracer(train, ending, FINE, HipparchusPropagator::new).trace(RayStart.of(from, direction));
+        return Engines.trace(train, ending, FINE, RayStart.of(from, direction));
     }
 
     private static Element refract(Surface surface, IndexField into) {
