@@ -3,7 +3,7 @@ package org.stillpath.io;
 import java.io.ByteArrayInputStream;
 import java.io.IOException;
 import java.io.InputStream;
-import java.io.SequenceInputStream;
+import java.io.StringReader;
 import java.nio.ByteBuffer;
 import java.nio.ByteOrder;
 import java.nio.charset.StandardCharsets;
@@ -76,7 +76,7 @@ final class VtkXml {
     /**
      * A {@code DataArray}.
      *
-     * @param number how many of them stand before it
+     * @param number which it is, counted from 1
      * @param array what it is
      * @param format ascii, binary or appended
      * @param offset where it starts in the appended data
@@ -118,11 +118,11 @@ final class VtkXml {
         VtkBlock.check(wanted, source, asked);
         VtkXml file = new VtkXml(bytes, source, wanted, asked);
         file.cutOff();
-        return file.lattice();
+        return file.lattice(file.head());
     }
 
-    private Lattice lattice() {
-        walk(this::declared);
+    private Lattice lattice(String head) {
+        walk(head, this::declared);
         Place grid = gridPlace;
         if (grid == null) {
             throw fault(
@@ -151,7 +151,7 @@ final class VtkXml {
             }
             read[i] = d.format().equals("appended") ? appended(d, count) : new double[0];
         }
-        walk((xml, parents, number) -> {
+        walk(head, (xml, parents, number) -> {
             for (int i = 0; i < needed.size(); i++) {
                 Data d = needed.get(i);
                 if (d.number() == number && !d.format().equals("appended")) {
@@ -184,13 +184,13 @@ final class VtkXml {
          *
          * @param xml at its start tag
          * @param parents names of the elements around it, the innermost first
-         * @param number for a {@code DataArray}, how many stand before it
+         * @param number for a {@code DataArray}, which it is, counted from 1; 0 for others
          * @return whether the element was read to its end
          */
         boolean element(XMLStreamReader xml, Deque<String> parents, int number) throws XMLStreamException;
     }
 
-    private void walk(Visitor visitor) {
+    private void walk(String head, Visitor visitor) {
         XMLInputFactory factory = XMLInputFactory.newDefaultFactory();
         factory.setProperty(XMLInputFactory.SUPPORT_DTD, false);
         factory.setProperty(XMLInputFactory.IS_SUPPORTING_EXTERNAL_ENTITIES, false);
@@ -199,14 +199,10 @@ final class VtkXml {
         factory.setXMLResolver((publicId, systemId, base, namespace) -> {
             throw new XMLStreamException("other files are not read");
         });
-        InputStream in = new ByteArrayInputStream(bytes, 0, headEnd);
-        if (headEnd < bytes.length) {
-            in = new SequenceInputStream(in, new ByteArrayInputStream(CLOSING.getBytes(StandardCharsets.US_ASCII)));
-        }
         Deque<String> parents = new ArrayDeque<>();
         int number = 0;
         try {
-            XMLStreamReader xml = factory.createXMLStreamReader(in);
+            XMLStreamReader xml = factory.createXMLStreamReader(new StringReader(head));
             while (xml.hasNext()) {
                 switch (xml.next()) {
                     case XMLStreamConstants.DTD ->
@@ -217,9 +213,9 @@ final class VtkXml {
                         throw fault(place(xml), "an entity stands here; VTK files have none, and it is not read");
                     case XMLStreamConstants.START_ELEMENT -> {
                         String name = xml.getLocalName();
-                        int before = number;
-                        number += name.equals("DataArray") ? 1 : 0;
-                        if (!visitor.element(xml, parents, before)) {
+                        boolean data = name.equals("DataArray");
+                        number += data ? 1 : 0;
+                        if (!visitor.element(xml, parents, data ? number : 0)) {
                             parents.push(name);
                         }
                     }
@@ -557,6 +553,13 @@ final class VtkXml {
 
     private static ProblemException cut(Data d) {
         return fault(d.place(), "the file is too short for the numbers of this array; it may be cut off");
+    }
+
+    /** What there is of XML in the file. */
+    private String head() {
+        String text = FileText.decode(headEnd == bytes.length ? bytes : Arrays.copyOf(bytes, headEnd), source);
+        String unmarked = text.startsWith("\ufeff") ? text.substring(1) : text;
+        return headEnd == bytes.length ? unmarked : unmarked + CLOSING;
     }
 
     /** Finds the appended data, which may be any bytes. */

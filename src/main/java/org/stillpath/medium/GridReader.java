@@ -223,11 +223,11 @@ final class GridReader {
         }
         notes.add(String.format(
                 Locale.ROOT,
-                "%s: the grid is %s long and its index goes up to %.4g; if that is not meant, its unit of length is wrong,"
+                "%s: the grid is %s long and its index goes up to %s; if that is not meant, its unit of length is wrong,"
                         + " such as %s for %s",
                 source,
                 Told.length(most),
-                largest,
+                Told.number(largest),
                 most < LONG_BLOCK ? "mm" : "m",
                 most < LONG_BLOCK ? "m" : "mm"));
     }
