@@ -340,7 +340,7 @@ final class VtkXml {
                     throw fault(
                             place,
                             "offset " + Words.quoted(said) + " does not lie in the appended data, which are "
-                                    + (bytes.length - appendedStart) + " bytes with the file's end");
+                                    + (bytes.length - appendedStart) + " bytes with the file's end; it may be cut off");
                 }
                 offset = (long) o;
             }
