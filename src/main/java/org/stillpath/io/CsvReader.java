@@ -1,11 +1,12 @@
 package org.stillpath.io;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
-import java.util.OptionalDouble;
 import org.jspecify.annotations.Nullable;
+import org.stillpath.job.Lattice;
 import org.stillpath.job.Table;
 import org.stillpath.problem.Place;
 import org.stillpath.problem.Problem;
@@ -24,6 +25,9 @@ import org.stillpath.unit.Decimal;
  * than numbers is carried along as words. Lines that start with {@code #} before the header and blank lines are left
  * out. The text is walked twice, once to learn what each column holds and once to fill arrays of the right size; that
  * costs a second pass and saves boxing.
+ *
+ * <p>The nodes of a grid, which may be millions, are read in one pass by {@link #lattice}: cells become numbers where
+ * they stand, without a string each. A row's line is not kept; a fault that needs it walks the text again.
  */
 final class CsvReader {
     /** Most bytes of a table. */
@@ -32,6 +36,11 @@ final class CsvReader {
     static final int MOST_CELLS = 4_000_000;
     /** Most columns of a table. */
     static final int MOST_COLUMNS = 1_000;
+
+    /** Most bytes of a table that is a grid. */
+    static final int MOST_LATTICE_BYTES = 160 << 20;
+
+    private static final List<String> AXES = List.of("x", "y", "z");
 
     private final String text;
     private final String source;
@@ -42,11 +51,17 @@ final class CsvReader {
     private int line = 1;
     private int lineStart;
 
-    /** The cell read last. */
-    private String cell = "";
-
+    // the cell read last: its line, where that line and the cell start, where it ends
     private int cellLine;
-    private int cellColumn;
+    private int cellLineStart;
+    private int cellStart;
+    private int cellEnd;
+    /** Its text, if it stands in quotes. */
+    private @Nullable String cellQuoted;
+    /** Whether it holds a comma; likewise a point. */
+    private boolean cellComma;
+
+    private boolean cellPoint;
     /** Whether the cell read last was the last of its line. */
     private boolean lineEnds;
 
@@ -66,7 +81,39 @@ final class CsvReader {
         return new CsvReader(FileText.decode(bytes, source), source).table();
     }
 
+    /**
+     * Reads the nodes of a rectilinear grid, one a row, in any order.
+     *
+     * @param bytes the file
+     * @param source its name, for places
+     * @param wanted which columns, if that is said
+     * @param asked where the job names the file, for faults of {@code wanted}
+     * @throws ProblemException with all that is wrong with it
+     */
+    static Lattice lattice(byte[] bytes, String source, Lattice.Wanted wanted, Place asked) {
+        return new CsvReader(FileText.decode(bytes, source), source).lattice(wanted, asked);
+    }
+
     private Table table() {
+        Head head = head();
+        int bodyPos = pos;
+        int bodyLine = line;
+        List<String> notes = new ArrayList<>(head.notes());
+        boolean[] words = new boolean[head.headers().size()];
+        int rows = survey(head.headers(), words, notes);
+        problems.throwIfAny();
+
+        pos = bodyPos;
+        line = bodyLine;
+        lineStart = bodyPos;
+        return filled(head.headers(), head.units(), words, rows, notes);
+    }
+
+    /** What stands before the rows. */
+    private record Head(List<String> headers, List<String> units, List<Place> places, List<String> notes) {}
+
+    /** Reads up to the first row. */
+    private Head head() {
         List<String> notes = new ArrayList<>();
         if (text.startsWith("\ufeff")) {
             pos = 1;
@@ -86,19 +133,166 @@ final class CsvReader {
         }
         List<String> headers = new ArrayList<>();
         List<String> units = new ArrayList<>();
-        header(headers, units);
-        int columns = headers.size();
+        List<Place> places = new ArrayList<>();
+        header(headers, units, places);
+        return new Head(headers, units, places, notes);
+    }
+
+    private Lattice lattice(Lattice.Wanted wanted, Place asked) {
+        Head head = head();
+        int[] roles = roles(head, wanted, asked);
         int bodyPos = pos;
         int bodyLine = line;
-
-        boolean[] words = new boolean[columns];
-        int rows = survey(headers, words, notes);
+        List<String> notes = new ArrayList<>(head.notes());
+        Commas commas = new Commas();
+        LatticeRows rows = new LatticeRows(Math.min(breaks() + 1, Lattice.MOST_NODES));
+        int columns = roles.length;
+        double[] node = new double[4];
+        while (pos < text.length()) {
+            if (skipBlankLine()) {
+                continue;
+            }
+            if (rows.count() == Lattice.MOST_NODES) {
+                throw fault(
+                        new Place(source, line, 1),
+                        "the limit of nodes in a grid, " + Lattice.MOST_NODES + ", is exceeded; leave out planes");
+            }
+            int c = 0;
+            do {
+                cell();
+                if (c < columns && roles[c] >= 0) {
+                    double number = cellNumber();
+                    if (Double.isNaN(number)) {
+                        problems.add(notNumber(head.headers().get(c), rows.count() + 1));
+                    } else if (cellComma || cellPoint) {
+                        commas.see();
+                    }
+                    node[roles[c]] = number;
+                }
+                c++;
+            } while (!lineEnds);
+            if (c != columns) {
+                problems.add(new Place(source, cellLine, 1), "", cellsOf(rows.count() + 1, c, columns));
+            }
+            rows.add(node);
+        }
+        if (rows.count() == 0) {
+            throw fault(new Place(source, line, 1), "the table has no rows below its header");
+        }
+        commas.judge(notes);
         problems.throwIfAny();
+        return rows.lattice(source, columns(head, roles), notes, row -> {
+            pos = bodyPos;
+            line = bodyLine;
+            lineStart = bodyPos;
+            return placeOfRow(row);
+        });
+    }
 
-        pos = bodyPos;
-        line = bodyLine;
-        lineStart = bodyPos;
-        return filled(headers, units, words, rows, notes);
+    /** Line breaks from here to the end, a line break of two characters counted twice at most. */
+    private int breaks() {
+        int count = 0;
+        for (int i = pos; i < text.length(); i++) {
+            count += text.charAt(i) == '\n' || (text.charAt(i) == '\r' && !text.startsWith("\n", i + 1)) ? 1 : 0;
+        }
+        return count;
+    }
+
+    /** Walks from the first row to the given one, counted from 0. */
+    private Place placeOfRow(int row) {
+        for (int r = -1; pos < text.length(); ) {
+            if (skipBlankLine()) {
+                continue;
+            }
+            r++;
+            if (r == row) {
+                break;
+            }
+            do {
+                cell();
+            } while (!lineEnds);
+        }
+        return new Place(source, line, 1);
+    }
+
+    /** By column of the file: 0, 1, 2 for x, y, z, 3 for the value, −1 for what is left out. */
+    private int[] roles(Head head, Lattice.Wanted wanted, Place asked) {
+        List<String> headers = head.headers();
+        if (wanted.array().isPresent()) {
+            throw fault(asked, "`array` belongs to VTK files; in " + source + " `columns` says what to take");
+        }
+        int[] roles = new int[headers.size()];
+        Arrays.fill(roles, -1);
+        if (!wanted.columns().isEmpty()) {
+            for (int k = 0; k < 4; k++) {
+                String name = wanted.columns().get(k);
+                int c = headers.indexOf(name);
+                if (c < 0) {
+                    throw fault(asked, source + " has no column " + Words.quoted(name) + Words.remedy(name, headers));
+                }
+                if (roles[c] >= 0) {
+                    throw fault(asked, "`columns` names " + Words.quoted(name) + " twice");
+                }
+                roles[c] = k;
+            }
+            return roles;
+        }
+        Place first = head.places().get(0);
+        int left = headers.size();
+        for (int k = 0; k < 3; k++) {
+            int c = axis(headers, AXES.get(k));
+            if (c < 0) {
+                throw fault(
+                        first,
+                        "there is no column " + Words.quoted(AXES.get(k)) + " among " + String.join(", ", headers)
+                                + "; a grid needs a header such as \"x [mm],y [mm],z [mm],value\", or `columns: [..]`"
+                                + " beside `file` with the headers of x, y, z and the value. Where nothing changes"
+                                + " along an axis, give the same values at two places on it");
+            }
+            roles[c] = k;
+            left--;
+        }
+        if (left != 1) {
+            throw fault(
+                    first,
+                    left == 0
+                            ? "there is no column of values beside x, y and z"
+                            : "there are " + left + " columns beside x, y and z; `columns: [x, y, z, "
+                                    + headers.get(firstFree(roles)) + "]` beside `file` says which to take");
+        }
+        roles[firstFree(roles)] = 3;
+        return roles;
+    }
+
+    private static int axis(List<String> headers, String axis) {
+        for (int c = 0; c < headers.size(); c++) {
+            if (headers.get(c).equalsIgnoreCase(axis)) {
+                return c;
+            }
+        }
+        return -1;
+    }
+
+    private static int firstFree(int[] roles) {
+        int c = 0;
+        while (roles[c] >= 0) {
+            c++;
+        }
+        return c;
+    }
+
+    /** Headings of x, y, z and the value, without numbers yet. */
+    private static List<Lattice.Column> columns(Head head, int[] roles) {
+        List<Lattice.Column> columns = new ArrayList<>();
+        for (int k = 0; k < 4; k++) {
+            int c = 0;
+            while (roles[c] != k) {
+                c++;
+            }
+            columns.add(new Lattice.Column(
+                    head.headers().get(c), head.units().get(c), head.places().get(c), new double[0]));
+        }
+        return columns;
     }
 
     private Table filled(List<String> headers, List<String> units, boolean[] words, int rows, List<String> notes) {
@@ -132,9 +326,9 @@ final class CsvReader {
                 cell();
                 @Nullable List<String> list = textOf.get(c);
                 if (list != null) {
-                    list.add(cell);
+                    list.add(cellText());
                 } else {
-                    numberOf.get(c)[r] = number(cell).orElse(Double.NaN);
+                    numberOf.get(c)[r] = cellNumber();
                 }
             }
             r++;
@@ -142,11 +336,12 @@ final class CsvReader {
         return new Table(source, numberHeaders, numberUnits, numbers, texts, notes);
     }
 
-    private void header(List<String> headers, List<String> units) {
+    private void header(List<String> headers, List<String> units, List<Place> places) {
         int numeric = 0;
         Place start = new Place(source, line, 1);
         do {
             cell();
+            String cell = cellText();
             String unit = "";
             String name = cell;
             int open = cell.lastIndexOf('[');
@@ -159,7 +354,8 @@ final class CsvReader {
             } else if (headers.contains(name)) {
                 problems.add(cellPlace(), "", "header " + Words.quoted(name) + " stands here twice");
             }
-            numeric += number(cell).isPresent() ? 1 : 0;
+            numeric += Double.isNaN(cellNumber()) ? 0 : 1;
+            places.add(cellPlace());
             headers.add(name);
             units.add(unit);
             if (headers.size() > MOST_COLUMNS) {
@@ -192,8 +388,8 @@ final class CsvReader {
             do {
                 cell();
                 if (c < columns) {
-                    commas.see();
-                    if (number(cell).isPresent()) {
+                    if (!Double.isNaN(cellNumber())) {
+                        commas.see();
                         numbers[c]++;
                     } else {
                         others[c]++;
@@ -205,13 +401,7 @@ final class CsvReader {
                 c++;
             } while (!lineEnds);
             if (c != columns) {
-                problems.add(
-                        new Place(source, cellLine, 1),
-                        "",
-                        "row " + rows + " has " + c + (c == 1 ? " cell" : " cells") + ", the header " + columns
-                                + (separator == ',' && c > columns
-                                        ? "; decimal commas need semicolons or tabs between the columns"
-                                        : ""));
+                problems.add(new Place(source, cellLine, 1), "", cellsOf(rows, c, columns));
             }
             if ((long) rows * columns > MOST_CELLS) {
                 throw fault(cellPlace(), "the limit of cells in a table, " + MOST_CELLS + ", is exceeded");
@@ -230,7 +420,15 @@ final class CsvReader {
         return rows;
     }
 
+    private String cellsOf(int row, int cells, int columns) {
+        return "row " + row + " has " + cells + (cells == 1 ? " cell" : " cells") + ", the header " + columns
+                + (separator == ',' && cells > columns
+                        ? "; decimal commas need semicolons or tabs between the columns"
+                        : "");
+    }
+
     private Problem notNumber(String header, int row) {
+        String cell = cellText();
         String what;
         if (cell.isEmpty()) {
             what = "the cell is empty; a number is needed";
@@ -250,20 +448,19 @@ final class CsvReader {
         private String pointCell = "";
         private boolean certain;
 
+        /** Looks at the cell read last, a number. */
         void see() {
-            int at = cell.indexOf(',');
-            if (number(cell).isEmpty()) {
-                return;
-            }
-            if (at >= 0) {
+            if (cellComma) {
+                String cell = cellText();
+                int at = cell.indexOf(',');
                 if (comma == null) {
                     comma = cellPlace();
                     commaCell = cell;
                 }
                 certain |= separator == ';' || !looksLikeThousands(cell, at);
-            } else if (cell.indexOf('.') >= 0 && point == null) {
+            } else if (cellPoint && point == null) {
                 point = cellPlace();
-                pointCell = cell;
+                pointCell = cellText();
             }
         }
 
@@ -297,15 +494,15 @@ final class CsvReader {
         }
     }
 
-    /** A number with a decimal point or one decimal comma. */
-    private OptionalDouble number(String s) {
+    /** A number with a decimal point or one decimal comma; NaN for what is none. */
+    private static double number(String s) {
         int comma = s.indexOf(',');
         if (comma < 0) {
-            return Decimal.parse(s);
+            return Decimal.parse(s, 0, s.length());
         }
         return s.indexOf('.') >= 0 || s.indexOf(',', comma + 1) >= 0
-                ? OptionalDouble.empty()
-                : Decimal.parse(s.replace(',', '.'));
+                ? Double.NaN
+                : Decimal.parse(s.replace(',', '.'), 0, s.length());
     }
 
     /** The separator of the header line: a semicolon or a tab where there is one outside quotes, else the comma. */
@@ -357,22 +554,34 @@ final class CsvReader {
         return true;
     }
 
-    /** Reads one cell and the separator or line break behind it. */
+    /** Steps over one cell and the separator or line break behind it; makes no object of a cell without quotes. */
     private void cell() {
         while (pos < text.length() && text.charAt(pos) == ' ') {
             pos++;
         }
         cellLine = line;
-        cellColumn = 1 + text.codePointCount(lineStart, pos);
+        cellLineStart = lineStart;
+        cellStart = pos;
+        cellQuoted = null;
+        cellComma = false;
+        cellPoint = false;
         boolean quoted = pos < text.length() && text.charAt(pos) == '"';
         if (quoted) {
             quotedCell();
         } else {
-            int start = pos;
-            while (pos < text.length() && text.charAt(pos) != separator && !isBreak(text.charAt(pos))) {
+            char c;
+            while (pos < text.length() && (c = text.charAt(pos)) != separator && !isBreak(c)) {
+                cellComma |= c == ',';
+                cellPoint |= c == '.';
                 pos++;
             }
-            cell = text.substring(start, pos).strip();
+            cellEnd = pos;
+            while (cellEnd > cellStart && Character.isWhitespace(text.charAt(cellEnd - 1))) {
+                cellEnd--;
+            }
+            while (cellStart < cellEnd && Character.isWhitespace(text.charAt(cellStart))) {
+                cellStart++;
+            }
         }
         lineEnds = pos >= text.length() || text.charAt(pos) != separator;
         if (lineEnds) {
@@ -380,6 +589,19 @@ final class CsvReader {
         } else {
             pos++;
         }
+    }
+
+    /** The text of the cell read last. */
+    private String cellText() {
+        return cellQuoted != null ? cellQuoted : text.substring(cellStart, cellEnd);
+    }
+
+    /** The number in the cell read last; NaN if it is none. */
+    private double cellNumber() {
+        if (cellQuoted == null && !cellComma) {
+            return Decimal.parse(text, cellStart, cellEnd);
+        }
+        return number(cellText());
     }
 
     private void quotedCell() {
@@ -413,7 +635,10 @@ final class CsvReader {
         if (pos < text.length() && text.charAt(pos) != separator && !isBreak(text.charAt(pos))) {
             throw fault(start, "after a quoted cell only a separator or the line's end may stand");
         }
-        cell = b.toString().strip();
+        String inside = b.toString().strip();
+        cellQuoted = inside;
+        cellComma = inside.indexOf(',') >= 0;
+        cellPoint = inside.indexOf('.') >= 0;
     }
 
     /** Steps over a line break, LF, CR or both, if there is one. */
@@ -429,7 +654,7 @@ final class CsvReader {
     }
 
     private Place cellPlace() {
-        return new Place(source, cellLine, cellColumn);
+        return new Place(source, cellLine, 1 + text.codePointCount(cellLineStart, cellStart));
     }
 
     private static boolean isBreak(char c) {

@@ -16,6 +16,7 @@ import java.util.Map;
 import java.util.jar.JarFile;
 import java.util.stream.Stream;
 import org.jspecify.annotations.Nullable;
+import org.stillpath.job.Lattice;
 import org.stillpath.job.Node;
 import org.stillpath.job.Sources;
 import org.stillpath.job.Table;
@@ -86,17 +87,39 @@ public final class FileSources implements Sources {
 
     @Override
     public Table table(String name, Place asked) {
+        Content content = content(name, CsvReader.MOST_BYTES, asked);
+        return CsvReader.read(content.bytes(), content.shown());
+    }
+
+    /** The format is told by how the file starts, not by its name: a VTK file named .txt is one all the same. */
+    @Override
+    public Lattice lattice(String name, Lattice.Wanted wanted, Place asked) {
+        Content content = content(name, CsvReader.MOST_LATTICE_BYTES, asked);
+        if (VtkLegacy.isOne(content.bytes())) {
+            return VtkLegacy.read(content.bytes(), content.shown(), wanted, asked);
+        }
+        if (VtkXml.isOne(content.bytes())) {
+            return VtkXml.read(content.bytes(), content.shown(), wanted, asked);
+        }
+        return CsvReader.lattice(content.bytes(), content.shown(), wanted, asked);
+    }
+
+    /** The bytes of a file and its name as the user would write it. */
+    private record Content(byte[] bytes, String shown) {}
+
+    /** A file beside the document that names it, shipped or the user's own. */
+    private Content content(String name, int limit, Place asked) {
         if (asked.source().startsWith(SHIPPED) && !folders.containsKey(asked.source())) {
             String beside = asked.source().substring(0, asked.source().lastIndexOf('/') + 1);
             String resource = beside + name;
-            byte[] bytes = isPlainName(name) ? resource(resource, CsvReader.MOST_BYTES, asked) : null;
+            byte[] bytes = isPlainName(name) ? resource(resource, limit, asked) : null;
             if (bytes == null) {
                 throw new ProblemException(Problem.file(asked, "there is no shipped file " + Words.quoted(resource)));
             }
-            return CsvReader.read(bytes, resource);
+            return new Content(bytes, resource);
         }
         Path file = resolve(name, asked);
-        return CsvReader.read(FileText.bytes(file, CsvReader.MOST_BYTES, asked, name), shown(file));
+        return new Content(FileText.bytes(file, limit, asked, name), shown(file));
     }
 
     /**

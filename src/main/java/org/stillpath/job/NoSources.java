@@ -19,4 +19,10 @@ enum NoSources implements Sources {
         throw new ProblemException(
                 Problem.input(asked, "", "\"" + name + "\" cannot be read: no files are at hand here"));
     }
+
+    @Override
+    public Lattice lattice(String name, Lattice.Wanted wanted, Place asked) {
+        throw new ProblemException(
+                Problem.input(asked, "", "\"" + name + "\" cannot be read: no files are at hand here"));
+    }
 }

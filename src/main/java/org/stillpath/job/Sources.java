@@ -29,6 +29,17 @@ public interface Sources {
      */
     Table table(String name, Place asked);
 
+    /**
+     * Nodes of a rectilinear grid with a value each: a CSV table of x, y, z and a value, or a VTK file.
+     *
+     * @param name path relative to the document that names it, as it stands there
+     * @param wanted what of the file is taken
+     * @param asked where it stands
+     * @return the nodes, in the units of the file
+     * @throws org.stillpath.problem.ProblemException if it may not be read, or does not hold such a grid
+     */
+    Lattice lattice(String name, Lattice.Wanted wanted, Place asked);
+
     /** Sources for callers without files: whatever is asked for is a fault that says so. */
     static Sources none() {
         return NoSources.INSTANCE;

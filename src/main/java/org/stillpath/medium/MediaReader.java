@@ -151,21 +151,9 @@ public final class MediaReader {
             index.fault("an index is a number, a formula, or a section such as {profile: {along: r, ..}}, not a list");
             return new UniformMedium(d, 1, false);
         }
-        Section s = index.section();
-        Optional<Value> profile = s.find("profile");
-        Optional<Value> grid = s.find("grid");
-        int given = (profile.isPresent() ? 1 : 0) + (grid.isPresent() ? 1 : 0);
-        Optional<FieldMedium> read = Optional.empty();
-        if (given != 1) {
-            index.fault((given == 0 ? "" : "only ") + "one of `profile` and `grid` is needed here");
-        } else if (profile.isPresent()) {
-            read = tables.profile(profile.get().section(), Kind.NUMBER, 1, Interpolation.SPLINE)
-                    .map(r -> new FieldMedium(d.withWarnings(r.notes()), r.profile(), true, relative));
-        } else {
-            index.fault("`grid:` is not in this version yet; give the index by a formula or a `profile:`");
-        }
-        s.finish();
-        return read.map(m -> (Medium) m).orElseGet(() -> new UniformMedium(d, 1, false));
+        return tables.tabulated(index, Kind.NUMBER, 1, Interpolation.SPLINE)
+                .map(r -> (Medium) new FieldMedium(d.withWarnings(r.notes()), r.field(), true, relative))
+                .orElseGet(() -> new UniformMedium(d, 1, false));
     }
 
     /** Whether a text is a plain quantity, so that its own messages are better than those of a formula. */

@@ -17,23 +17,53 @@ import org.stillpath.unit.Kind;
 import org.stillpath.unit.Unit;
 import org.stillpath.unit.Units;
 
-/** Reads the {@code profile:} of a job file: a table along one coordinate, in the job or in a file. */
+/**
+ * Reads what a quantity is tabulated by in a job file: a {@code profile:}, a table along one coordinate, in the job or in
+ * a file, or a {@code grid:}, nodes in a file.
+ */
 final class TableReader {
     private static final List<String> SIGHT_ONLY = List.of("height", "clearance", "distance");
 
     private final Sources sources;
     private final Problems problems;
+    private final GridReader grids;
 
     TableReader(Sources sources, Problems problems) {
         this.sources = sources;
         this.problems = problems;
+        this.grids = new GridReader(sources, problems);
     }
 
     /** Knots in metres with values in SI, and what was told about reading them. */
     private record Knots(double[] at, double[] value, List<String> notes) {}
 
-    /** A profile with what was told about reading its file. */
-    record Read(Profile profile, List<String> notes) {}
+    /** A tabulated quantity with what was told about reading its file. */
+    record Read(ScalarField field, List<String> notes) {}
+
+    /**
+     * Reads a section that holds either {@code profile:} or {@code grid:}.
+     *
+     * @param value the section, such as the value of {@code index:}
+     * @param kind what its values are
+     * @param less what is taken off each value before it is joined: 1 for an index
+     * @param usual how the values of a profile are joined where nothing is said
+     * @return empty after a fault
+     */
+    Optional<Read> tabulated(Value value, Kind kind, double less, Interpolation usual) {
+        Section s = value.section();
+        Optional<Value> profile = s.find("profile");
+        Optional<Value> grid = s.find("grid");
+        Optional<Read> read = Optional.empty();
+        if (profile.isPresent() == grid.isPresent()) {
+            value.fault((profile.isEmpty() ? "" : "only ") + "one of `profile` and `grid` is needed here");
+        } else if (profile.isPresent()) {
+            read = profile(profile.get().section(), kind, less, usual);
+        } else {
+            read = grids.grid(s.at("grid").section(), kind, less);
+        }
+        s.finish();
+        return read;
+    }
 
     /**
      * Reads a profile.
@@ -88,7 +118,7 @@ final class TableReader {
         return choice(value, Along.values(), Along::word);
     }
 
-    private static <T> Optional<T> choice(Value value, T[] all, java.util.function.Function<T, String> word) {
+    static <T> Optional<T> choice(Value value, T[] all, java.util.function.Function<T, String> word) {
         String[] words = new String[all.length];
         for (int i = 0; i < all.length; i++) {
             words[i] = word.apply(all[i]);
