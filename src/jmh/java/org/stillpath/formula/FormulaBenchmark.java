@@ -21,14 +21,16 @@ import org.stillpath.unit.Dimension;
  * What a call of a formula costs against Java written by hand for it, with all that does not depend on the place worked
  * out beforehand: compiled, and walked by the evaluator. One point at a time, as the ray engine asks, and sixty-four.
  *
- * <p>Run with {@code mvn -q -B test-compile exec:exec@jmh}. It takes some four minutes; read ratios within one run only.
+ * <p>Run with {@code mvn -q -B test-compile exec:exec@jmh}. It takes some five minutes. Iterations are many and short, so
+ * that the least of {@code rawData} in target/jmh.json is free of what else the machine does; read ratios within one run
+ * only.
  */
 @State(Scope.Thread)
 @BenchmarkMode(Mode.AverageTime)
 @OutputTimeUnit(TimeUnit.NANOSECONDS)
-@Warmup(iterations = 3, time = 500, timeUnit = TimeUnit.MILLISECONDS)
-@Measurement(iterations = 5, time = 300, timeUnit = TimeUnit.MILLISECONDS)
-@Fork(2)
+@Warmup(iterations = 10, time = 100, timeUnit = TimeUnit.MILLISECONDS)
+@Measurement(iterations = 40, time = 20, timeUnit = TimeUnit.MILLISECONDS)
+@Fork(3)
 public class FormulaBenchmark {
     private static final int POINTS = 1024;
     private static final double N0 = 1.6;

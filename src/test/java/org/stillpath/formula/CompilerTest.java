@@ -113,7 +113,7 @@ class CompilerTest {
     @Test
     void givesTheBitsOfTheEvaluator() {
         Random random = new Random(20261202);
-        for (int i = 0; i < 1500; i++) {
+        for (int i = 0; i < 1000; i++) {
             Formula f = parsable(random);
             assertSame(f, Order.HESSIAN, random);
             assertSame(f, i % 2 == 0 ? Order.VALUE : Order.GRADIENT, random);
