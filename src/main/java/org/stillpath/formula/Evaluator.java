@@ -6,7 +6,8 @@ import java.util.List;
 /**
  * Runs a {@link Program} one operation at a time over a block of points, a column of results an operation. Every
  * operation is the JDK's or {@link Special}'s, in the order of the program. Against walking
- * the operations point by point this costs a scratch array a call and gains the vector units for the simple operations.
+ * the operations point by point this costs a scratch array a call and gains the vector units for the simple operations. It
+ * is what {@link Compiler} is tested against, and serves until a formula is compiled, and for the longest.
  */
 final class Evaluator {
     /** Points a block: columns of this length stay in the first-level cache for formulas of usual size. */

@@ -146,7 +146,15 @@ record Program(List<Instruction> instructions, int invariants, List<Integer> out
                     result, invariants, outputs.stream().map(o -> moved[o]).toList(), charts);
         }
 
-        private int emit(Op op, double value, int index, int... operands) {
+        private int leaf(Op op, double value, int index) {
+            return emit(op, value, index, new int[0]);
+        }
+
+        private int emit(Op op, int... operands) {
+            return emit(op, 0, 0, operands);
+        }
+
+        private int emit(Op op, double value, int index, int[] operands) {
             boolean place = op == Op.X || op == Op.Y || op == Op.Z || op == Op.CHART;
             int[] o = new int[4];
             for (int i = 0; i < operands.length; i++) {
@@ -164,13 +172,9 @@ record Program(List<Instruction> instructions, int invariants, List<Integer> out
             });
         }
 
-        private int emit(Op op, int... operands) {
-            return emit(op, 0, 0, operands);
-        }
-
         private int lower(Graph.Node node, int[] lowered) {
             return switch (node.op()) {
-                case CONSTANT, ARGUMENT, WAVELENGTH, X, Y, Z, CHART -> emit(node.op(), node.value(), node.index());
+                case CONSTANT, ARGUMENT, WAVELENGTH, X, Y, Z, CHART -> leaf(node.op(), node.value(), node.index());
                 case SQUARE_R -> squareR();
                 case SQUARE_RHO -> {
                     int z = emit(Op.Z);
@@ -221,7 +225,7 @@ record Program(List<Instruction> instructions, int invariants, List<Integer> out
                 int exponent = node.exponents().get(i);
                 int factor;
                 if (Math.abs(exponent) > LARGEST_LADDER) {
-                    factor = emit(Op.POWER, base, emit(Op.CONSTANT, exponent, 0));
+                    factor = emit(Op.POWER, base, leaf(Op.CONSTANT, exponent, 0));
                 } else {
                     factor = ladder(exponent < 0 ? emit(Op.RECIPROCAL, base) : base, Math.abs(exponent));
                 }

@@ -5,7 +5,7 @@
  * mention; its faults come back together with their offsets. A {@link org.stillpath.formula.Formula} is sampled at arrays
  * of points into {@link org.stillpath.formula.Samples}. On the way the text becomes a tree (sealed records in postfix
  * order, so that no walk recurses), the tree a graph of shared expressions with its derivatives, the graph a list of
- * operations, which is walked. Height, clearance and distance come from a {@link
+ * operations, which is walked at first and compiled to bytecode where that pays. Height, clearance and distance come from a {@link
  * org.stillpath.formula.Chart}.
  *
  * <p>The grammar, in EBNF; blanks may stand between its symbols:

@@ -55,6 +55,8 @@ class FormulaTest {
         "(2)^(0.5)*(2)^(0.5), 2.0000000000000004",
         "'atan2(1, 1)*4/pi', 1",
         "sech(0), 1",
+        "(L/(1 m))^100, 1.2676506002282294e30",
+        "(L/(1 m))^-70, 8.470329472543003e-22",
         "30 deg*180/pi, 30"
     })
     void isOrdinaryMathematics(String text, double expected) throws FormulaException {
