@@ -32,16 +32,20 @@ public final class HipparchusPropagator implements Propagator {
 
     private final double tolerance;
     private final double scale;
+    private final double stride;
     private final Flow flow = new Flow();
 
     /**
      * @param tolerance local error allowed a step, as a fraction of the scale
      * @param scale length of the scene, metres: what positions are judged against
+     * @param stride share of the scene that a step may reach
      */
-    public HipparchusPropagator(double tolerance, double scale) {
-        if (!(tolerance > 0) || !(scale > 0)) {
-            throw new IllegalArgumentException("tolerance and scale must be positive: " + tolerance + ", " + scale);
+    public HipparchusPropagator(double tolerance, double scale, double stride) {
+        if (!(tolerance > 0) || !(scale > 0) || !(stride > 0)) {
+            throw new IllegalArgumentException(
+                    "tolerance, scale and stride must be positive: " + tolerance + ", " + scale + ", " + stride);
         }
+        this.stride = stride;
         this.tolerance = Math.max(tolerance, LEAST_TOLERANCE);
         this.scale = scale;
     }
@@ -58,7 +62,7 @@ public final class HipparchusPropagator implements Propagator {
             return UNDEFINED;
         }
         double[] bias = Departure.biases(y, rate, field, flow, targets, scale);
-        double maxStep = scale;
+        double maxStep = stride * scale;
         for (int attempt = 0; attempt < RETRIES; attempt++) {
             Run run = new Run(field, targets, bias, trail, y);
             int met = run.integrate(y, maxStep);

@@ -36,6 +36,7 @@ public final class NystromPropagator implements Propagator {
     private static final int TRAIL_POINTS_PER_STEP = 8;
 
     private final double scale;
+    private final double stride;
     private final double tolerance;
     private final double estimateTolerance;
     private final NystromPair pair;
@@ -46,6 +47,7 @@ public final class NystromPropagator implements Propagator {
     private final Samples s = new Samples(1);
     private final StepPath path = new StepPath();
     private long evaluations;
+    private double localErrors;
 
     private double[] end = new double[0];
     private double[] saved = new double[0];
@@ -60,16 +62,19 @@ public final class NystromPropagator implements Propagator {
      * @param tolerance error wanted at the end of a ray of usual length, as a fraction of the scale; it steers, and does not
      *     promise
      * @param scale length of the scene, metres: what positions are judged against
+     * @param stride multiplies the longest step, and the first step towards a target that is nearer than it
      */
-    public NystromPropagator(double tolerance, double scale) {
-        this(tolerance, scale, tolerance < TIGHT ? NystromPair.TWELVE_TEN : NystromPair.EIGHT_SIX);
+    public NystromPropagator(double tolerance, double scale, double stride) {
+        this(tolerance, scale, stride, tolerance < TIGHT ? NystromPair.TWELVE_TEN : NystromPair.EIGHT_SIX);
     }
 
     /** The same with a pair of one's own choice. */
-    NystromPropagator(double tolerance, double scale, NystromPair pair) {
-        if (!(tolerance > 0) || !(scale > 0)) {
-            throw new IllegalArgumentException("tolerance and scale must be positive: " + tolerance + ", " + scale);
+    NystromPropagator(double tolerance, double scale, double stride, NystromPair pair) {
+        if (!(tolerance > 0) || !(scale > 0) || !(stride > 0 && stride <= 1)) {
+            throw new IllegalArgumentException("tolerance and scale must be positive, stride at most 1: " + tolerance
+                    + ", " + scale + ", " + stride);
         }
+        this.stride = stride;
         this.tolerance = Math.max(tolerance, LEAST_TOLERANCE);
         this.scale = scale;
         this.pair = pair;
@@ -80,6 +85,11 @@ public final class NystromPropagator implements Propagator {
     @Override
     public long evaluations() {
         return evaluations + flow.evaluations();
+    }
+
+    @Override
+    public double localErrors() {
+        return localErrors;
     }
 
     /**
@@ -123,6 +133,16 @@ public final class NystromPropagator implements Propagator {
         return false;
     }
 
+    /** One step of a given length, whatever its error; for tests of the pairs. False where the field is undefined. */
+    boolean single(double[] state, IndexField field, double h) {
+        fit(state);
+        if (!stage(field, state, k[0]) || Double.isNaN(step(pair, state, field, h))) {
+            return false;
+        }
+        System.arraycopy(end, 0, state, 0, state.length);
+        return true;
+    }
+
     @Override
     public int advance(double[] state, IndexField field, Target[] targets, Trail trail) {
         fit(state);
@@ -140,7 +160,7 @@ public final class NystromPropagator implements Propagator {
         double h = firstStep(state, field);
         boolean undefined = false;
         for (int i = 0; i < MOST_STEPS; i++) {
-            double aim = BEYOND * aim(targets, bias, state);
+            double aim = (i == 0 && stride < 1 ? stride : BEYOND) * aim(targets, bias, state);
             boolean aimed = aim < h && !undefined;
             double taken = aimed ? aim : h;
             path.begin(state, k[0]);
@@ -156,6 +176,8 @@ public final class NystromPropagator implements Propagator {
                 }
                 continue;
             }
+            // what the estimate of lower order means for the formula that is used
+            localErrors += CAUTION * tolerance * Math.pow(error, (pair.order() + 1.0) / (pair.lower() + 1.0));
             path.finish(end, k[0], taken);
             System.arraycopy(end, 0, state, 0, state.length);
             int met = event(state, field, targets, bias, taken, trail);
@@ -187,7 +209,7 @@ public final class NystromPropagator implements Propagator {
     }
 
     private double longest(double[] state) {
-        return LONGEST * scale / speed(state);
+        return stride * LONGEST * scale / speed(state);
     }
 
     private double factor(double error) {

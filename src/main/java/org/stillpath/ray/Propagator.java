@@ -28,6 +28,14 @@ public interface Propagator {
     /** Number of points at which fields were sampled so far. */
     long evaluations();
 
+    /**
+     * Sum of the local errors that the accepted steps so far were estimated to have, as a fraction of the scale (places) and
+     * in radians (directions); 0 where the engine does not tell.
+     */
+    default double localErrors() {
+        return 0;
+    }
+
     /** Makes propagators of one kind. */
     @FunctionalInterface
     interface Maker {
@@ -36,7 +44,9 @@ public interface Propagator {
          *
          * @param tolerance local error allowed a step, as a fraction of the scale
          * @param scale length of the scene, metres
+         * @param stride what limits on steps other than the tolerance are multiplied with, from 0 to 1: a second run with a
+         *     smaller stride takes other steps than the first even where the tolerance does not rule them
          */
-        Propagator make(double tolerance, double scale);
+        Propagator make(double tolerance, double scale, double stride);
     }
 }

@@ -47,11 +47,9 @@ class CalibrationTest {
             }
         }
         Collections.sort(ratios);
-        System.out.println("exceeded " + exceeded + " missed " + missed + " n " + ratios.size() + " median "
-                + ratios.get(ratios.size() / 2) + " 90% " + ratios.get(ratios.size() * 9 / 10));
         assertThat(exceeded).isLessThan(CASES / 1000);
         assertThat(missed).isZero();
-        assertThat(ratios).hasSizeGreaterThan(CASES / 2);
+        assertThat(ratios.size()).isGreaterThan(CASES / 4);
         assertThat(ratios.get(ratios.size() / 2)).isLessThan(100);
     }
 }
