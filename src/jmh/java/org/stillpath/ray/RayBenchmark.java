@@ -15,6 +15,7 @@ import org.openjdk.jmh.annotations.Setup;
 import org.openjdk.jmh.annotations.State;
 import org.openjdk.jmh.annotations.Warmup;
 import org.openjdk.jmh.infra.Blackhole;
+import org.stillpath.medium.IndexField;
 
 /**
  * Rays one at a time through formula fields at matched accuracy: each engine runs at the largest tolerance on a grid of four
@@ -40,36 +41,77 @@ public class RayBenchmark {
     public int accuracy = 1;
 
     private double[][] starts = {};
-    private Workload.Hipparchus peer = new Workload.Hipparchus(Workload.ROD.field(), 1, 1);
+    private IndexField field = Workload.ROD.field();
+    private Workload.Hipparchus peer = new Workload.Hipparchus(field, 1, 1);
+    private NystromPropagator own = new NystromPropagator(1, 1, 1);
+    private final double[] state = new double[org.stillpath.ray.State.size(0)];
 
-    /** Finds the tolerance. */
+    private interface Engine {
+        double[] end(double[] start);
+    }
+
+    /** Finds the tolerances. */
     @Setup(Level.Trial)
     public void tune() {
         starts = workload.starts(RAYS);
+        field = workload.field();
         double[][] truth = workload.truth(starts);
-        for (int k = 8; k <= 60; k++) {
-            peer = new Workload.Hipparchus(workload.field(), workload.scale(), Math.pow(10, -k / 4.0));
-            boolean reached = true;
-            for (int i = 0; i < RAYS && reached; i++) {
-                reached = distance(peer.end(starts[i], workload.end()), truth[i]) <= workload.accuracy(accuracy);
+        boolean peerReached = false;
+        boolean ownReached = false;
+        for (int k = 8; k <= 68; k++) {
+            double tolerance = Math.pow(10, -k / 4.0);
+            if (!peerReached) {
+                peer = new Workload.Hipparchus(field, workload.scale(), tolerance);
+                peerReached = reached(s -> peer.end(s, workload.end()), truth);
             }
-            if (reached) {
-                return;
+            if (!ownReached) {
+                own = new NystromPropagator(tolerance, workload.scale(), 1);
+                ownReached = reached(this::own, truth);
             }
         }
-        throw new IllegalStateException("no tolerance reaches the accuracy");
+        if (!peerReached || !ownReached) {
+            throw new IllegalStateException("no tolerance reaches the accuracy");
+        }
+    }
+
+    private boolean reached(Engine engine, double[][] truth) {
+        for (int i = 0; i < RAYS; i++) {
+            if (!(distance(engine.end(starts[i]), truth[i]) <= workload.accuracy(accuracy))) {
+                return false;
+            }
+        }
+        return true;
     }
 
     private static double distance(double[] a, double[] b) {
         return Math.sqrt((a[0] - b[0]) * (a[0] - b[0]) + (a[1] - b[1]) * (a[1] - b[1]) + (a[2] - b[2]) * (a[2] - b[2]));
     }
 
-    /** Hipparchus' DormandPrince853. */
+    private double[] own(double[] start) {
+        System.arraycopy(start, 0, state, 0, start.length);
+        state[org.stillpath.ray.State.EXCESS] = 0;
+        state[org.stillpath.ray.State.LENGTH] = 0;
+        if (!own.follow(state, field, workload.end())) {
+            state[0] = Double.NaN;
+        }
+        return state;
+    }
+
+    /** Hipparchus' DormandPrince853 on place and momentum alone. */
     @Benchmark
     @OperationsPerInvocation(RAYS)
     public void hipparchus(Blackhole hole) {
         for (double[] start : starts) {
             hole.consume(peer.end(start, workload.end()));
+        }
+    }
+
+    /** The production engine, with optical excess and length. */
+    @Benchmark
+    @OperationsPerInvocation(RAYS)
+    public void production(Blackhole hole) {
+        for (double[] start : starts) {
+            hole.consume(own(start));
         }
     }
 }

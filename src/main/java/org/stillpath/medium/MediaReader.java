@@ -151,9 +151,51 @@ public final class MediaReader {
             index.fault("an index is a number, a formula, or a section such as {profile: {along: r, ..}}, not a list");
             return new UniformMedium(d, 1, false);
         }
+        if (index.isSection() && index.section().has("luneburg")) {
+            return luneburg(d, index.section(), with, relative);
+        }
         return tables.tabulated(index, Kind.NUMBER, 1, Interpolation.SPLINE)
                 .map(r -> (Medium) new FieldMedium(d.withWarnings(r.notes()), r.field(), true, relative))
                 .orElseGet(() -> new UniformMedium(d, 1, false));
+    }
+
+    private Medium luneburg(Declaration d, Section index, Map<String, Quantity> with, boolean relative) {
+        Section s = index.at("luneburg").section();
+        index.finish();
+        double radius = length(s.need("radius", "10 mm"), with);
+        double object = s.find("object").map(v -> distance(v, with)).orElse(Double.POSITIVE_INFINITY);
+        double image = distance(s.need("image", "20 mm"), with);
+        s.finish();
+        boolean read = radius > 0 && !Double.isNaN(object + image);
+        if (read && (object < radius || image < radius)) {
+            s.fault(
+                    object < radius ? "object" : "image",
+                    "the point lies inside the sphere, " + Told.length(Math.min(object, image))
+                            + " from its centre; at least its radius, " + Told.length(radius) + ", is needed");
+            read = false;
+        }
+        if (!read) {
+            return new UniformMedium(d, 1, false);
+        }
+        return new FieldMedium(d, LuneburgSphere.of(radius, object, image), true, relative);
+    }
+
+    private static double distance(Value value, Map<String, Quantity> with) {
+        return value.isText() && value.text().equals("infinity") ? Double.POSITIVE_INFINITY : length(value, with);
+    }
+
+    /** A positive length, as a quantity or as the name of one. */
+    private static double length(Value value, Map<String, Quantity> with) {
+        Quantity named = value.isText() ? with.get(value.text()) : null;
+        if (named == null) {
+            return value.positive(Kind.LENGTH);
+        }
+        Optional<String> refusal = Kind.LENGTH.refusal(named);
+        if (refusal.isPresent() || !(named.value() > 0)) {
+            value.fault(refusal.orElse("\"" + named.text() + "\" must be greater than 0"));
+            return Double.NaN;
+        }
+        return named.value();
     }
 
     /** Whether a text is a plain quantity, so that its own messages are better than those of a formula. */
