@@ -239,36 +239,84 @@ public final class Formula {
      * the place. Zeros of an absolute value that only touch (|r|) are left out.
      */
     public List<Kink> kinks() {
-        List<Kink> kinks = new ArrayList<>();
+        return switches().stream().map(s -> new Kink(s.difference())).toList();
+    }
+
+    /**
+     * The formula as it is on given sides of its kinks, continued beyond them; it has no kinks of its own but those that do
+     * not show in {@link #kinks}.
+     *
+     * @param positive for each of {@link #kinks}, in their order, whether its difference is above zero
+     */
+    public Formula piece(boolean[] positive) {
+        List<Switch> switches = switches();
+        if (positive.length != switches.size()) {
+            throw new IllegalArgumentException(
+                    "positive must be as many as kinks, " + switches.size() + ": " + positive.length);
+        }
+        Tree.Choice[] choices = new Tree.Choice[tree.size()];
+        for (int i = 0; i < positive.length; i++) {
+            Switch s = switches.get(i);
+            choices[s.term()] = positive[i] ? s.above() : s.below();
+        }
+        Tree chosen = tree.choosing(choices);
+        try {
+            return new Formula(chosen, DimensionCheck.check(chosen, Optional.empty()), Optional.of(this));
+        } catch (FormulaException e) {
+            throw new IllegalStateException("a part of a checked formula is at fault: " + chosen, e);
+        }
+    }
+
+    /** A term that switches where {@code difference} changes its sign, and what stands for it on either side. */
+    private record Switch(int term, Formula difference, Tree.Choice below, Tree.Choice above) {}
+
+    private List<Switch> switches() {
+        List<Switch> switches = new ArrayList<>();
         for (int i = 0; i < tree.size(); i++) {
             Term term = tree.terms().get(i);
-            Optional<Tree> difference = Optional.empty();
             if (term instanceof Term.Call t && t.function() == Function.ABS) {
-                difference = Optional.of(tree.part(t.operand()));
+                add(
+                        switches,
+                        i,
+                        tree.part(t.operand()),
+                        new Tree.Choice(t.operand(), true),
+                        new Tree.Choice(t.operand(), false));
             } else if (term instanceof Term.Call t
                     && t.function() == Function.SQRT
                     && tree.terms().get(t.operand()) instanceof Term.Binary power
                     && power.operator() == Operator.POWER) {
-                difference = Optional.of(tree.part(power.left()));
+                boolean square = tree.terms().get(power.right()) instanceof Term.Constant c && c.value() == 2;
+                Tree.Choice same = new Tree.Choice(i, false);
+                add(
+                        switches,
+                        i,
+                        tree.part(power.left()),
+                        square ? new Tree.Choice(power.left(), true) : same,
+                        square ? new Tree.Choice(power.left(), false) : same);
             } else if (term instanceof Term.Pair t && (t.function() == Function.MIN || t.function() == Function.MAX)) {
-                difference = Optional.of(Tree.difference(
+                Tree difference = Tree.difference(
                         tree.part(t.left()),
                         tree.part(t.right()),
                         tree.starts().get(i),
-                        tree.ends().get(i)));
+                        tree.ends().get(i));
+                Tree.Choice left = new Tree.Choice(t.left(), false);
+                Tree.Choice right = new Tree.Choice(t.right(), false);
+                boolean least = t.function() == Function.MIN;
+                add(switches, i, difference, least ? left : right, least ? right : left);
             }
-            difference.ifPresent(d -> {
-                try {
-                    Formula f = new Formula(d, DimensionCheck.check(d, Optional.empty()), Optional.of(this));
-                    if (!f.uniform() && f.mayChangeSign()) {
-                        kinks.add(new Kink(f));
-                    }
-                } catch (FormulaException e) {
-                    throw new IllegalStateException("a part of a checked formula is at fault: " + d, e);
-                }
-            });
         }
-        return List.copyOf(kinks);
+        return switches;
+    }
+
+    private void add(List<Switch> switches, int term, Tree difference, Tree.Choice below, Tree.Choice above) {
+        try {
+            Formula f = new Formula(difference, DimensionCheck.check(difference, Optional.empty()), Optional.of(this));
+            if (!f.uniform() && f.mayChangeSign()) {
+                switches.add(new Switch(term, f, below, above));
+            }
+        } catch (FormulaException e) {
+            throw new IllegalStateException("a part of a checked formula is at fault: " + difference, e);
+        }
     }
 
     private boolean mayChangeSign() {

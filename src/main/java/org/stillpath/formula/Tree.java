@@ -2,6 +2,7 @@ package org.stillpath.formula;
 
 import java.util.ArrayList;
 import java.util.List;
+import org.jspecify.annotations.Nullable;
 
 /**
  * A parsed formula: its terms in postfix order, so that the operands of a term stand before it, the terms of every
@@ -54,6 +55,80 @@ record Tree(
         return b.build();
     }
 
+    /**
+     * What stands for a term: another term below it, or itself.
+     *
+     * @param term the term that is kept
+     * @param negated whether with the other sign
+     */
+    record Choice(int term, boolean negated) {}
+
+    /** This tree with some terms replaced by terms below them; {@code choices} is null where a term stays. */
+    Tree choosing(@Nullable Choice[] choices) {
+        boolean[] kept = new boolean[size()];
+        kept[root()] = true;
+        for (int i = root(); i >= 0; i--) {
+            if (kept[i]) {
+                Choice choice = choices[i];
+                if (choice != null && choice.term() != i) {
+                    kept[choice.term()] = true;
+                } else {
+                    for (int o : operands(terms.get(i))) {
+                        kept[o] = true;
+                    }
+                }
+            }
+        }
+        Builder b = new Builder(text, arguments);
+        int[] at = new int[size()];
+        for (int i = 0; i < size(); i++) {
+            if (!kept[i]) {
+                continue;
+            }
+            Choice choice = choices[i];
+            if (choice == null || choice.term() == i) {
+                int size = 1;
+                for (int o : operands(terms.get(i))) {
+                    size += b.size(at[o]);
+                }
+                at[i] = b.add(moved(terms.get(i), at), starts.get(i), ends.get(i), size);
+            } else if (choice.negated()) {
+                int operand = at[choice.term()];
+                at[i] = b.add(new Term.Negative(operand), starts.get(i), ends.get(i), 1 + b.size(operand));
+            } else {
+                at[i] = at[choice.term()];
+            }
+        }
+        return b.build();
+    }
+
+    private static int[] operands(Term term) {
+        if (term instanceof Term.Negative t) {
+            return new int[] {t.operand()};
+        } else if (term instanceof Term.Binary t) {
+            return new int[] {t.left(), t.right()};
+        } else if (term instanceof Term.Call t) {
+            return new int[] {t.operand()};
+        } else if (term instanceof Term.Pair t) {
+            return new int[] {t.left(), t.right()};
+        }
+        return new int[0];
+    }
+
+    /** A term whose operands have moved to other places. */
+    private static Term moved(Term term, int[] at) {
+        if (term instanceof Term.Negative t) {
+            return new Term.Negative(at[t.operand()]);
+        } else if (term instanceof Term.Binary t) {
+            return new Term.Binary(t.operator(), at[t.left()], at[t.right()]);
+        } else if (term instanceof Term.Call t) {
+            return new Term.Call(t.function(), at[t.operand()]);
+        } else if (term instanceof Term.Pair t) {
+            return new Term.Pair(t.function(), at[t.left()], at[t.right()]);
+        }
+        return term;
+    }
+
     /** The difference of two trees over the same text, with the given part of it as its own text. */
     static Tree difference(Tree left, Tree right, int start, int end) {
         Builder b = new Builder(left.text, left.arguments);
@@ -97,23 +172,12 @@ record Tree(
         int copy(Tree from, int root) {
             int first = root - from.sizes.get(root) + 1;
             int shift = terms.size() - first;
+            int[] at = new int[root + 1];
             for (int i = first; i <= root; i++) {
-                add(shifted(from.terms.get(i), shift), from.starts.get(i), from.ends.get(i), from.sizes.get(i));
+                at[i] = i + shift;
+                add(moved(from.terms.get(i), at), from.starts.get(i), from.ends.get(i), from.sizes.get(i));
             }
             return root + shift;
-        }
-
-        private static Term shifted(Term term, int shift) {
-            if (term instanceof Term.Negative t) {
-                return new Term.Negative(t.operand() + shift);
-            } else if (term instanceof Term.Binary t) {
-                return new Term.Binary(t.operator(), t.left() + shift, t.right() + shift);
-            } else if (term instanceof Term.Call t) {
-                return new Term.Call(t.function(), t.operand() + shift);
-            } else if (term instanceof Term.Pair t) {
-                return new Term.Pair(t.function(), t.left() + shift, t.right() + shift);
-            }
-            return term;
         }
 
         Tree build() {

@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
+import java.util.concurrent.ConcurrentHashMap;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Formula;
 import org.stillpath.formula.Kink;
@@ -17,6 +18,8 @@ import org.stillpath.formula.Samples;
 public final class FormulaField implements ScalarField {
     private final Formula formula;
     private final double[] arguments;
+    /** Pieces between kinks, by the sides of the kinks as bits, made when a ray first comes there. */
+    private final Map<Long, FormulaField> pieces = new ConcurrentHashMap<>();
 
     private FormulaField(Formula formula, double[] arguments) {
         this.formula = formula;
@@ -60,6 +63,25 @@ public final class FormulaField implements ScalarField {
                     new FormulaLevel(difference, chosen, wavelength, "a kink of the formula"), new double[] {0}));
         }
         return List.copyOf(list);
+    }
+
+    /** More kinks than a mask has bits are not taken apart; nor is a formula without any. */
+    @Override
+    public ScalarField piece(int[] cells) {
+        if (cells.length == 0 || cells.length > Long.SIZE - 1) {
+            return this;
+        }
+        long sides = 0;
+        for (int i = 0; i < cells.length; i++) {
+            sides |= (long) cells[i] << i;
+        }
+        return pieces.computeIfAbsent(sides, key -> {
+            boolean[] positive = new boolean[cells.length];
+            for (int i = 0; i < cells.length; i++) {
+                positive[i] = cells[i] > 0;
+            }
+            return new FormulaField(formula.piece(positive), arguments);
+        });
     }
 
     @Override

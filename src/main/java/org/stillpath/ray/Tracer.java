@@ -258,11 +258,8 @@ public final class Tracer {
 
         /** Brings the ray to a target; says so, or ends it. {@code index} is that of the surface, −1 for the ending. */
         private boolean reach(Target target, int index, @Nullable Surface surface) {
-            double trifle = Departure.ON * scale;
-            if (surface != null && !leaves(index) && Math.abs(target.value(y)) <= trifle * target.steepness(y, 1)) {
-                if (target.accepts(y)) {
-                    return true;
-                }
+            if (surface != null && !leaves(index) && standsOn(target)) {
+                return true;
             }
             if (field.uniform() && field.limits().isEmpty()) {
                 return straight(target, surface);
@@ -333,7 +330,13 @@ public final class Tracer {
             double travelledBefore = y[State.LENGTH];
             for (int piece = 0; piece < PIECES; piece++) {
                 Target[] targets = seams.targets(target, y[State.LENGTH] + limit);
+                double pieceStart = y[State.LENGTH];
                 int met = propagator.advance(y, field.piece(seams.cells()), targets, trail);
+                if (met > 1 && y[State.LENGTH] - pieceStart > Departure.ON * scale && standsOn(target)) {
+                    // a surface on the very edge or knot of a table: rounding decides which is met first
+                    flow.polish(y, field, target, rate);
+                    met = 0;
+                }
                 if (met == 0) {
                     double s = y[State.LENGTH] - travelledBefore;
                     travelled(s);
@@ -360,6 +363,10 @@ public final class Tracer {
             }
             end(Status.LOST, "it crossed more than " + PIECES + " seams of its medium");
             return false;
+        }
+
+        private boolean standsOn(Target target) {
+            return Math.abs(target.value(y)) <= Departure.ON * scale * target.steepness(y, 1) && target.accepts(y);
         }
 
         private boolean act(Element e, int i) {

@@ -170,6 +170,30 @@ class FormulaTest {
         assertThat(parse("n0*sqrt(1 - (g*r)^2)").kinks()).isEmpty();
     }
 
+    /** On either side of its kinks a piece is the formula itself; beyond them it goes on smoothly. */
+    @Test
+    void goesOnBeyondItsKinks() throws FormulaException {
+        String text = "n0 + min(x/a, 0.2)*abs(y/a - 1) + sqrt((z/a)^2)";
+        Formula whole = parse(text);
+        assertThat(whole.kinks()).hasSize(3);
+        Random random = new Random(3);
+        for (int i = 0; i < 200; i++) {
+            double x = random.nextDouble() - 0.5;
+            double y = 2 * random.nextDouble();
+            double z = random.nextDouble() - 0.5;
+            boolean[] sides = {x / 0.7 > 0.2, y / 0.7 > 1, z > 0};
+            Samples a = sample(whole, x, y, z);
+            Samples b = sample(whole.piece(sides), x, y, z);
+            assertThat(b.value[0]).isCloseTo(a.value[0], within(4e-16));
+            assertThat(b.gx[0]).isCloseTo(a.gx[0], within(1e-15));
+            assertThat(b.gz[0]).isCloseTo(a.gz[0], within(1e-15));
+            Samples beyond = sample(whole.piece(new boolean[] {false, true, true}), x, y, z);
+            assertThat(beyond.value[0]).isCloseTo(1.6 + x / 0.7 * (y / 0.7 - 1) + z / 0.7, within(1e-15));
+        }
+        assertThat(parse(text).piece(new boolean[3]).kinks()).isEmpty();
+        assertThatThrownBy(() -> whole.piece(new boolean[2])).isInstanceOf(IllegalArgumentException.class);
+    }
+
     /** Random formulas: value, gradient and Hessian against Hipparchus' automatic differentiation of the same tree. */
     @Test
     void differentiatesExactly() throws FormulaException {

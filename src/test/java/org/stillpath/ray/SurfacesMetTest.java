@@ -12,7 +12,14 @@ import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Quadric;
 import org.stillpath.geometry.Surface;
 import org.stillpath.geometry.Vector;
+import org.stillpath.medium.Along;
+import org.stillpath.medium.Beyond;
+import org.stillpath.medium.Declaration;
+import org.stillpath.medium.FieldMedium;
 import org.stillpath.medium.IndexField;
+import org.stillpath.medium.Interpolation;
+import org.stillpath.medium.Profile;
+import org.stillpath.medium.Spline;
 
 /** Surfaces that are grazed, crossed twice within a step, met at an edge, tilted, toric; in curved media, by both engines. */
 class SurfacesMetTest {
@@ -114,6 +121,27 @@ class SurfacesMetTest {
         assertThat(end.position().y()).isCloseTo(-0.5, within(1e-14));
         assertThat(end.direction().y()).isCloseTo(-Math.sqrt(0.5), within(1e-15));
         assertThat(end.index()).isCloseTo(1.5, within(1e-15));
+    }
+
+    /** A surface that stands exactly on a limit or a knot of its medium is met, whatever rounding says. */
+    @Test
+    void meetsSurfacesOnTheEdgeOfATable() {
+        Spline spline = Spline.of(
+                new double[] {0, 0.1, 0.3, 0.7},
+                new double[] {0.5, 0.51, 0.505, 0.49},
+                Interpolation.MONOTONE,
+                Beyond.FAULT);
+        FieldMedium medium = new FieldMedium(Declaration.of("table"), Profile.of(Along.Z, spline, 1), true, false);
+        IndexField table = medium.field(Double.NaN, Frame.JOB);
+        for (double z : new double[] {0.1, 0.3, 0.7}) {
+            for (double y = -0.1; y < 0.1; y += 0.013) {
+                Vector d = new Vector(0.01, y, 1).unit();
+                Train train = new Train(table, List.of(into(Surface.plane(z), Fields.uniform(1))));
+                Traced end = trace(train, new Ending.AtLastSurface(), new Vector(0, 0, 1e-4), d);
+                assertThat(end.status()).as(end.note()).isEqualTo(Status.ARRIVED);
+                assertThat(end.position().z()).isCloseTo(z, within(1e-16));
+            }
+        }
     }
 
     /** A cylinder acts in one meridian only: thin-lens power (n − 1)/R there (common practice, no source). */
