@@ -171,6 +171,15 @@ public final class HipparchusPropagator implements Propagator {
                 stepStart = step.getPreviousState().getPrimaryState();
                 stepStartTime = step.getPreviousState().getTime();
             }
+            double begin = step.getPreviousState().getTime();
+            trail.conjugates()
+                    .ifPresent(c -> c.span(
+                            field,
+                            (t, out) -> System.arraycopy(
+                                    step.getInterpolatedState(t).getPrimaryState(), 0, out, 0, size),
+                            begin,
+                            step.getCurrentState().getTime(),
+                            size));
             if (trail.wanted()) {
                 double from = step.getPreviousState().getTime();
                 double to = step.getCurrentState().getTime();

@@ -185,7 +185,7 @@ public final class NystromPropagator implements Propagator {
                 suggested = h;
                 return met;
             }
-            keepTrail(trail, taken);
+            note(trail, field, taken);
             for (int t = 0; t < targets.length; t++) {
                 values[t] = targets[t].value(state) + bias[t];
             }
@@ -450,14 +450,18 @@ public final class NystromPropagator implements Propagator {
             size += end[at + i] * end[at + i];
             slope += end[at + 3 + i] * end[at + 3 + i];
         }
-        // the first two columns start as unit places, the others as unit momenta
-        double unit = column < 2 ? 1 : scale;
+        // the first two columns start as unit places, the last two as unit momenta
+        boolean ofPlace = column < 2;
+        double unit = ofPlace ? 1 : scale;
         double error = hh * Math.sqrt(place) / (unit + Math.sqrt(size));
-        double rateUnit = column < 2 ? 1 / scale : 1;
+        double rateUnit = ofPlace ? 1 / scale : 1;
         return Math.max(error, h * Math.sqrt(turn) / (rateUnit + Math.sqrt(slope)));
     }
 
-    private void keepTrail(Trail trail, double until) {
+    private void note(Trail trail, IndexField field, double until) {
+        if (until > 0) {
+            trail.conjugates().ifPresent(c -> c.span(field, path::whole, 0, until, end.length));
+        }
         if (trail.wanted()) {
             for (int i = 1; i <= TRAIL_POINTS_PER_STEP; i++) {
                 path.at(until * i / TRAIL_POINTS_PER_STEP, saved);
@@ -490,7 +494,7 @@ public final class NystromPropagator implements Propagator {
             double landed = land(state, field, targets[which], bias[which], values[which], first, h);
             int earlier = landed >= 0 ? earlier(state, targets, bias, which) : -1;
             if (landed >= 0 && earlier < 0) {
-                keepTrail(trail, landed);
+                note(trail, field, landed);
                 trail.add(state[0], state[1], state[2]);
                 return which;
             }
@@ -499,7 +503,7 @@ public final class NystromPropagator implements Propagator {
                 double root = path.firstZero(targets[earlier], bias[earlier], values[earlier], 0, h);
                 landed = land(state, field, targets[earlier], bias[earlier], values[earlier], root, h);
                 if (landed >= 0) {
-                    keepTrail(trail, landed);
+                    note(trail, field, landed);
                     trail.add(state[0], state[1], state[2]);
                     return earlier;
                 }

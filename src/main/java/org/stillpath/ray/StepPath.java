@@ -81,6 +81,27 @@ final class StepPath {
         return endRates;
     }
 
+    /** The whole state with its columns at a parameter from 0 to the step's length. */
+    void whole(double t, double[] out) {
+        at(t, out);
+        double u = t / h;
+        for (int at = State.COLUMNS, c = 5; at < out.length; at += State.COLUMN, c += 3) {
+            for (int i = 0; i < 3; i++) {
+                double q0 = start[at + i];
+                double p0 = start[at + 3 + i];
+                double f0 = startRates[c + i];
+                double d = end[at + i] - q0 - h * (p0 + 0.5 * h * f0);
+                double v = h * (end[at + 3 + i] - p0 - h * f0);
+                double w = 0.5 * h * h * (endRates[c + i] - f0);
+                double c3 = 10 * d - 4 * v + w;
+                double c4 = -15 * d + 7 * v - 2 * w;
+                double c5 = 6 * d - 3 * v + w;
+                out[at + i] = q0 + t * (p0 + 0.5 * t * f0) + u * u * u * (c3 + u * (c4 + u * c5));
+                out[at + 3 + i] = p0 + t * f0 + u * u * (3 * c3 + u * (4 * c4 + u * 5 * c5)) / h;
+            }
+        }
+    }
+
     /** Place, momentum, excess and length at a parameter from 0 to the step's length; columns are left as they are. */
     void at(double t, double[] out) {
         double u = t / h;

@@ -16,6 +16,8 @@ import org.stillpath.geometry.Vector;
  * @param accurate whether the errors are within the asked accuracy
  * @param note in words, why it ended early and where; empty where it arrived
  * @param trail places passed as x, y, z triples, if they were asked for
+ * @param conjugates lengths from the start at which points conjugate to it lie, metres, ascending, a double one twice; empty
+ *     where they were not asked for
  * @param evaluations number of points at which fields were sampled, both runs together
  */
 public record Traced(
@@ -29,6 +31,7 @@ public record Traced(
         boolean accurate,
         String note,
         double[] trail,
+        double[] conjugates,
         long evaluations) {
 
     /**
@@ -47,6 +50,7 @@ public record Traced(
         state = state.clone();
         start = start.clone();
         trail = trail.clone();
+        conjugates = conjugates.clone();
         force = force.clone();
     }
 
@@ -72,6 +76,12 @@ public record Traced(
     @Override
     public double[] trail() {
         return trail.clone();
+    }
+
+    /** Lengths to the conjugate points (a copy). */
+    @Override
+    public double[] conjugates() {
+        return conjugates.clone();
     }
 
     /** Where the ray ended, metres. */

@@ -49,8 +49,15 @@ public final class Tracer {
      *     directions in radians
      * @param transfer whether the 4×4 ray-transfer matrix is carried along
      * @param trail whether the places passed are kept, for drawing
+     * @param conjugates whether points conjugate to the start are located; the Jacobi columns then start across the ray
+     *     instead of across z: two unit places, two unit momenta, and there is no ray-transfer matrix between planes
      */
-    public record Settings(double accuracy, boolean transfer, boolean trail) {
+    public record Settings(double accuracy, boolean transfer, boolean trail, boolean conjugates) {
+        /** Without conjugate points. */
+        public Settings(double accuracy, boolean transfer, boolean trail) {
+            this(accuracy, transfer, trail, false);
+        }
+
         public Settings {
             if (!(accuracy >= 1e-13 && accuracy < 1)) {
                 throw new IllegalArgumentException("accuracy must be from 1e-13 to below 1: " + accuracy);
@@ -59,7 +66,7 @@ public final class Tracer {
 
         /** The same with another choice about the trail. */
         public Settings withTrail(boolean kept) {
-            return new Settings(accuracy, transfer, kept);
+            return new Settings(accuracy, transfer, kept, conjugates);
         }
     }
 
@@ -171,9 +178,10 @@ public final class Tracer {
             this.scale = scale(start);
             this.limit = REACH * scale;
             this.propagator = engine.make(tolerance, scale, stride);
-            this.trail = settings.trail ? Trail.kept() : Trail.none();
+            this.trail = Trail.of(settings.trail, settings.conjugates);
             boolean lens = train.elements().stream().anyMatch(e -> e.action() instanceof Action.ThinLens);
-            this.y = new double[State.size(settings.transfer || lens ? State.TRANSFER_COLUMNS : 0)];
+            this.y = new double
+                    [State.size(settings.transfer || settings.conjugates || lens ? State.TRANSFER_COLUMNS : 0)];
             this.rate = new double[y.length];
             this.field = train.from();
         }
@@ -242,6 +250,10 @@ public final class Tracer {
             if (State.columns(y) == 0) {
                 return;
             }
+            if (settings.conjugates) {
+                columnsAcross();
+                return;
+            }
             double pz = y[5];
             double[] force = {flow.samples().gx[0], flow.samples().gy[0]};
             for (int c = 0; c < State.TRANSFER_COLUMNS; c++) {
@@ -252,6 +264,21 @@ public final class Tracer {
                 } else {
                     y[at + 3 + c - 2] = 1;
                     y[at + 5] = pz == 0 ? 0 : -y[3 + c - 2] / pz;
+                }
+            }
+        }
+
+        /** δq and δp across the ray; what a δq needs of δp along the ray to keep p·δp = ½∇n²·δq is added. */
+        private void columnsAcross() {
+            double[][] axes = ConjugatePoints.across(y[3], y[4], y[5]);
+            double n2 = y[3] * y[3] + y[4] * y[4] + y[5] * y[5];
+            Samples s = flow.samples();
+            for (int c = 0; c < 2; c++) {
+                double push = (axes[c][0] * s.gx[0] + axes[c][1] * s.gy[0] + axes[c][2] * s.gz[0]) / n2;
+                for (int i = 0; i < 3; i++) {
+                    y[State.COLUMNS + State.COLUMN * c + i] = axes[c][i];
+                    y[State.COLUMNS + State.COLUMN * c + 3 + i] = push * y[3 + i];
+                    y[State.COLUMNS + State.COLUMN * (2 + c) + 3 + i] = axes[c][i];
                 }
             }
         }
@@ -317,11 +344,27 @@ public final class Tracer {
                 end(Status.LOST, "the length at which the ray was to end was passed before its last surface");
                 return false;
             }
+            double[] begin = trail.conjugates().isPresent() ? y.clone() : y;
+            double tau = s / n;
+            trail.conjugates().ifPresent(c -> c.span(field, (t, out) -> drift(begin, t, out), 0, tau, y.length));
             flow.shift(y, rate, s / n);
             flow.polish(y, field, target, rate);
             trail.add(y[0], y[1], y[2]);
             travelled(s);
             return true;
+        }
+
+        /** A state a while later in a uniform medium. */
+        private static void drift(double[] begin, double t, double[] out) {
+            System.arraycopy(begin, 0, out, 0, begin.length);
+            double n = Math.sqrt(begin[3] * begin[3] + begin[4] * begin[4] + begin[5] * begin[5]);
+            out[State.LENGTH] += n * t;
+            for (int i = 0; i < 3; i++) {
+                out[i] += t * begin[3 + i];
+                for (int at = State.COLUMNS; at < out.length; at += State.COLUMN) {
+                    out[at + i] += t * begin[at + 3 + i];
+                }
+            }
         }
 
         private boolean curved(Target target, @Nullable Surface surface) {
@@ -537,7 +580,19 @@ public final class Tracer {
                     || (errors.position() <= accuracy * Math.max(across, y[State.LENGTH] * 1e-3)
                             && errors.direction() <= accuracy
                             && errors.opticalLength() <= accuracy * Math.abs(State.opticalLength(y)));
-            return new Traced(status, element, y, first, n, force, errors, accurate, note, trail.points(), evaluations);
+            return new Traced(
+                    status,
+                    element,
+                    y,
+                    first,
+                    n,
+                    force,
+                    errors,
+                    accurate,
+                    note,
+                    trail.points(),
+                    trail.conjugates().map(ConjugatePoints::lengths).orElse(new double[0]),
+                    evaluations);
         }
     }
 

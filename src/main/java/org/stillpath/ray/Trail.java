@@ -1,8 +1,9 @@
 package org.stillpath.ray;
 
 import java.util.Arrays;
+import java.util.Optional;
 
-/** Places that a ray passed, for drawing. Mutable, one a ray. */
+/** What is noted along a ray: places passed, for drawing, and points conjugate to its start. Mutable, one a ray. */
 public final class Trail {
     /** Points beyond this are thinned out: every second one goes. */
     private static final int LIMIT = 4096;
@@ -11,19 +12,28 @@ public final class Trail {
     private double[] xyz;
     private int size;
 
-    private Trail(boolean wanted) {
+    private final Optional<ConjugatePoints> conjugates;
+
+    private Trail(boolean wanted, boolean conjugates) {
         this.wanted = wanted;
+        this.conjugates = conjugates ? Optional.of(new ConjugatePoints()) : Optional.empty();
         this.xyz = new double[wanted ? 3 * 64 : 0];
     }
 
-    /** A trail that keeps what it is given. */
-    public static Trail kept() {
-        return new Trail(true);
+    /**
+     * A trail.
+     *
+     * @param places whether places are kept
+     * @param conjugates whether conjugate points are looked for; states must then carry Jacobi columns whose last two start
+     *     as directions
+     */
+    public static Trail of(boolean places, boolean conjugates) {
+        return new Trail(places, conjugates);
     }
 
-    /** A trail that forgets. */
-    public static Trail none() {
-        return new Trail(false);
+    /** Looks for conjugate points, if they are wanted. */
+    Optional<ConjugatePoints> conjugates() {
+        return conjugates;
     }
 
     /** Whether points are kept, so that a caller may spare itself the work of finding them. */
