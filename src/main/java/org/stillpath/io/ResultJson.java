@@ -13,6 +13,7 @@ import java.util.Map;
 import java.util.TreeMap;
 import org.stillpath.geometry.Vector;
 import org.stillpath.problem.Problem;
+import org.stillpath.task.PathRow;
 import org.stillpath.task.Quantity;
 import org.stillpath.task.RayRow;
 import org.stillpath.task.Result;
@@ -123,7 +124,12 @@ public final class ResultJson {
             ray(ray);
         }
         json.writeEndArray();
-        for (String key : List.of("paths", "images", "stars")) {
+        json.writeArrayFieldStart("paths");
+        for (PathRow path : result.paths()) {
+            path(path);
+        }
+        json.writeEndArray();
+        for (String key : List.of("images", "stars")) {
             json.writeArrayFieldStart(key);
             json.writeEndArray();
         }
@@ -169,12 +175,40 @@ public final class ResultJson {
         if (!ray.note().isEmpty()) {
             json.writeStringField("note", ray.note());
         }
+        errors(ray.errors());
+        json.writeEndObject();
+    }
+
+    private void path(PathRow path) throws IOException {
+        json.writeStartObject();
+        number("optical-length", path.opticalLength());
+        number("excess", path.excess());
+        number("length", path.length());
+        number("travel-time", path.travelTime());
+        vector("launch-direction", path.launch());
+        vector("arrival-direction", path.arrival());
+        json.writeStringField("kind", path.kind());
+        json.writeNumberField("morse-index", path.morseIndex());
+        numbers("conjugate-points", path.conjugatePoints());
+        if (!path.overInterfaces().isEmpty()) {
+            json.writeStringField("over-interfaces", path.overInterfaces());
+        }
+        number("residual", path.residual());
+        json.writeArrayFieldStart("points");
+        for (double[] point : path.points()) {
+            array(point);
+        }
+        json.writeEndArray();
+        errors(path.errors());
+        json.writeEndObject();
+    }
+
+    private void errors(Map<String, Double> errors) throws IOException {
         json.writeObjectFieldStart("errors");
         // sorted: the map has no order of its own, and the same job must give the same text
-        for (Map.Entry<String, Double> entry : new TreeMap<>(ray.errors()).entrySet()) {
+        for (Map.Entry<String, Double> entry : new TreeMap<>(errors).entrySet()) {
             number(entry.getKey(), entry.getValue());
         }
-        json.writeEndObject();
         json.writeEndObject();
     }
 

@@ -24,6 +24,11 @@ final class ConjugatePoints {
     private double[] lengths = new double[4];
     private int count;
     private double[] state = new double[0];
+    private final Columns columns;
+
+    ConjugatePoints(Columns columns) {
+        this.columns = columns;
+    }
 
     /** The ray's state within a step. */
     @FunctionalInterface
@@ -99,10 +104,13 @@ final class ConjugatePoints {
     }
 
     /** Σ arctan(c w) over the eigenvalues w of P Q⁻¹; +π/2 for each direction in which Q vanishes, as just behind it. */
-    private static double principal(Sample s, double c) {
+    private double principal(Sample s, double c) {
         double[] q = s.q;
         double[] p = s.p;
         double det = q[0] * q[3] - q[1] * q[2];
+        if (columns.planar()) {
+            return q[0] == 0 ? Math.PI / 2 : Math.atan(c * p[0] / q[0]);
+        }
         if (q[0] == 0 && q[1] == 0 && q[2] == 0 && q[3] == 0) {
             return Math.PI;
         }
@@ -126,7 +134,7 @@ final class ConjugatePoints {
         double n2 = state[3] * state[3] + state[4] * state[4] + state[5] * state[5];
         flow.sample(field, state[0], state[1], state[2], Order.GRADIENT);
         double[] f = {flow.samples().gx[0], flow.samples().gy[0], flow.samples().gz[0]};
-        double[][] axes = across(state[3], state[4], state[5]);
+        double[][] axes = columns.axes(state[3], state[4], state[5]);
         double[] q = new double[4];
         double[] p = new double[4];
         for (int c = 0; c < 2; c++) {
@@ -139,19 +147,11 @@ final class ConjugatePoints {
                 }
             }
         }
+        if (columns.planar()) {
+            // a second direction that never comes back
+            q = new double[] {q[0], 0, 0, Math.abs(q[0]) + Double.MIN_NORMAL};
+            p = new double[] {p[0], 0, 0, 0};
+        }
         return new Sample(t, state[State.LENGTH], q, p);
-    }
-
-    /** Two unit vectors across a direction and each other. */
-    static double[][] across(double px, double py, double pz) {
-        double n = Math.sqrt(px * px + py * py + pz * pz);
-        double x = px / n;
-        double y = py / n;
-        double z = pz / n;
-        // after Duff et al., J. Computer Graphics Techniques 6 (2017) 1: no branch but the sign
-        double sign = Math.copySign(1, z);
-        double a = -1 / (sign + z);
-        double b = x * y * a;
-        return new double[][] {{1 + sign * x * x * a, sign * b, -sign * x}, {b, sign + y * y * a, -y}};
     }
 }

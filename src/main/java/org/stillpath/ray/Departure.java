@@ -19,12 +19,15 @@ final class Departure {
     static double[] biases(double[] y, double[] rate, IndexField field, Flow flow, Target[] targets, double scale) {
         double[] bias = new double[targets.length];
         double n = flow.index();
+        double fx = flow.samples().gx[0];
+        double fy = flow.samples().gy[0];
+        double fz = flow.samples().gz[0];
         double[] ahead = new double[y.length];
         for (int i = 0; i < targets.length; i++) {
             double trifle = ON * scale * targets[i].steepness(y, n);
             double value = targets[i].value(y);
             if (Math.abs(value) <= trifle) {
-                double leaving = targets[i].rate(y, n);
+                double leaving = targets[i].rate(y, n, fx, fy, fz);
                 if (Math.abs(leaving) < 1e-7 * n * targets[i].steepness(y, n)) {
                     // along the target: where the curve of ray and target leads decides
                     System.arraycopy(y, 0, ahead, 0, y.length);

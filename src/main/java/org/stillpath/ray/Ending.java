@@ -1,5 +1,7 @@
 package org.stillpath.ray;
 
+import org.stillpath.geometry.Vector;
+
 /** Where a ray that met all surfaces ends. */
 public sealed interface Ending {
     /**
@@ -29,4 +31,18 @@ public sealed interface Ending {
 
     /** Directly behind the last surface, after it has acted. */
     record BehindLastSurface() implements Ending {}
+
+    /**
+     * Behind the last surface, where the distance to a point is at a minimum.
+     *
+     * @param to the point, metres, job's coordinates
+     * @param which the how-manieth minimum along the ray, from 1
+     */
+    record Nearest(Vector to, int which) implements Ending {
+        public Nearest {
+            if (which < 1) {
+                throw new IllegalArgumentException("which must be at least 1: " + which);
+            }
+        }
+    }
 }

@@ -82,7 +82,7 @@ final class Flow {
             if (!rate(field, state, rate)) {
                 return;
             }
-            double slope = target.rate(state, index());
+            double slope = target.rate(state, index(), s.gx[0], s.gy[0], s.gz[0]);
             double dt = -target.value(state) / slope;
             if (slope == 0 || !Double.isFinite(dt)) {
                 return;

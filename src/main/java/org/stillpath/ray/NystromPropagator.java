@@ -269,7 +269,7 @@ public final class NystromPropagator implements Propagator {
         double n = speed(state);
         double[] f = k[0];
         for (int t = 0; t < targets.length; t++) {
-            double first = -values[t] / targets[t].rate(state, n);
+            double first = -values[t] / targets[t].rate(state, n, f[0], f[1], f[2]);
             if (!(first > 0 && first < 2 * nearest)) {
                 continue;
             }
@@ -281,7 +281,8 @@ public final class NystromPropagator implements Propagator {
             }
             saved[State.EXCESS] = state[State.EXCESS] + first * f[3];
             saved[State.LENGTH] = state[State.LENGTH] + first * f[4];
-            double second = first - (targets[t].value(saved) + bias[t]) / targets[t].rate(saved, speed(saved));
+            double slope = targets[t].rate(saved, speed(saved), f[0], f[1], f[2]);
+            double second = first - (targets[t].value(saved) + bias[t]) / slope;
             nearest = Math.min(nearest, second > 0.5 * first && second < 2 * first ? second : first);
         }
         return nearest;
@@ -544,7 +545,10 @@ public final class NystromPropagator implements Propagator {
         for (int round = 0; round < LANDING_ROUNDS; round++) {
             double n = speed(state);
             double value = target.value(state) + bias;
-            double dt = -value / target.rate(state, n);
+            if (!stage(field, state, k[0])) {
+                return -1;
+            }
+            double dt = -value / target.rate(state, n, k[0][0], k[0][1], k[0][2]);
             boolean crossed = value > 0 != startValue > 0;
             if (Math.abs(dt) * n <= 1e-9 * scale) {
                 // on the target itself: its bias only kept the start from being met
@@ -559,7 +563,7 @@ public final class NystromPropagator implements Propagator {
                 boolean touches = Math.abs(value) <= 1e-13 * scale * target.steepness(state, n);
                 return touches && target.accepts(state) ? Math.max(0, at) : -1;
             }
-            if (!move(state, field, dt, h)) {
+            if (!moveOn(state, field, dt, h)) {
                 return -1;
             }
             at += dt;
@@ -577,8 +581,13 @@ public final class NystromPropagator implements Propagator {
 
     /** A step along the ray, forward or back, inside a step of length h that was accepted. */
     private boolean move(double[] state, IndexField field, double dt, double h) {
+        return stage(field, state, k[0]) && moveOn(state, field, dt, h);
+    }
+
+    /** The same from a state whose rates stand in {@code k[0]}. */
+    private boolean moveOn(double[] state, IndexField field, double dt, double h) {
         NystromPair rk = Math.abs(dt) < 0.03 * h ? NystromPair.SIX_FOUR : pair;
-        if (!stage(field, state, k[0]) || Double.isNaN(step(rk, state, field, dt))) {
+        if (Double.isNaN(step(rk, state, field, dt))) {
             return false;
         }
         System.arraycopy(end, 0, state, 0, state.length);

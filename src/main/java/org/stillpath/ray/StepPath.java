@@ -178,7 +178,13 @@ final class StepPath {
 
     private double rate(Target target, double t) {
         at(t, state);
-        return target.rate(state, Math.sqrt(state[3] * state[3] + state[4] * state[4] + state[5] * state[5]));
+        double u = t / h;
+        return target.rate(
+                state,
+                Math.sqrt(state[3] * state[3] + state[4] * state[4] + state[5] * state[5]),
+                (1 - u) * startRates[0] + u * endRates[0],
+                (1 - u) * startRates[1] + u * endRates[1],
+                (1 - u) * startRates[2] + u * endRates[2]);
     }
 
     /** Zero between two values of different sign: regula falsi with the Illinois change. */

@@ -1,6 +1,8 @@
 package org.stillpath.ray;
 
+import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Surface;
+import org.stillpath.geometry.Vector;
 import org.stillpath.medium.Level;
 
 /**
@@ -19,6 +21,15 @@ public abstract sealed class Target {
      * @param index the refractive index in that state
      */
     public abstract double rate(double[] y, double index);
+
+    /**
+     * The same where the force is known too, on which the rate of a target that looks at the momentum depends.
+     *
+     * @param fx ½∂n²/∂x at the state, 1/m; likewise {@code fy}, {@code fz}
+     */
+    public double rate(double[] y, double index, double fx, double fy, double fz) {
+        return rate(y, index);
+    }
 
     /** How much the value changes over a distance: an upper bound of |d value/d s| near the state, per metre. */
     public abstract double steepness(double[] y, double index);
@@ -164,6 +175,42 @@ public abstract sealed class Target {
         @Override
         public double steepness(double[] y, double index) {
             return index;
+        }
+    }
+
+    /** Where the distance to a point stays the same for a moment: (q − to)·p = 0. */
+    public static final class Nearest extends Target {
+        private final Vector to;
+
+        Nearest(Vector to) {
+            this.to = to;
+        }
+
+        /** Whether the distance is least there and not greatest. */
+        boolean isNearest(double[] y, Samples force) {
+            double n = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
+            return rate(y, n, force.gx[0], force.gy[0], force.gz[0]) > 0;
+        }
+
+        @Override
+        public double value(double[] y) {
+            return (y[0] - to.x()) * y[3] + (y[1] - to.y()) * y[4] + (y[2] - to.z()) * y[5];
+        }
+
+        /** Without the force's part, which vanishes near the point. */
+        @Override
+        public double rate(double[] y, double index) {
+            return index * index;
+        }
+
+        @Override
+        public double rate(double[] y, double index, double fx, double fy, double fz) {
+            return index * index + (y[0] - to.x()) * fx + (y[1] - to.y()) * fy + (y[2] - to.z()) * fz;
+        }
+
+        @Override
+        public double steepness(double[] y, double index) {
+            return 4 * index;
         }
     }
 }

@@ -47,26 +47,31 @@ public final class Tracer {
      *
      * @param accuracy of positions against the distance from first to last point, of optical lengths against themselves, of
      *     directions in radians
-     * @param transfer whether the 4×4 ray-transfer matrix is carried along
+     * @param transfer whether Jacobi columns are carried along
      * @param trail whether the places passed are kept, for drawing
-     * @param conjugates whether points conjugate to the start are located; the Jacobi columns then start across the ray
-     *     instead of across z: two unit places, two unit momenta, and there is no ray-transfer matrix between planes
+     * @param columns how the columns start
+     * @param reach how far a ray is followed at most, in lengths of the scene
      */
-    public record Settings(double accuracy, boolean transfer, boolean trail, boolean conjugates) {
-        /** Without conjugate points. */
+    public record Settings(double accuracy, boolean transfer, boolean trail, Columns columns, double reach) {
+        private static final double REACH = 100;
+
+        /** Columns on planes of constant z, if any: those of the 4×4 ray-transfer matrix. */
         public Settings(double accuracy, boolean transfer, boolean trail) {
-            this(accuracy, transfer, trail, false);
+            this(accuracy, transfer, trail, Columns.PLANES, REACH);
         }
 
         public Settings {
             if (!(accuracy >= 1e-13 && accuracy < 1)) {
                 throw new IllegalArgumentException("accuracy must be from 1e-13 to below 1: " + accuracy);
             }
+            if (!(reach > 0)) {
+                throw new IllegalArgumentException("reach must be positive: " + reach);
+            }
         }
 
         /** The same with another choice about the trail. */
         public Settings withTrail(boolean kept) {
-            return new Settings(accuracy, transfer, kept, conjugates);
+            return new Settings(accuracy, transfer, kept, columns, reach);
         }
     }
 
@@ -123,6 +128,16 @@ public final class Tracer {
         return Objects.requireNonNull(result);
     }
 
+    /**
+     * Traces one ray once, at a given tolerance and without an estimate of its errors: for searches that trace what they find
+     * again.
+     */
+    public Traced glance(RayStart start, double tolerance) {
+        Run run = new Run(start, tolerance, 1);
+        run.go();
+        return run.traced(run.errors(run), run.propagator.evaluations());
+    }
+
     /** Length of the scene that a ray from this start sees, metres: what positions and steps are judged against. */
     double scale(RayStart start) {
         double scale = 0;
@@ -139,6 +154,8 @@ public final class Tracer {
             scale = Math.max(scale, at.length());
         } else if (ending instanceof Ending.AtOpticalLength at) {
             scale = Math.max(scale, at.opticalLength());
+        } else if (ending instanceof Ending.Nearest at) {
+            scale = Math.max(scale, at.to().minus(from).norm());
         }
         if (scale == 0) {
             for (Element e : train.elements()) {
@@ -152,8 +169,6 @@ public final class Tracer {
 
     /** One pass of one ray at one tolerance. */
     private final class Run {
-        private static final double REACH = 100;
-
         private final RayStart start;
         private final double scale;
         private final double limit;
@@ -176,12 +191,11 @@ public final class Tracer {
         Run(RayStart start, double tolerance, double stride) {
             this.start = start;
             this.scale = scale(start);
-            this.limit = REACH * scale;
+            this.limit = settings.reach * scale;
             this.propagator = engine.make(tolerance, scale, stride);
-            this.trail = Trail.of(settings.trail, settings.conjugates);
+            this.trail = Trail.of(settings.trail, settings.columns);
             boolean lens = train.elements().stream().anyMatch(e -> e.action() instanceof Action.ThinLens);
-            this.y = new double
-                    [State.size(settings.transfer || settings.conjugates || lens ? State.TRANSFER_COLUMNS : 0)];
+            this.y = new double[State.size(settings.transfer || lens ? State.TRANSFER_COLUMNS : 0)];
             this.rate = new double[y.length];
             this.field = train.from();
         }
@@ -250,7 +264,7 @@ public final class Tracer {
             if (State.columns(y) == 0) {
                 return;
             }
-            if (settings.conjugates) {
+            if (settings.columns.acrossRay()) {
                 columnsAcross();
                 return;
             }
@@ -270,7 +284,7 @@ public final class Tracer {
 
         /** δq and δp across the ray; what a δq needs of δp along the ray to keep p·δp = ½∇n²·δq is added. */
         private void columnsAcross() {
-            double[][] axes = ConjugatePoints.across(y[3], y[4], y[5]);
+            double[][] axes = settings.columns.axes(y[3], y[4], y[5]);
             double n2 = y[3] * y[3] + y[4] * y[4] + y[5] * y[5];
             Samples s = flow.samples();
             for (int c = 0; c < 2; c++) {
@@ -329,7 +343,8 @@ public final class Tracer {
                 s = surface.firstCrossing(new Vector(y[0], y[1], y[2]), d, least, limit);
             } else {
                 s = -target.value(y) / (target.rate(y, n) / n);
-                if (target instanceof Target.AtZ && !(s > Departure.ON * scale)) {
+                boolean again = target instanceof Target.AtZ || target instanceof Target.Nearest;
+                if (again && !(s > Departure.ON * scale)) {
                     s = Double.NaN;
                 }
             }
@@ -471,6 +486,10 @@ public final class Tracer {
                 arrive();
                 return;
             }
+            if (ending instanceof Ending.Nearest at) {
+                approach(at);
+                return;
+            }
             Target target;
             if (ending instanceof Ending.AtZ at) {
                 target = new Target.AtZ(at.z());
@@ -487,6 +506,19 @@ public final class Tracer {
             }
             if (reach(target, -1, null)) {
                 arrive();
+            }
+        }
+
+        /** Goes from one place where the distance does not change to the next, and counts those where it is least. */
+        private void approach(Ending.Nearest at) {
+            Target.Nearest target = new Target.Nearest(at.to());
+            int met = 0;
+            while (reach(target, -1, null)) {
+                boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
+                if (defined && target.isNearest(y, flow.samples()) && ++met == at.which()) {
+                    arrive();
+                    return;
+                }
             }
         }
 

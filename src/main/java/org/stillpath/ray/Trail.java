@@ -14,9 +14,9 @@ public final class Trail {
 
     private final Optional<ConjugatePoints> conjugates;
 
-    private Trail(boolean wanted, boolean conjugates) {
+    private Trail(boolean wanted, Columns columns) {
         this.wanted = wanted;
-        this.conjugates = conjugates ? Optional.of(new ConjugatePoints()) : Optional.empty();
+        this.conjugates = columns.conjugates() ? Optional.of(new ConjugatePoints(columns)) : Optional.empty();
         this.xyz = new double[wanted ? 3 * 64 : 0];
     }
 
@@ -24,11 +24,10 @@ public final class Trail {
      * A trail.
      *
      * @param places whether places are kept
-     * @param conjugates whether conjugate points are looked for; states must then carry Jacobi columns whose last two start
-     *     as directions
+     * @param columns say whether conjugate points are looked for
      */
-    public static Trail of(boolean places, boolean conjugates) {
-        return new Trail(places, conjugates);
+    public static Trail of(boolean places, Columns columns) {
+        return new Trail(places, columns);
     }
 
     /** Looks for conjugate points, if they are wanted. */

@@ -43,6 +43,22 @@ final class RayFigure {
             String answer,
             List<SectionFigure.Line> furtherLines,
             List<SectionFigure.Mark> marks) {
+        return figure("rays", "Where do the rays go?", train, rays, answer, furtherLines, marks);
+    }
+
+    /** Paths between two points, given as rays. */
+    static SectionFigure paths(Train train, List<Traced> paths, String answer) {
+        return figure("paths", "Which ways can light take?", train, paths, answer, List.of(), List.of());
+    }
+
+    private static SectionFigure figure(
+            String name,
+            String question,
+            Train train,
+            List<Traced> rays,
+            String answer,
+            List<SectionFigure.Line> furtherLines,
+            List<SectionFigure.Mark> marks) {
         Extent extent = Extent.of(rays, train);
         List<SectionFigure.Line> lines = new ArrayList<>(outlines(train, extent));
         int every = Math.max(1, (rays.size() + MOST_RAYS - 1) / MOST_RAYS);
@@ -51,14 +67,7 @@ final class RayFigure {
         }
         lines.addAll(furtherLines);
         return new SectionFigure(
-                "rays",
-                "Where do the rays go?",
-                answer,
-                NAMES[extent.across],
-                NAMES[extent.up],
-                shading(train, extent),
-                lines,
-                marks);
+                name, question, answer, NAMES[extent.across], NAMES[extent.up], shading(train, extent), lines, marks);
     }
 
     private static Optional<SectionFigure.Line> line(Traced ray, Extent extent) {

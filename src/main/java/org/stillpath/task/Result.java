@@ -13,6 +13,7 @@ import java.util.Map;
  * @param headline the answer as one plain sentence for people, with units and digits that the accuracy supports
  * @param quantities named values in the order in which they should be read
  * @param rays traced rays in the order given; empty for tasks without rays
+ * @param paths stationary paths by optical length; empty for tasks without paths
  * @param tables further tables, written as CSV
  * @param figures figures as data; empty where none was asked for
  * @param warnings what makes the result doubtful or was assumed, in words
@@ -25,15 +26,32 @@ public record Result(
         String headline,
         Map<String, Quantity> quantities,
         List<RayRow> rays,
+        List<PathRow> paths,
         List<Table> tables,
         List<Figure> figures,
         List<String> warnings,
         List<String> cautions,
         boolean accuracyReached) {
 
+    /** A result without paths. */
+    public Result(
+            String task,
+            String title,
+            String headline,
+            Map<String, Quantity> quantities,
+            List<RayRow> rays,
+            List<Table> tables,
+            List<Figure> figures,
+            List<String> warnings,
+            List<String> cautions,
+            boolean accuracyReached) {
+        this(task, title, headline, quantities, rays, List.of(), tables, figures, warnings, cautions, accuracyReached);
+    }
+
     public Result {
         quantities = Collections.unmodifiableMap(new LinkedHashMap<>(quantities));
         rays = List.copyOf(rays);
+        paths = List.copyOf(paths);
         tables = List.copyOf(tables);
         figures = List.copyOf(figures);
         warnings = List.copyOf(warnings);

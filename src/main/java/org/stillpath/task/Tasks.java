@@ -10,9 +10,9 @@ import org.stillpath.problem.Problems;
 
 /** The tasks by name, and the way from a job to its result. */
 public final class Tasks {
-    private static final List<Task> ALL = List.of(new TraceTask(), new LensTask());
+    private static final List<Task> ALL = List.of(new TraceTask(), new BetweenTask(), new LensTask());
     /** Words of the job file that a later version gives a meaning. */
-    private static final List<String> PLANNED = List.of("between", "sightline", "window");
+    private static final List<String> PLANNED = List.of("sightline", "window");
 
     private Tasks() {}
 

@@ -12,7 +12,7 @@ import org.stillpath.medium.IndexField;
 
 class ConjugatePointsTest {
     private static double[] conjugates(Train train, Ending ending, Vector from, Vector direction) {
-        Tracer.Settings settings = new Tracer.Settings(1e-10, false, false, true);
+        Tracer.Settings settings = new Tracer.Settings(1e-10, true, false, Columns.RAY.withConjugates(), 100);
         double[] own = new Tracer(train, ending, settings)
                 .trace(RayStart.of(from, direction))
                 .conjugates();
