@@ -443,33 +443,39 @@ final class March {
     }
 
     /**
-     * The slope along an axis on which a node is lower than its neighbours: that of U at the upwind neighbour on another axis,
-     * from nodes that lie before this one. (The difference across the node itself would be as good where it is smooth, but it
-     * lets light's later places act on its earlier ones, and rounds of polishing then run away behind obstacles.) A smooth front
-     * gives less than h/2 over its radius; what is steeper comes from a corner or a ridge, where Godunov's ∂S = 0 holds.
+     * The slope along an axis on which a node is lower than its neighbours: that of U at the two upwind nodes on another axis,
+     * carried on, from nodes that lie before this one. (The difference across the node itself would be as good where it is
+     * smooth, but it lets later places act on earlier ones, and rounds of polishing then run away behind obstacles.) A smooth
+     * front gives less than h/2 over its radius, or in the row of the source what the factor has; what is steeper comes from a
+     * corner or a ridge, where Godunov's ∂S = 0 holds.
      */
     private void slope(int node, int k) {
         alpha[k] = 0;
         beta[k] = 0;
         used[k] = Math.abs(d[k]) * r <= 0.5 * h[k];
-        int upwind = node;
+        int toward = 0;
         for (int m = 0; m < dimensions; m++) {
-            if (m != k && index[m] > 0 && s[node - stride[m]] < s[upwind]) {
-                upwind = node - stride[m];
+            if (m != k && index[m] > 0 && s[node - stride[m]] < s[node + toward]) {
+                toward = -stride[m];
             }
-            if (m != k && index[m] < count[m] - 1 && s[node + stride[m]] < s[upwind]) {
-                upwind = node + stride[m];
+            if (m != k && index[m] < count[m] - 1 && s[node + stride[m]] < s[node + toward]) {
+                toward = stride[m];
             }
         }
-        if (upwind == node) {
+        if (toward == 0) {
             return;
         }
+        int upwind = node + toward;
         int t = stride[k];
         boolean below = index[k] > 0 && s[upwind - t] < s[node];
         boolean above = index[k] < count[k] - 1 && s[upwind + t] < s[node];
         double rise;
         if (below && above) {
             rise = (u[upwind + t] - u[upwind - t]) / (2 * h[k]);
+            int far = upwind + toward;
+            if (hasTwo(toward) && s[far - t] < s[node] && s[far + t] < s[node]) {
+                rise += rise - (u[far + t] - u[far - t]) / (2 * h[k]);
+            }
         } else if (below) {
             rise = (u[upwind] - u[upwind - t]) / h[k];
         } else if (above) {
@@ -481,12 +487,23 @@ final class March {
         // no light comes out of a wall or in over the grid's edge
         boolean fromBelow = index[k] > 0 && s[node - t] < Double.POSITIVE_INFINITY;
         boolean fromAbove = index[k] < count[k] - 1 && s[node + t] < Double.POSITIVE_INFINITY;
-        if (whole >= (fromAbove ? -STEEP : 0) && whole <= (fromBelow ? STEEP : 0)) {
+        boolean steep = Math.abs(used[k] ? whole - d[k] : whole) > STEEP;
+        if (!steep && (whole >= 0 || fromAbove) && (whole <= 0 || fromBelow)) {
             used[k] = true;
             beta[k] = -rise;
         } else {
             used[k] = false;
         }
+    }
+
+    /** Whether two nodes lie that way from the node in hand. */
+    private boolean hasTwo(int toward) {
+        for (int m = 0; m < dimensions; m++) {
+            if (Math.abs(toward) == stride[m]) {
+                return toward < 0 ? index[m] > 1 : index[m] < count[m] - 2;
+            }
+        }
+        return false;
     }
 
     private void set(int node, double value) {
