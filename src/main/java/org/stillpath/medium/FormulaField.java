@@ -4,6 +4,8 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
+import java.util.Optional;
+import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Formula;
 import org.stillpath.formula.Kink;
@@ -17,8 +19,10 @@ import org.stillpath.formula.Samples;
 public final class FormulaField implements ScalarField {
     private final Formula formula;
     private final double[] arguments;
+    private final Chart chart;
 
-    private FormulaField(Formula formula, double[] arguments) {
+    private FormulaField(Formula formula, double[] arguments, Chart chart) {
+        this.chart = chart;
         this.formula = formula;
         this.arguments = arguments;
     }
@@ -30,12 +34,37 @@ public final class FormulaField implements ScalarField {
      * @param values by name, in SI; every name that the formula uses must be there
      */
     public static FormulaField of(Formula formula, Map<String, Double> values) {
-        return new FormulaField(formula, arguments(formula, values));
+        return new FormulaField(formula, arguments(formula, values), Chart.FLAT);
     }
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
-        formula.sample(x, y, z, count, arguments, wavelength, order, out);
+        formula.sample(x, y, z, count, arguments, wavelength, chart, order, out);
+    }
+
+    @Override
+    public ScalarField on(Chart other) {
+        return formula.coordinates().stream().anyMatch(Coordinate::charted)
+                ? new FormulaField(formula, arguments, other)
+                : this;
+    }
+
+    @Override
+    public boolean ofHeightAlone() {
+        return formula.coordinates().stream().allMatch(c -> c == Coordinate.HEIGHT);
+    }
+
+    /** The knots of the ground, where the clearance over it bends. */
+    private Optional<Seam> groundSeam() {
+        return formula.uses(Coordinate.CLEARANCE) && chart instanceof GroundChart g ? g.groundSeam() : Optional.empty();
+    }
+
+    /** Only the ground is taken apart, the last seam; a formula's own kinks are not. */
+    @Override
+    public ScalarField piece(int[] cells) {
+        return groundSeam().isPresent() && chart instanceof GroundChart g
+                ? new FormulaField(formula, arguments, g.piece(cells[cells.length - 1]))
+                : this;
     }
 
     @Override
@@ -57,14 +86,16 @@ public final class FormulaField implements ScalarField {
                     .mapToDouble(name -> arguments[formula.arguments().indexOf(name)])
                     .toArray();
             list.add(new Seam(
-                    new FormulaLevel(difference, chosen, wavelength, "a kink of the formula"), new double[] {0}));
+                    new FormulaLevel(difference, chosen, wavelength, "a kink of the formula", chart),
+                    new double[] {0}));
         }
+        groundSeam().ifPresent(list::add);
         return List.copyOf(list);
     }
 
     @Override
     public String explain(double x, double y, double z, double wavelength) {
-        return formula.explain(x, y, z, arguments, wavelength);
+        return formula.explain(x, y, z, arguments, wavelength, chart);
     }
 
     /** The values of a formula's names in its own order. */

@@ -20,6 +20,16 @@ final class Told {
         return Display.in(metres, "nm", 0).toString();
     }
 
+    /** A temperature in kelvin as degrees Celsius: {@code 20 degC}. */
+    static String celsius(double kelvin) {
+        return Display.of(Math.round((kelvin - AirLaw.ZERO_CELSIUS) * 1e3) / 1e3, "1", 0) + " degC";
+    }
+
+    /** A pressure in pascal as hectopascal: {@code 1013.25 hPa}. */
+    static String pressure(double pascal) {
+        return Display.of(pascal / 100, "1", pascal * 1e-7) + " hPa";
+    }
+
     /** A plain number. */
     static String number(double value) {
         return Display.of(value, "1", 0).toString();
