@@ -27,7 +27,10 @@ final class Told {
 
     /** A pressure in pascal as hectopascal: {@code 1013.25 hPa}. */
     static String pressure(double pascal) {
-        return Display.of(pascal / 100, "1", pascal * 1e-7) + " hPa";
+        double hPa = pascal / 100;
+        // five decimals below the first digit are more than any barometer shows
+        double digit = hPa == 0 ? 1 : Math.pow(10, 5 - Math.floor(Math.log10(Math.abs(hPa))));
+        return number(Double.isFinite(hPa) ? Math.rint(hPa * digit) / digit : hPa) + " hPa";
     }
 
     /** A plain number. */

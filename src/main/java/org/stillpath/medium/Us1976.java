@@ -17,6 +17,8 @@ import org.stillpath.formula.Samples;
 final class Us1976 implements ScalarField {
     /** Lowest height, metres. */
     static final double LOWEST = -5e3;
+    /** Highest height, metres: 84.852 km of geopotential height. */
+    static final double HIGHEST = 86e3;
 
     private static final double R0 = Hydrostatic.EARTH;
     /** g₀ M₀/R*, K/m. */
@@ -28,7 +30,6 @@ final class Us1976 implements ScalarField {
     private static final double[] LAPSES = {-6.5e-3, 0, 1e-3, 2.8e-3, 0, -2.8e-3, -2e-3};
     private static final double[] BASE_TEMPERATURES = baseTemperatures();
     private static final double[] BASE_PRESSURES = basePressures();
-    private static final double TOP = 84_852;
     /** No layer in particular. */
     private static final int ANY = -1;
 
@@ -60,11 +61,6 @@ final class Us1976 implements ScalarField {
     /** Height of a geopotential height. */
     static double geometric(double geopotential) {
         return R0 * geopotential / (R0 - geopotential);
-    }
-
-    /** Highest height, metres. */
-    static double highest() {
-        return geometric(TOP);
     }
 
     /** Temperature in kelvin at a geopotential height. */
@@ -153,7 +149,7 @@ final class Us1976 implements ScalarField {
         Level height = new ChartLevel(Coordinate.HEIGHT, chart);
         List<Level> list = new ArrayList<>();
         list.add(new EdgeLevel(height, LOWEST, false, "us-1976"));
-        list.add(new EdgeLevel(height, highest(), true, "us-1976"));
+        list.add(new EdgeLevel(height, HIGHEST, true, "us-1976"));
         return list;
     }
 
