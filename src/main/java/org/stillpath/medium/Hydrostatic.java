@@ -104,6 +104,11 @@ final class Hydrostatic implements Pressure {
             private double[] zero = new double[1];
 
             @Override
+            public boolean coupled() {
+                return !moist.isNone();
+            }
+
+            @Override
             public void at(double[] heights, double[] pressures, double[] rates) {
                 int n = heights.length;
                 if (zero.length < n) {

@@ -14,8 +14,8 @@ import java.util.List;
  * points as at them.
  *
  * <p>Pieces are short near the datum and near the height where the pressure was given, where thin layers lie, and
- * longer with the distance from both, a tenth of it, at most 2 km. A layer much thinner than a tenth of that may be stepped
- * over; its weight in the pressure is then below 1e-6.
+ * longer with the distance from both, a fifth of it, at most 2 km. A bump of the temperature much thinner than a twentieth of
+ * that distance may be stepped over (a step of it is not): one of 4 K and 5 m weighs 1e-5 in the pressure above it.
  */
 final class HydrostaticTable {
     /** Lowest height that is tried, metres. */
@@ -24,7 +24,7 @@ final class HydrostaticTable {
     static final double HIGHEST = 120e3;
 
     private static final int DEGREE = 16;
-    private static final double SHORTEST_USUAL = 0.1;
+    private static final double SHORTEST_USUAL = 0.2;
     private static final double LONGEST = 2e3;
     private static final double TOLERANCE = 2e-16;
     private static final int MOST_PIECES = 20_000;
@@ -33,6 +33,9 @@ final class HydrostaticTable {
 
     /** What the equation is. */
     interface Rate {
+        /** Whether the rate depends on the pressure, so that it must be asked again once that is better known. */
+        boolean coupled();
+
         /**
          * Fills d ln p/dh at heights; NaN where nothing is known.
          *
@@ -165,7 +168,7 @@ final class HydrostaticTable {
             double width = SHORTEST_USUAL;
             while (direction * (last - at) > 0 && list.size() < MOST_PIECES) {
                 double size = Math.min(Math.abs(at), Math.abs(at - origin));
-                double usual = Math.max(SHORTEST_USUAL, Math.min(LONGEST, 0.1 * size));
+                double usual = Math.max(SHORTEST_USUAL, Math.min(LONGEST, 0.2 * size));
                 double least = 1e-9 * (1 + Math.abs(at));
                 width = Math.min(2 * width, usual);
                 double end = next(at, direction, at + direction * width, last);
@@ -206,7 +209,7 @@ final class HydrostaticTable {
                 pressures[j] = p;
             }
             double change = Double.POSITIVE_INFINITY;
-            for (int turn = 0; turn < 30 && change > 4e-16 * p; turn++) {
+            for (int turn = 0; turn < (rate.coupled() ? 30 : 1) && change > 4e-16 * p; turn++) {
                 rate.at(heights, pressures, rates);
                 unsound = false;
                 for (double r : rates) {
