@@ -2,51 +2,54 @@ package org.stillpath.medium;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
+import org.stillpath.formula.Chart;
 import org.stillpath.geometry.Frame;
 
 /**
- * Still air of one state, after {@link Ciddor}.
+ * Still air of one state.
  *
  * @param declaration what is said about it
- * @param law the law at the state of the air
+ * @param state the law and the state
  */
-public record AirMedium(Declaration declaration, Ciddor law) implements Medium {
-    /** Carbon dioxide of today's air that is meant where nothing is said: 420 ppm. */
-    private static final double CO2 = 420e-6;
-
-    private static final String SOURCE = "P. E. Ciddor, Applied Optics 35 (1996) 1566-1573";
-
-    /** The law for dry air at 20 °C, 101.325 kPa and 420 ppm of carbon dioxide: the air that catalogues refer to. */
-    static Ciddor laboratory() {
-        return Ciddor.of(293.15, 101325, 0, CO2);
-    }
-
+public record AirMedium(Declaration declaration, AirState state) implements Medium {
     /** The medium {@code air} that every job has: dry, 20 °C, 101.325 kPa, 420 ppm of carbon dioxide. */
     public static AirMedium builtIn() {
-        return new AirMedium(Declaration.of("air").withSource(SOURCE), laboratory());
+        AirState state = AirState.laboratory();
+        return new AirMedium(Declaration.of("air").withSource(state.law().source()), state);
     }
 
     @Override
-    public IndexField field(double wavelength, Frame frame) {
-        List<Level> limits =
-                declaration.valid().stream().map(l -> FramedLevel.of(l, frame)).toList();
-        return new UniformIndex(law.refractivity(wavelength), limits);
+    public IndexField placed(double wavelength, Frame frame, Chart chart) {
+        return uniform(state.refractivity(wavelength), frame, chart);
+    }
+
+    @Override
+    public Optional<IndexField> groupField(double wavelength, Frame frame, Chart chart) {
+        return Optional.of(uniform(state.groupRefractivity(wavelength), frame, FramedChart.of(chart, frame)));
+    }
+
+    private IndexField uniform(double refractivity, Frame frame, Chart chart) {
+        List<Level> limits = declaration.valid(chart).stream()
+                .map(l -> FramedLevel.of(l, frame))
+                .toList();
+        return new UniformIndex(refractivity, limits);
     }
 
     @Override
     public boolean needsWavelength() {
-        return true;
+        return state.law().dispersive();
     }
 
     @Override
     public List<String> warningsAt(double wavelength) {
         List<String> list = new ArrayList<>(Medium.super.warningsAt(wavelength));
-        list.addAll(law.warnings(wavelength));
+        list.addAll(state.warnings(wavelength));
         return List.copyOf(list);
     }
 
     @Override
     public Medium with(Declaration other) {
-        return new AirMedium(other, law);
+        return new AirMedium(other, state);
     }
 }

@@ -2,6 +2,7 @@ package org.stillpath.medium;
 
 import java.util.List;
 import java.util.Optional;
+import org.stillpath.formula.Chart;
 import org.stillpath.geometry.Vector;
 
 /**
@@ -31,6 +32,11 @@ public record Declaration(
     /** A medium about which nothing but its name is said. */
     public static Declaration of(String name) {
         return new Declaration(name, Optional.empty(), Optional.empty(), List.of(), Optional.empty(), "", List.of());
+    }
+
+    /** The margins of {@link #valid()} where {@code chart} gives height, clearance and distance. */
+    List<Level> valid(Chart chart) {
+        return valid.stream().map(l -> l.on(chart)).toList();
     }
 
     /** The same with another source. */

@@ -1,16 +1,22 @@
 package org.stillpath.medium;
 
 /**
- * Margin of one edge of a table: the distance from the edge, positive inside.
+ * Margin of one edge of a range: the distance from the edge, positive inside.
  *
- * @param along the table's coordinate
+ * @param coordinate the coordinate that ends, metres
  * @param edge its value at the edge, metres
- * @param upper whether the table lies below the edge
+ * @param upper whether the range lies below the edge
+ * @param what what ends there, such as {@code the table}
  */
-record EdgeLevel(Along along, double edge, boolean upper) implements Level {
+record EdgeLevel(Level coordinate, double edge, boolean upper, String what) implements Level {
+    /** The edge of a table. */
+    EdgeLevel(Level coordinate, double edge, boolean upper) {
+        this(coordinate, edge, upper, "the table");
+    }
+
     @Override
     public double value(double x, double y, double z, double[] gradient) {
-        double u = along.at(x, y, z, gradient);
+        double u = coordinate.value(x, y, z, gradient);
         if (!upper) {
             return u - edge;
         }
@@ -22,6 +28,6 @@ record EdgeLevel(Along along, double edge, boolean upper) implements Level {
 
     @Override
     public String describe() {
-        return along.word() + (upper ? " < " : " > ") + Told.length(edge) + ", the edge of the table";
+        return coordinate.describe() + (upper ? " < " : " > ") + Told.length(edge) + ", the edge of " + what;
     }
 }

@@ -2,6 +2,7 @@ package org.stillpath.medium;
 
 import java.util.ArrayList;
 import java.util.List;
+import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
 import org.stillpath.geometry.Frame;
 
@@ -17,12 +18,13 @@ public record FieldMedium(Declaration declaration, ScalarField scalar, boolean f
         implements Medium {
 
     @Override
-    public IndexField field(double wavelength, Frame frame) {
+    public IndexField placed(double wavelength, Frame frame, Chart chart) {
         if (needsWavelength() && !(wavelength > 0)) {
             throw new IllegalArgumentException("medium " + name() + " needs a wavelength above 0 m: " + wavelength);
         }
-        double nu = relativeToAir ? AirMedium.laboratory().refractivity(wavelength) : 0;
-        PlacedIndex placed = new PlacedIndex(scalar, fromOne, nu, wavelength, frame, declaration.valid());
+        double nu = relativeToAir ? AirState.laboratory().refractivity(wavelength) : 0;
+        PlacedIndex placed =
+                new PlacedIndex(scalar.on(chart), fromOne, nu, wavelength, frame, declaration.valid(chart));
         if (scalar.isConstant()) {
             Scratch s = new Scratch().point(0, 0, 0);
             placed.sample(s.x, s.y, s.z, 1, Order.VALUE, s.samples);

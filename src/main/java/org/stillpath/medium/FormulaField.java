@@ -4,7 +4,9 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
+import java.util.Optional;
 import java.util.concurrent.ConcurrentHashMap;
+import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Formula;
 import org.stillpath.formula.Kink;
@@ -18,10 +20,12 @@ import org.stillpath.formula.Samples;
 public final class FormulaField implements ScalarField {
     private final Formula formula;
     private final double[] arguments;
-    /** Pieces between kinks, by the sides of the kinks as bits, made when a ray first comes there. */
-    private final Map<Long, FormulaField> pieces = new ConcurrentHashMap<>();
+    private final Chart chart;
+    /** Pieces between kinks and knots of the ground, by the cells, made when a ray first comes there. */
+    private final Map<List<Integer>, FormulaField> pieces = new ConcurrentHashMap<>();
 
-    private FormulaField(Formula formula, double[] arguments) {
+    private FormulaField(Formula formula, double[] arguments, Chart chart) {
+        this.chart = chart;
         this.formula = formula;
         this.arguments = arguments;
     }
@@ -33,12 +37,29 @@ public final class FormulaField implements ScalarField {
      * @param values by name, in SI; every name that the formula uses must be there
      */
     public static FormulaField of(Formula formula, Map<String, Double> values) {
-        return new FormulaField(formula, arguments(formula, values));
+        return new FormulaField(formula, arguments(formula, values), Chart.FLAT);
     }
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
-        formula.sample(x, y, z, count, arguments, wavelength, order, out);
+        formula.sample(x, y, z, count, arguments, wavelength, chart, order, out);
+    }
+
+    @Override
+    public ScalarField on(Chart other) {
+        return formula.coordinates().stream().anyMatch(Coordinate::charted)
+                ? new FormulaField(formula, arguments, other)
+                : this;
+    }
+
+    @Override
+    public boolean ofHeightAlone() {
+        return formula.coordinates().stream().allMatch(c -> c == Coordinate.HEIGHT);
+    }
+
+    /** The knots of the ground, where the clearance over it bends. */
+    private Optional<Seam> groundSeam() {
+        return formula.uses(Coordinate.CLEARANCE) && chart instanceof GroundChart g ? g.groundSeam() : Optional.empty();
     }
 
     @Override
@@ -60,33 +81,37 @@ public final class FormulaField implements ScalarField {
                     .mapToDouble(name -> arguments[formula.arguments().indexOf(name)])
                     .toArray();
             list.add(new Seam(
-                    new FormulaLevel(difference, chosen, wavelength, "a kink of the formula"), new double[] {0}));
+                    new FormulaLevel(difference, chosen, wavelength, "a kink of the formula", chart),
+                    new double[] {0}));
         }
+        groundSeam().ifPresent(list::add);
         return List.copyOf(list);
     }
 
-    /** More kinks than a mask has bits are not taken apart; nor is a formula without any. */
+    /** The kinks' cells come first, that of the ground last. */
     @Override
     public ScalarField piece(int[] cells) {
-        if (cells.length == 0 || cells.length > Long.SIZE - 1) {
+        if (cells.length == 0) {
             return this;
         }
-        long sides = 0;
-        for (int i = 0; i < cells.length; i++) {
-            sides |= (long) cells[i] << i;
-        }
-        return pieces.computeIfAbsent(sides, key -> {
-            boolean[] positive = new boolean[cells.length];
-            for (int i = 0; i < cells.length; i++) {
+        return pieces.computeIfAbsent(Arrays.stream(cells).boxed().toList(), key -> {
+            Chart over = chart;
+            int kinks = cells.length;
+            if (groundSeam().isPresent() && chart instanceof GroundChart g) {
+                kinks--;
+                over = g.piece(cells[kinks]);
+            }
+            boolean[] positive = new boolean[kinks];
+            for (int i = 0; i < kinks; i++) {
                 positive[i] = cells[i] > 0;
             }
-            return new FormulaField(formula.piece(positive), arguments);
+            return new FormulaField(kinks == 0 ? formula : formula.piece(positive), arguments, over);
         });
     }
 
     @Override
     public String explain(double x, double y, double z, double wavelength) {
-        return formula.explain(x, y, z, arguments, wavelength);
+        return formula.explain(x, y, z, arguments, wavelength, chart);
     }
 
     /** The values of a formula's names in its own order. */

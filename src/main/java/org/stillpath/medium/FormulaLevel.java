@@ -1,5 +1,7 @@
 package org.stillpath.medium;
 
+import org.stillpath.formula.Chart;
+import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Formula;
 import org.stillpath.formula.Order;
 
@@ -9,9 +11,11 @@ final class FormulaLevel implements Level {
     private final double[] arguments;
     private final double wavelength;
     private final String text;
+    private final Chart chart;
     private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
 
-    FormulaLevel(Formula formula, double[] arguments, double wavelength, String text) {
+    FormulaLevel(Formula formula, double[] arguments, double wavelength, String text, Chart chart) {
+        this.chart = chart;
         this.formula = formula;
         this.arguments = arguments;
         this.wavelength = wavelength;
@@ -21,11 +25,18 @@ final class FormulaLevel implements Level {
     @Override
     public double value(double x, double y, double z, double[] gradient) {
         Scratch s = scratch.get().point(x, y, z);
-        formula.sample(s.x, s.y, s.z, 1, arguments, wavelength, Order.GRADIENT, s.samples);
+        formula.sample(s.x, s.y, s.z, 1, arguments, wavelength, chart, Order.GRADIENT, s.samples);
         gradient[0] = s.samples.gx[0];
         gradient[1] = s.samples.gy[0];
         gradient[2] = s.samples.gz[0];
         return s.samples.value[0];
+    }
+
+    @Override
+    public Level on(Chart other) {
+        return formula.coordinates().stream().anyMatch(Coordinate::charted)
+                ? new FormulaLevel(formula, arguments, wavelength, text, other)
+                : this;
     }
 
     @Override

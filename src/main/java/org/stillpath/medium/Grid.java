@@ -100,8 +100,8 @@ public final class Grid implements ScalarField {
         List<Level> list = new ArrayList<>();
         KnotBasis[] bases = {bx, by, bz};
         for (int i = 0; i < 3; i++) {
-            list.add(new EdgeLevel(AXES[i], bases[i].first(), false));
-            list.add(new EdgeLevel(AXES[i], bases[i].last(), true));
+            list.add(new EdgeLevel(new AlongLevel(AXES[i]), bases[i].first(), false));
+            list.add(new EdgeLevel(new AlongLevel(AXES[i]), bases[i].last(), true));
         }
         return List.copyOf(list);
     }

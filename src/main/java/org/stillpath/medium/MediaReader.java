@@ -9,6 +9,8 @@ import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
+import java.util.stream.Stream;
+import org.stillpath.formula.Chart;
 import org.stillpath.formula.Condition;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Formula;
@@ -38,6 +40,8 @@ import org.stillpath.unit.UnitException;
  */
 public final class MediaReader {
     private static final String EXAMPLE = "{index: 1.5168}";
+    /** What a region or a state of the air may depend on: not the light. */
+    private static final Set<Coordinate> PLACE_ALONE = placeAlone();
 
     private final Sources sources;
     private final Problems problems;
@@ -99,22 +103,27 @@ public final class MediaReader {
         if (s.isPlaceholder()) {
             return vacuum(name, Map.of());
         }
-        for (String later : new String[] {"air", "solid"}) {
-            if (s.has(later)) {
-                s.fault(later, "`" + later + ":` media are not in this version yet; give the medium by `index:`");
-                return vacuum(name, Map.of());
-            }
+        if (s.has("solid")) {
+            s.fault("solid", "`solid:` media are not in this version yet; give the medium by `index:`");
+            return vacuum(name, Map.of());
         }
-        if (s.has("index") && s.has("from")) {
-            s.fault("from", "`index` and `from` cannot stand together; one of them gives the medium");
+        List<String> givers = Stream.of("index", "air", "from").filter(s::has).toList();
+        if (givers.size() > 1) {
+            String last = givers.get(givers.size() - 1);
+            s.fault(
+                    last,
+                    "`" + givers.get(0) + "` and `" + last + "` cannot stand together; one of them gives the medium");
         }
         Parsed parsed;
         if (s.has("from")) {
             parsed = borrowed(name, s, overrides, chain);
+        } else if (s.has("air")) {
+            parsed = air(name, s, overrides);
         } else if (s.has("index")) {
             parsed = own(name, s, overrides);
         } else {
-            s.fault("a medium needs `index`, such as " + EXAMPLE + ", or `from`, such as {from: rods/parabolic}");
+            s.fault("a medium needs `index`, such as " + EXAMPLE
+                    + ", `air`, or `from`, such as {from: rods/parabolic}");
             s.find("with");
             s.find("relative-to");
             parsed = vacuum(name, Map.of());
@@ -141,7 +150,7 @@ public final class MediaReader {
     private Medium index(String name, Value index, Map<String, Quantity> with, boolean relative) {
         Declaration d = Declaration.of(name);
         if (index.isText()) {
-            if (isQuantity(index.text(), with)) {
+            if (isQuantity(index.text(), with.keySet())) {
                 double n = index.positive(Kind.NUMBER);
                 return new UniformMedium(d, Double.isNaN(n) ? 1 : n, relative);
             }
@@ -199,8 +208,8 @@ public final class MediaReader {
     }
 
     /** Whether a text is a plain quantity, so that its own messages are better than those of a formula. */
-    private static boolean isQuantity(String text, Map<String, Quantity> with) {
-        if (with.containsKey(text.strip())) {
+    static boolean isQuantity(String text, Set<String> names) {
+        if (names.contains(text.strip())) {
             return false;
         }
         try {
@@ -222,7 +231,7 @@ public final class MediaReader {
             return new UniformMedium(d, 1, false);
         }
         try {
-            Names names = names(Names.PLACE, with);
+            Names names = names(Names.SIGHT, with);
             Formula whole = cache.formula(text, names, Dimension.NONE);
             String rest = behindOne(text);
             Formula used = rest.isEmpty() ? whole : cache.formula(rest, names, Dimension.NONE);
@@ -257,6 +266,21 @@ public final class MediaReader {
             return t.substring(i + 1).strip();
         }
         return t.startsWith("-", i) ? t.substring(i) : "";
+    }
+
+    // --- air ---
+
+    private Parsed air(String name, Section s, Overrides overrides) {
+        Map<String, Quantity> with = with(s, overrides);
+        if (s.has("relative-to")) {
+            s.fault("relative-to", "`relative-to` belongs to an index; the index of air is absolute");
+        }
+        Names names = names(PLACE_ALONE, with);
+        boolean sound = with.values().stream().noneMatch(q -> Double.isNaN(q.value()));
+        AirReader reader = new AirReader(tables, cache, names, values(with), sound);
+        return reader.medium(Declaration.of(name), s.at("air").section())
+                .map(m -> new Parsed(m, with))
+                .orElseGet(() -> vacuum(name, with));
     }
 
     // --- a medium from a file ---
@@ -346,18 +370,25 @@ public final class MediaReader {
         return Optional.of(new Declaration.WavelengthRange(shortest, longest));
     }
 
-    private List<Level> conditions(Value value, Map<String, Quantity> with) {
-        Set<Coordinate> place = new LinkedHashSet<>(Names.PLACE);
-        // a region does not depend on the light
+    private static Set<Coordinate> placeAlone() {
+        Set<Coordinate> place = new LinkedHashSet<>(Names.SIGHT);
         place.remove(Coordinate.WAVELENGTH);
+        return Collections.unmodifiableSet(place);
+    }
+
+    private List<Level> conditions(Value value, Map<String, Quantity> with) {
         List<Level> list = new ArrayList<>();
         if (value.text().isEmpty()) {
             return list;
         }
         try {
-            for (Condition c : cache.conditions(value.text(), names(place, with))) {
+            for (Condition c : cache.conditions(value.text(), names(PLACE_ALONE, with))) {
                 list.add(new FormulaLevel(
-                        c.margin(), FormulaField.arguments(c.margin(), values(with)), Double.NaN, c.text()));
+                        c.margin(),
+                        FormulaField.arguments(c.margin(), values(with)),
+                        Double.NaN,
+                        c.text(),
+                        Chart.FLAT));
             }
         } catch (FormulaException e) {
             e.faults().forEach(f -> value.fault(f.offset(), f.message()));

@@ -3,6 +3,7 @@ package org.stillpath.medium;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
+import org.stillpath.formula.Chart;
 import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Vector;
 
@@ -10,18 +11,50 @@ import org.stillpath.geometry.Vector;
  * A named medium of a job: what its index is, in which frame, and how far it may be believed. Immutable. It becomes an
  * {@link IndexField} once the wavelength and the frame are known.
  */
-public sealed interface Medium permits UniformMedium, AirMedium, FieldMedium {
+public sealed interface Medium permits UniformMedium, AirMedium, AtmosphereMedium, FieldMedium {
     /** Origin, axis, validity, source and warnings. */
     Declaration declaration();
 
     /**
-     * The medium at one wavelength, in a frame.
+     * The medium at one wavelength, in a frame, without an earth: height and clearance are the z of the medium's frame,
+     * distance its x.
      *
      * @param wavelength vacuum wavelength in metres; NaN is allowed where {@link #needsWavelength} is false
      * @param frame where the medium's own frame lies in the job, from {@link #frame}
      * @throws IllegalArgumentException if the medium needs a wavelength and none is given
      */
-    IndexField field(double wavelength, Frame frame);
+    default IndexField field(double wavelength, Frame frame) {
+        return placed(wavelength, frame, Chart.FLAT);
+    }
+
+    /**
+     * The medium at one wavelength, in a frame, over an earth.
+     *
+     * @param wavelength vacuum wavelength in metres; NaN is allowed where {@link #needsWavelength} is false
+     * @param frame where the medium's own frame lies in the job, from {@link #frame}
+     * @param chart gives height, clearance and distance in the job's coordinates
+     * @throws IllegalArgumentException if the medium needs a wavelength and none is given
+     */
+    default IndexField field(double wavelength, Frame frame, Chart chart) {
+        return placed(wavelength, frame, FramedChart.of(chart, frame));
+    }
+
+    /**
+     * The medium at one wavelength, in a frame.
+     *
+     * @param chart gives height, clearance and distance in the medium's own frame
+     * @throws IllegalArgumentException if the medium needs a wavelength and none is given
+     */
+    IndexField placed(double wavelength, Frame frame, Chart chart);
+
+    /**
+     * The field of the group index, with which light pulses and the modulation of a distance meter travel; empty where
+     * the medium does not say how its index depends on the wavelength. Parameters as for {@link #field(double, Frame,
+     * Chart)}.
+     */
+    default Optional<IndexField> groupField(double wavelength, Frame frame, Chart chart) {
+        return Optional.empty();
+    }
 
     /** Whether the index depends on the wavelength, so that the job must name one. */
     boolean needsWavelength();

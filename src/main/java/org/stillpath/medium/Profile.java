@@ -35,6 +35,17 @@ public final class Profile implements ScalarField {
         if (along.isDistance() && spline.first() < 0) {
             throw new IllegalArgumentException("knots along a distance must not be negative: " + spline.first());
         }
+        return new Profile(along, spline, told(along.word(), along.isDistance(), spline, shown));
+    }
+
+    /**
+     * What is doubtful about a table.
+     *
+     * @param word the coordinate
+     * @param distance whether it ends at 0
+     * @param shown what has to be added to a value of the spline to show it
+     */
+    static List<String> told(String word, boolean distance, Spline spline, double shown) {
         List<String> told = new ArrayList<>();
         Spline.Overshoot over = spline.overshoot();
         if (over.cells() > 0) {
@@ -44,11 +55,11 @@ public final class Profile implements ScalarField {
                             + "`interpolate: monotone` would not",
                     spline.interpolation().word() + (spline.interpolation() == Interpolation.CLAMPED ? " spline" : ""),
                     over.amount(),
-                    along.word(),
+                    word,
                     Told.length(over.place()),
                     over.cells() > 1 ? " (and in " + (over.cells() - 1) + " other places)" : ""));
         }
-        if (along.isDistance() && spline.first() == 0) {
+        if (distance && spline.first() == 0) {
             double slope = spline.slope(0, 0);
             double span = spline.last() - spline.first();
             double range = range(spline);
@@ -57,25 +68,23 @@ public final class Profile implements ScalarField {
                         Locale.ROOT,
                         "the slope at %s = 0 is %.3g 1/mm, so that the profile has a tip on the axis; "
                                 + "`interpolate: clamped` makes it flat there",
-                        along.word(),
+                        word,
                         slope * 1e-3));
             }
         }
         for (int c : new int[] {Spline.BELOW, spline.knots().length - 1}) {
             double edge = c < 0 ? spline.first() : spline.last();
             double rate = spline.slope(spline.cell(edge), edge) / spline.value(edge);
-            if (spline.beyond() == Beyond.EXPONENTIAL
-                    && (c < 0 ? rate < 0 : rate > 0)
-                    && !(along.isDistance() && edge == 0)) {
+            if (spline.beyond() == Beyond.EXPONENTIAL && (c < 0 ? rate < 0 : rate > 0) && !(distance && edge == 0)) {
                 told.add(String.format(
                         Locale.ROOT,
                         "beyond %s = %s the exponential grows away from the value %.9g at the edge",
-                        along.word(),
+                        word,
                         Told.length(edge),
                         spline.value(edge) + shown));
             }
         }
-        return new Profile(along, spline, List.copyOf(told));
+        return List.copyOf(told);
     }
 
     /** The coordinate that the table runs along. */
@@ -110,9 +119,9 @@ public final class Profile implements ScalarField {
         }
         List<Level> list = new ArrayList<>();
         if (!(along.isDistance() && spline.first() == 0)) {
-            list.add(new EdgeLevel(along, spline.first(), false));
+            list.add(new EdgeLevel(new AlongLevel(along), spline.first(), false));
         }
-        list.add(new EdgeLevel(along, spline.last(), true));
+        list.add(new EdgeLevel(new AlongLevel(along), spline.last(), true));
         return List.copyOf(list);
     }
 

@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.List;
+import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 
@@ -19,6 +20,19 @@ public interface ScalarField {
      * @param out receives values, gradients and Hessians in SI; {@code value} is NaN where the quantity is undefined
      */
     void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out);
+
+    /**
+     * The same quantity where {@code chart} gives height, clearance and distance in the medium's frame; this one itself
+     * where none of them matters. Until told otherwise a quantity stands on {@link Chart#FLAT}.
+     */
+    default ScalarField on(Chart chart) {
+        return this;
+    }
+
+    /** Whether the quantity depends on the height alone, or on nothing. */
+    default boolean ofHeightAlone() {
+        return isConstant();
+    }
 
     /** Whether the quantity is the same everywhere. */
     default boolean isConstant() {

@@ -1,9 +1,11 @@
 package org.stillpath.medium;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Locale;
 import java.util.Optional;
+import org.stillpath.formula.Coordinate;
 import org.stillpath.job.Section;
 import org.stillpath.job.Sources;
 import org.stillpath.job.Table;
@@ -22,8 +24,6 @@ import org.stillpath.unit.Units;
  * a file, or a {@code grid:}, nodes in a file.
  */
 final class TableReader {
-    private static final List<String> SIGHT_ONLY = List.of("height", "clearance", "distance");
-
     private final Sources sources;
     private final Problems problems;
     private final GridReader grids;
@@ -75,7 +75,7 @@ final class TableReader {
      * @return empty after a fault
      */
     Optional<Read> profile(Section section, Kind kind, double less, Interpolation usual) {
-        Optional<Along> along = along(section.need("along", "r"));
+        Optional<String> along = along(section.need("along", "r"));
         Interpolation how = section.find("interpolate")
                 .flatMap(v -> choice(v, Interpolation.values(), Interpolation::word))
                 .orElse(usual);
@@ -88,10 +88,11 @@ final class TableReader {
             return Optional.empty();
         }
         Knots k = read.get();
-        if (along.get().isDistance() && k.at()[0] < 0) {
+        Optional<Along> plain = plain(along.get());
+        if (plain.isPresent() && plain.get().isDistance() && k.at()[0] < 0) {
             section.fault(
                     "at",
-                    "`" + along.get().word() + "` is a distance and never negative, but the table starts at "
+                    "`" + along.get() + "` is a distance and never negative, but the table starts at "
                             + Told.length(k.at()[0]));
             return Optional.empty();
         }
@@ -106,16 +107,29 @@ final class TableReader {
                             + "`hold` or `linear` can");
             return Optional.empty();
         }
-        return Optional.of(new Read(Profile.of(along.get(), Spline.of(k.at(), value, how, beyond), less), k.notes()));
+        Spline spline = Spline.of(k.at(), value, how, beyond);
+        ScalarField field = plain.isPresent()
+                ? Profile.of(plain.get(), spline, less)
+                : ChartProfile.of(Coordinate.of(along.get()).orElseThrow(), spline, less);
+        return Optional.of(new Read(field, k.notes()));
     }
 
-    private static Optional<Along> along(Value value) {
-        if (value.isText() && SIGHT_ONLY.contains(value.text())) {
-            value.fault("`" + value.text() + "` is known along a sightline only, which this version does not have yet; "
-                    + "one of x, y, z, r, rho is needed");
-            return Optional.empty();
+    /** The word of a coordinate: one of a place, or one that a chart gives. */
+    private static Optional<String> along(Value value) {
+        List<String> words = new ArrayList<>();
+        for (Along a : Along.values()) {
+            words.add(a.word());
         }
-        return choice(value, Along.values(), Along::word);
+        for (Coordinate c : Coordinate.values()) {
+            if (c.charted()) {
+                words.add(c.word());
+            }
+        }
+        return Optional.of(value.word(words.toArray(String[]::new))).filter(w -> !w.isEmpty());
+    }
+
+    private static Optional<Along> plain(String word) {
+        return Arrays.stream(Along.values()).filter(a -> a.word().equals(word)).findFirst();
     }
 
     static <T> Optional<T> choice(Value value, T[] all, java.util.function.Function<T, String> word) {

@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.List;
+import org.stillpath.formula.Chart;
 import org.stillpath.geometry.Frame;
 
 /**
@@ -23,12 +24,13 @@ public record UniformMedium(Declaration declaration, double index, boolean relat
     }
 
     @Override
-    public IndexField field(double wavelength, Frame frame) {
-        double nu = relativeToAir ? AirMedium.laboratory().refractivity(wavelength) : 0;
+    public IndexField placed(double wavelength, Frame frame, Chart chart) {
+        double nu = relativeToAir ? AirState.laboratory().refractivity(wavelength) : 0;
         // n(1 + ν) − 1 without a rounding of n ν
         double refractivity = (index - 1) + index * nu;
-        List<Level> limits =
-                declaration.valid().stream().map(l -> FramedLevel.of(l, frame)).toList();
+        List<Level> limits = declaration.valid().stream()
+                .map(l -> FramedLevel.of(l.on(chart), frame))
+                .toList();
         return new UniformIndex(refractivity, limits);
     }
 

@@ -1,0 +1,112 @@
+package org.stillpath.medium;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Optional;
+import org.stillpath.formula.Chart;
+import org.stillpath.formula.Order;
+import org.stillpath.geometry.Frame;
+
+/**
+ * Air whose state varies from place to place. Where temperature, pressure and humidity all depend on the height alone,
+ * the field is worked out in a column ({@link AlongHeight}), else in space.
+ */
+public final class AtmosphereMedium implements Medium {
+    private final Declaration declaration;
+    private final AirLaw law;
+    private final ScalarField temperature;
+    private final Pressure pressure;
+    private final Humidity humidity;
+
+    AtmosphereMedium(
+            Declaration declaration, AirLaw law, ScalarField temperature, Pressure pressure, Humidity humidity) {
+        this.declaration = declaration;
+        this.law = law;
+        this.temperature = temperature;
+        this.pressure = pressure;
+        this.humidity = humidity;
+    }
+
+    @Override
+    public Declaration declaration() {
+        return declaration;
+    }
+
+    /** The law of the index. */
+    public AirLaw law() {
+        return law;
+    }
+
+    @Override
+    public IndexField placed(double wavelength, Frame frame, Chart chart) {
+        return placed(dispersion(wavelength, false), frame, chart);
+    }
+
+    @Override
+    public Optional<IndexField> groupField(double wavelength, Frame frame, Chart chart) {
+        return Optional.of(placed(dispersion(wavelength, true), frame, FramedChart.of(chart, frame)));
+    }
+
+    private AirLaw.Dispersion dispersion(double wavelength, boolean group) {
+        if (law.dispersive() && !(wavelength > 0)) {
+            throw new IllegalArgumentException("medium " + name() + " needs a wavelength above 0 m: " + wavelength);
+        }
+        return group ? law.group(wavelength) : law.phase(wavelength);
+    }
+
+    private IndexField placed(AirLaw.Dispersion dispersion, Frame frame, Chart chart) {
+        AirField air = new AirField(law, dispersion, temperature, pressure, humidity);
+        ScalarField scalar;
+        if (air.ofHeightAlone()) {
+            scalar = AlongHeight.of(air, chart);
+        } else if (pressure instanceof Pressure.Given) {
+            scalar = air.on(chart);
+        } else {
+            ScalarField column = AlongHeight.of(new PressureColumn(temperature, pressure), chart);
+            scalar = new AirField(
+                    law,
+                    dispersion,
+                    temperature.on(chart),
+                    new Pressure.Given(column),
+                    humidity.with(humidity.quantity().on(chart)));
+        }
+        PlacedIndex placed = new PlacedIndex(scalar, true, 0, Double.NaN, frame, declaration.valid(chart));
+        if (air.isConstant()) {
+            Scratch s = new Scratch().point(0, 0, 0);
+            scalar.sample(s.x, s.y, s.z, 1, Double.NaN, Order.VALUE, s.samples);
+            double n = s.samples.value[0];
+            if (!Double.isNaN(n)) {
+                return new UniformIndex(n, placed.limits());
+            }
+        }
+        return placed;
+    }
+
+    @Override
+    public boolean needsWavelength() {
+        return law.dispersive();
+    }
+
+    @Override
+    public List<String> warnings() {
+        List<String> list = new ArrayList<>(declaration.warnings());
+        list.addAll(temperature.warnings());
+        if (pressure instanceof Pressure.Given g) {
+            list.addAll(g.quantity().warnings());
+        }
+        list.addAll(humidity.quantity().warnings());
+        return List.copyOf(list);
+    }
+
+    @Override
+    public List<String> warningsAt(double wavelength) {
+        List<String> list = new ArrayList<>(Medium.super.warningsAt(wavelength));
+        list.addAll(law.warnings(wavelength));
+        return List.copyOf(list);
+    }
+
+    @Override
+    public Medium with(Declaration other) {
+        return new AtmosphereMedium(other, law, temperature, pressure, humidity);
+    }
+}

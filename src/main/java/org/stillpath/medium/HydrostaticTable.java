@@ -1,0 +1,278 @@
+package org.stillpath.medium;
+
+import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.List;
+
+/**
+ * The solution of the hydrostatic equation d ln p/dh = f(h, p) as a table of polynomials, relative error about 1e-14.
+ *
+ * <p>Each piece of height holds ln(p/p₀) as a Chebyshev polynomial of degree up to 17: f is taken at 17 Chebyshev points,
+ * integrated term by term, and taken again with the new pressure until nothing changes (Picard; Clenshaw and Curtis,
+ * Numer. Math. 2 (1960) 197). A piece is halved until the last coefficients no longer count. Against a Runge-Kutta method
+ * with an interpolant this costs a few more evaluations once, and gives a representation that is as accurate between its
+ * points as at them.
+ *
+ * <p>Pieces are short near the datum and near the height where the pressure was given, where thin layers lie, and
+ * longer with the distance from both, a fifth of it, at most 2 km. A bump of the temperature much thinner than a twentieth of
+ * that distance may be stepped over (a step of it is not): one of 4 K and 5 m weighs 1e-5 in the pressure above it.
+ */
+final class HydrostaticTable {
+    /** Lowest height that is tried, metres. */
+    static final double LOWEST = -12e3;
+    /** Highest height that is tried, metres. */
+    static final double HIGHEST = 120e3;
+
+    private static final int DEGREE = 16;
+    private static final double SHORTEST_USUAL = 0.2;
+    private static final double LONGEST = 2e3;
+    private static final double TOLERANCE = 2e-16;
+    private static final int MOST_PIECES = 20_000;
+    private static final double COLDEST = 1;
+    private static final double HOTTEST = 1e4;
+
+    /** What the equation is. */
+    interface Rate {
+        /** Whether the rate depends on the pressure, so that it must be asked again once that is better known. */
+        boolean coupled();
+
+        /**
+         * Fills d ln p/dh at heights; NaN where nothing is known.
+         *
+         * @param heights metres
+         * @param pressures pascal
+         * @param rates receives 1/m
+         */
+        void at(double[] heights, double[] pressures, double[] rates);
+    }
+
+    /** Ends of the pieces, ascending, one more than pieces. */
+    private final double[] ends;
+    /** Pressure at the end of a piece that lies nearer to where it was given. */
+    private final double[] bases;
+    /** Chebyshev coefficients of ln(p/base), a piece behind the other, up to where each piece's begin. */
+    private final double[] coefficients;
+
+    private final int[] starts;
+
+    private HydrostaticTable(double[] ends, double[] bases, double[] coefficients, int[] starts) {
+        this.ends = ends;
+        this.bases = bases;
+        this.coefficients = coefficients;
+        this.starts = starts;
+    }
+
+    /** A piece while the table is built. */
+    private record Piece(double low, double high, double base, double[] coefficients) {}
+
+    /**
+     * Solves from a height up and down, as far as the rate is known.
+     *
+     * @param rate the equation
+     * @param pressure at {@code height}, pascal
+     * @param height metres
+     * @param breaks heights that pieces must not straddle, in any order
+     */
+    static HydrostaticTable of(Rate rate, double pressure, double height, double[] breaks) {
+        Builder builder = new Builder(rate, height, breaks);
+        List<Piece> down = builder.march(pressure, -1);
+        List<Piece> up = builder.march(pressure, 1);
+        List<Piece> all = new ArrayList<>();
+        for (int i = down.size() - 1; i >= 0; i--) {
+            all.add(down.get(i));
+        }
+        all.addAll(up);
+        double[] ends = new double[all.size() + 1];
+        double[] bases = new double[all.size()];
+        int[] starts = new int[all.size() + 1];
+        ends[0] = all.isEmpty() ? height : all.get(0).low();
+        for (int i = 0; i < all.size(); i++) {
+            ends[i + 1] = all.get(i).high();
+            bases[i] = all.get(i).base();
+            starts[i + 1] = starts[i] + all.get(i).coefficients().length;
+        }
+        double[] coefficients = new double[starts[all.size()]];
+        for (int i = 0; i < all.size(); i++) {
+            double[] c = all.get(i).coefficients();
+            System.arraycopy(c, 0, coefficients, starts[i], c.length);
+        }
+        return new HydrostaticTable(ends, bases, coefficients, starts);
+    }
+
+    /** Lowest height that it reaches, metres. */
+    double low() {
+        return ends[0];
+    }
+
+    /** Highest height that it reaches, metres. */
+    double high() {
+        return ends[ends.length - 1];
+    }
+
+    /** Number of pieces. */
+    int size() {
+        return bases.length;
+    }
+
+    /** The pressure in pascal; NaN outside the range. */
+    double pressure(double h) {
+        if (!(h >= ends[0] && h <= ends[ends.length - 1]) || bases.length == 0) {
+            return Double.NaN;
+        }
+        int i = Arrays.binarySearch(ends, h);
+        i = Math.min(i >= 0 ? i : -i - 2, bases.length - 1);
+        double s = ((h - ends[i]) - (ends[i + 1] - h)) / (ends[i + 1] - ends[i]);
+        double b1 = 0;
+        double b2 = 0;
+        for (int k = starts[i + 1] - 1; k > starts[i]; k--) {
+            double b = 2 * s * b1 - b2 + coefficients[k];
+            b2 = b1;
+            b1 = b;
+        }
+        return bases[i] * Math.exp(s * b1 - b2 + coefficients[starts[i]]);
+    }
+
+    /** Mutable, for one table. */
+    private static final class Builder {
+        private final Rate rate;
+        private final double origin;
+        private final double[] breaks;
+        /** cos(π j k/DEGREE). */
+        private final double[][] cosines = new double[DEGREE + 1][DEGREE + 1];
+
+        private final double[] heights = new double[DEGREE + 1];
+        private final double[] pressures = new double[DEGREE + 1];
+        private final double[] rates = new double[DEGREE + 1];
+        private final double[] terms = new double[DEGREE + 1];
+        private final double[] integral = new double[DEGREE + 2];
+        private boolean unsound;
+
+        Builder(Rate rate, double origin, double[] breaks) {
+            this.rate = rate;
+            this.origin = origin;
+            this.breaks = breaks.clone();
+            Arrays.sort(this.breaks);
+            for (int j = 0; j <= DEGREE; j++) {
+                for (int k = 0; k <= DEGREE; k++) {
+                    cosines[j][k] = Math.cos(Math.PI * ((j * k) % (2 * DEGREE)) / DEGREE);
+                }
+            }
+        }
+
+        /** Pieces from the origin on, up (1) or down (−1). */
+        List<Piece> march(double pressure, int direction) {
+            List<Piece> list = new ArrayList<>();
+            double at = origin;
+            double p = pressure;
+            double last = direction > 0 ? HIGHEST : LOWEST;
+            double width = SHORTEST_USUAL;
+            while (direction * (last - at) > 0 && list.size() < MOST_PIECES) {
+                double size = Math.min(Math.abs(at), Math.abs(at - origin));
+                double usual = Math.max(SHORTEST_USUAL, Math.min(LONGEST, 0.2 * size));
+                double least = 1e-9 * (1 + Math.abs(at));
+                width = Math.min(2 * width, usual);
+                double end = next(at, direction, at + direction * width, last);
+                boolean good = solve(at, end, p);
+                while (!good && (unsound || list.size() < MOST_PIECES / 2) && Math.abs(end - at) > least) {
+                    end = at + (end - at) / 2;
+                    good = solve(at, end, p);
+                }
+                if (unsound) {
+                    return list;
+                }
+                width = Math.abs(end - at);
+                list.add(new Piece(Math.min(at, end), Math.max(at, end), p, trimmed()));
+                p *= Math.exp(sum(direction > 0 ? 1 : -1));
+                at = end;
+            }
+            return list;
+        }
+
+        private double next(double at, int direction, double end, double last) {
+            double nearest = direction > 0 ? Math.min(end, last) : Math.max(end, last);
+            for (double b : breaks) {
+                if (direction * (b - at) > 0 && direction * (nearest - b) > 0) {
+                    nearest = b;
+                }
+            }
+            return nearest;
+        }
+
+        /** Fills {@link #integral} with ln(p/known) between two heights; whether it is accurate enough. */
+        private boolean solve(double known, double other, double p) {
+            double low = Math.min(known, other);
+            double high = Math.max(known, other);
+            double half = (high - low) / 2;
+            double middle = (high + low) / 2;
+            for (int j = 0; j <= DEGREE; j++) {
+                heights[j] = j == 0 ? high : j == DEGREE ? low : middle + half * cosines[1][j];
+                pressures[j] = p;
+            }
+            double change = Double.POSITIVE_INFINITY;
+            for (int turn = 0; turn < (rate.coupled() ? 30 : 1) && change > 4e-16 * p; turn++) {
+                rate.at(heights, pressures, rates);
+                unsound = false;
+                for (double r : rates) {
+                    unsound |= !Double.isFinite(r);
+                }
+                if (unsound) {
+                    return false;
+                }
+                integrate(half, known == low);
+                change = 0;
+                for (int j = 0; j <= DEGREE; j++) {
+                    double y = 0;
+                    for (int k = 0; k <= DEGREE; k++) {
+                        y += integral[k] * cosines[k][j];
+                    }
+                    y += integral[DEGREE + 1] * cosines[1][j] * cosines[DEGREE][j];
+                    double fresh = p * Math.exp(y);
+                    change = Math.max(change, Math.abs(fresh - pressures[j]));
+                    pressures[j] = fresh;
+                }
+            }
+            double tail = Math.max(
+                    Math.abs(terms[DEGREE]), Math.max(Math.abs(terms[DEGREE - 1]), Math.abs(terms[DEGREE - 2])));
+            return half * tail / DEGREE <= TOLERANCE;
+        }
+
+        private void integrate(double half, boolean fromLow) {
+            for (int k = 0; k <= DEGREE; k++) {
+                double sum = 0.5 * (rates[0] + rates[DEGREE] * cosines[k][DEGREE]);
+                for (int j = 1; j < DEGREE; j++) {
+                    sum += rates[j] * cosines[k][j];
+                }
+                terms[k] = sum * (k == 0 || k == DEGREE ? 1.0 : 2.0) / DEGREE;
+            }
+            Arrays.fill(integral, 0);
+            integral[1] = half * (terms[0] - terms[2] / 2);
+            for (int k = 2; k <= DEGREE + 1; k++) {
+                double above = k + 1 <= DEGREE ? terms[k + 1] : 0;
+                integral[k] = half * (terms[k - 1] - above) / (2 * k);
+            }
+            integral[0] = -sum(fromLow ? -1 : 1);
+        }
+
+        /** The value of {@link #integral} at an end, s = ±1. */
+        private double sum(int s) {
+            double sum = 0;
+            for (int k = DEGREE + 1; k >= 0; k--) {
+                sum += s < 0 && k % 2 == 1 ? -integral[k] : integral[k];
+            }
+            return sum;
+        }
+
+        private double[] trimmed() {
+            int n = DEGREE + 2;
+            while (n > 2 && Math.abs(integral[n - 1]) < 1e-18) {
+                n--;
+            }
+            return Arrays.copyOf(integral, n);
+        }
+    }
+
+    /** Whether a temperature is one that air may have, so that the equation goes on. */
+    static boolean possible(double temperature) {
+        return temperature >= COLDEST && temperature <= HOTTEST;
+    }
+}
