@@ -97,25 +97,34 @@ public final class HtmlReport {
     }
 
     private static List<Map<String, Object>> tables(Result result) {
-        if (result.rays().isEmpty()) {
-            return List.of();
+        List<Map<String, Object>> tables = new ArrayList<>();
+        if (!result.rays().isEmpty()) {
+            tables.add(table("Rays", "rays", RowTable.rays(result.rays(), 200)));
         }
-        RayTable table = RayTable.of(result.rays(), 200);
+        if (!result.paths().isEmpty()) {
+            tables.add(table("Paths", "paths", RowTable.paths(result.paths(), 200)));
+        }
+        return tables;
+    }
+
+    private static Map<String, Object> table(String heading, String what, RowTable table) {
         List<Map<String, Object>> rows = table.rows().stream()
                 .map(cells -> Map.<String, Object>of(
                         "cells", cells.stream().map(HtmlReport::typeset).toList()))
                 .toList();
-        return List.of(Map.of(
+        return Map.of(
                 "heading",
-                "Rays",
+                heading,
                 "columns",
                 table.headers(),
                 "rows",
                 rows,
                 "more",
-                table.left() == 0 ? "" : "And " + table.left() + " more rays: see rays.csv or result.json.",
+                table.left() == 0
+                        ? ""
+                        : "And " + table.left() + " more " + what + ": see " + what + ".csv or result.json.",
                 "notes",
-                table.notes().stream().map(HtmlReport::tidy).toList()));
+                table.notes().stream().map(HtmlReport::tidy).toList());
     }
 
     private static List<Map<String, String>> inputs(Node.Mapping tree) {

@@ -2,7 +2,6 @@ package org.stillpath.report;
 
 import java.util.ArrayList;
 import java.util.List;
-import org.stillpath.task.RayRow;
 import org.stillpath.task.Result;
 
 /**
@@ -11,7 +10,7 @@ import org.stillpath.task.Result;
  */
 public final class TextReport {
     private static final int WIDTH = 80;
-    private static final int MOST_RAYS = 20;
+    private static final int MOST_ROWS = 20;
 
     private TextReport() {}
 
@@ -26,7 +25,11 @@ public final class TextReport {
         }
         if (!result.rays().isEmpty()) {
             text.append('\n');
-            rays(result.rays(), text);
+            table(RowTable.rays(result.rays(), MOST_ROWS), "rays", text);
+        }
+        if (!result.paths().isEmpty()) {
+            text.append('\n');
+            table(RowTable.paths(result.paths(), MOST_ROWS), "paths", text);
         }
         if (!result.warnings().isEmpty() || !result.cautions().isEmpty()) {
             text.append('\n');
@@ -56,8 +59,7 @@ public final class TextReport {
         }
     }
 
-    private static void rays(List<RayRow> rays, StringBuilder text) {
-        RayTable table = RayTable.of(rays, MOST_RAYS);
+    private static void table(RowTable table, String what, StringBuilder text) {
         List<List<String>> lines = new ArrayList<>();
         lines.add(table.headers());
         lines.addAll(table.rows());
@@ -78,7 +80,11 @@ public final class TextReport {
             text.append(PlainText.wrapped(note, "  ", "    ", WIDTH));
         }
         if (table.left() > 0) {
-            text.append("  and ").append(table.left()).append(" more rays: see --json or --out\n");
+            text.append("  and ")
+                    .append(table.left())
+                    .append(" more ")
+                    .append(what)
+                    .append(": see --json or --out\n");
         }
     }
 

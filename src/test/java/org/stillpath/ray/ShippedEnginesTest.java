@@ -35,6 +35,11 @@ class ShippedEnginesTest {
         for (int i = 0; i < RAYS; i++) {
             Vector from = AnalyticCase.point(r, 0.5 * extent);
             Vector d = AnalyticCase.unit(r);
+            if (name.startsWith("air/")) {
+                // air is known above the ground only
+                from = new Vector(from.x(), from.y(), Math.abs(from.z()));
+                d = new Vector(d.x(), d.y(), Math.abs(d.z()));
+            }
             Ending ending = new Ending.AtLength(extent);
             for (double accuracy : new double[] {1e-6, 1e-9, 1e-12}) {
                 Traced end = Engines.trace(

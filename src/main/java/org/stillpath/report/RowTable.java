@@ -2,20 +2,64 @@ package org.stillpath.report;
 
 import java.util.ArrayList;
 import java.util.List;
+import org.stillpath.task.PathRow;
 import org.stillpath.task.RayRow;
 
 /**
- * Traced rays as a table for people: number, status, where it ended, optical length; units in the headers.
+ * Traced rays, or paths, as a table for people; units in the headers.
  *
  * @param headers column headers
  * @param rows cells by rows, numbers padded on the left so that their points stand in one line
  * @param left how many rays were left out at the end
  * @param notes why rays ended early, one line a ray
  */
-record RayTable(List<String> headers, List<List<String>> rows, int left, List<String> notes) {
+record RowTable(List<String> headers, List<List<String>> rows, int left, List<String> notes) {
 
-    /** The first {@code most} rays. */
-    static RayTable of(List<RayRow> all, int most) {
+    /** The first {@code most} paths: number, kind, optical length, excess over the first, direction at the start. */
+    static RowTable paths(List<PathRow> all, int most) {
+        List<PathRow> paths = all.subList(0, Math.min(all.size(), most));
+        int count = paths.size();
+        double[] opticals = new double[count];
+        double[] excesses = new double[count];
+        double[] errors = new double[count];
+        double[] directions = new double[3 * count];
+        double[] angles = new double[count];
+        for (int i = 0; i < count; i++) {
+            PathRow path = paths.get(i);
+            opticals[i] = path.opticalLength();
+            excesses[i] = path.excess();
+            errors[i] = path.errors().getOrDefault("optical-length", 0.0);
+            directions[3 * i] = path.launch().x();
+            directions[3 * i + 1] = path.launch().y();
+            directions[3 * i + 2] = path.launch().z();
+            angles[i] = 1e-6;
+        }
+        Column.Cells optical = Column.of(opticals, errors, "m");
+        Column.Cells excess = Column.of(excesses, errors, "m");
+        Column.Cells direction = Column.of(directions, angles, "1");
+        List<String> lengths = Column.aligned(optical.texts());
+        List<String> longer = Column.aligned(excess.texts());
+        List<List<String>> rows = new ArrayList<>();
+        for (int i = 0; i < count; i++) {
+            PathRow path = paths.get(i);
+            String launch = String.join(", ", direction.texts().subList(3 * i, 3 * i + 3));
+            rows.add(List.of(
+                    String.valueOf(i),
+                    path.kind(),
+                    String.valueOf(path.morseIndex()),
+                    lengths.get(i),
+                    longer.get(i),
+                    "(" + launch + ")"));
+        }
+        return new RowTable(
+                List.of("path", "kind", "index", "optical / " + optical.unit(), "excess / " + excess.unit(), "launch"),
+                rows,
+                all.size() - count,
+                List.of());
+    }
+
+    /** The first {@code most} rays: number, status, where it ended, optical length. */
+    static RowTable rays(List<RayRow> all, int most) {
         List<RayRow> rays = all.subList(0, Math.min(all.size(), most));
         int count = rays.size();
         double[] positions = new double[3 * count];
@@ -58,7 +102,7 @@ record RayTable(List<String> headers, List<List<String>> rows, int left, List<St
             }
         }
         String unit = " / " + position.unit();
-        return new RayTable(
+        return new RowTable(
                 List.of("ray", "status", "x" + unit, "y" + unit, "z" + unit, "optical length / " + optical.unit()),
                 rows,
                 all.size() - count,
