@@ -545,10 +545,11 @@ public final class NystromPropagator implements Propagator {
         for (int round = 0; round < LANDING_ROUNDS; round++) {
             double n = speed(state);
             double value = target.value(state) + bias;
-            if (!stage(field, state, k[0])) {
+            if (target.needsForce() && !stage(field, state, k[0])) {
                 return -1;
             }
-            double dt = -value / target.rate(state, n, k[0][0], k[0][1], k[0][2]);
+            double dt = -value
+                    / (target.needsForce() ? target.rate(state, n, k[0][0], k[0][1], k[0][2]) : target.rate(state, n));
             boolean crossed = value > 0 != startValue > 0;
             if (Math.abs(dt) * n <= 1e-9 * scale) {
                 // on the target itself: its bias only kept the start from being met
@@ -563,7 +564,7 @@ public final class NystromPropagator implements Propagator {
                 boolean touches = Math.abs(value) <= 1e-13 * scale * target.steepness(state, n);
                 return touches && target.accepts(state) ? Math.max(0, at) : -1;
             }
-            if (!moveOn(state, field, dt, h)) {
+            if (!(target.needsForce() ? moveOn(state, field, dt, h) : move(state, field, dt, h))) {
                 return -1;
             }
             at += dt;

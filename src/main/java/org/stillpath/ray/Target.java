@@ -22,6 +22,11 @@ public abstract sealed class Target {
      */
     public abstract double rate(double[] y, double index);
 
+    /** Whether {@link #rate} is only right with the force. */
+    public boolean needsForce() {
+        return false;
+    }
+
     /**
      * The same where the force is known too, on which the rate of a target that looks at the momentum depends.
      *
@@ -195,6 +200,11 @@ public abstract sealed class Target {
         @Override
         public double value(double[] y) {
             return (y[0] - to.x()) * y[3] + (y[1] - to.y()) * y[4] + (y[2] - to.z()) * y[5];
+        }
+
+        @Override
+        public boolean needsForce() {
+            return true;
         }
 
         /** Without the force's part, which vanishes near the point. */

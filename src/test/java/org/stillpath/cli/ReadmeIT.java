@@ -59,7 +59,7 @@ class ReadmeIT {
 
     @Test
     void theFurtherWaysInWork() throws Exception {
-        for (String task : List.of("lens", "trace")) {
+        for (String task : List.of("lens", "trace", "between")) {
             Packaged.Ended starter = Packaged.run(folder, "new", task);
             Files.writeString(folder.resolve(task + ".yaml"), starter.out());
             assertThat(Packaged.run(folder, "check", task + ".yaml").status()).isZero();
