@@ -6,25 +6,19 @@ import static org.assertj.core.api.Assertions.within;
 import java.util.List;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
-import org.stillpath.formula.Order;
-import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Quadric;
 import org.stillpath.geometry.Surface;
 import org.stillpath.geometry.Vector;
 import org.stillpath.medium.IndexField;
-import org.stillpath.medium.UniformMedium;
 import org.stillpath.ray.Action;
 import org.stillpath.ray.Element;
+import org.stillpath.ray.Fields;
 import org.stillpath.ray.Train;
 
 /** Published and closed-form two-point problems; recomputed from the formulas named, two ways where noted. */
 class PathSearchTest {
     private static final Vector FREE = Vector.ZERO;
-
-    private static IndexField uniform(double n) {
-        return UniformMedium.of("uniform", n).field(Double.NaN, Frame.JOB);
-    }
 
     private static List<StationaryPath> search(Train train, Vector from, Vector to, double halfAngle, Vector plane) {
         return PathSearch.run(new PathSearch.Query(train, from, to, Vector.ZERO, halfAngle, plane, 1e-11))
@@ -33,26 +27,7 @@ class PathSearchTest {
 
     /** n² = c − 2 a y. */
     private static IndexField falling(double c, double a) {
-        return field((x, y, z, out, i) -> {
-            out.value[i] = c - 1 - 2 * a * y;
-            out.gy[i] = -a;
-        });
-    }
-
-    private interface Point {
-        void at(double x, double y, double z, Samples out, int i);
-    }
-
-    private static IndexField field(Point point) {
-        return (x, y, z, count, order, out) -> {
-            for (int i = 0; i < count; i++) {
-                for (double[] d :
-                        new double[][] {out.gx, out.gy, out.gz, out.hxx, out.hxy, out.hxz, out.hyy, out.hyz, out.hzz}) {
-                    d[i] = 0;
-                }
-                point.at(x[i], y[i], z[i], out, i);
-            }
-        };
+        return Fields.slope(Math.sqrt(c), new Vector(0, -a, 0));
     }
 
     /** n² = 2.25 − 0.2 y from (0, 0) to (1, 15): parabolas, L = (c − aY)t − a²t³/6 (two ways); beyond the envelope none. */
@@ -82,7 +57,7 @@ class PathSearchTest {
     void solvesAlhazensProblem() {
         Surface circle =
                 new Surface(Frame.at(new Vector(0, 0, -1)), new Quadric(1, 1, 1), true, Double.POSITIVE_INFINITY);
-        IndexField air = uniform(1);
+        IndexField air = Fields.uniform(1);
         Train train = new Train(air, List.of(new Element(circle, new Action.Reflect(), air)));
         List<StationaryPath> paths =
                 search(train, new Vector(0, 0.6, 0.2), new Vector(0, -0.5, 0.3), Math.PI, new Vector(1, 0, 0));
@@ -105,7 +80,7 @@ class PathSearchTest {
         double c = 13 / 144.0;
         Quadric ellipsoid = new Quadric(c, c, (1 - 25 / 169.0) * c);
         Surface mirror = new Surface(Frame.at(new Vector(0, 0, -13)), ellipsoid, true, Double.POSITIVE_INFINITY);
-        IndexField air = uniform(1);
+        IndexField air = Fields.uniform(1);
         Train train = new Train(air, List.of(new Element(mirror, new Action.Reflect(), air)));
         List<StationaryPath> paths =
                 search(train, new Vector(0, 0, -5), new Vector(0, 0, 5), Math.PI, new Vector(1, 0, 0));
@@ -117,14 +92,7 @@ class PathSearchTest {
     /** On the axis of a parabolic rod the index is 0, 2 and 4 after 0.2, 0.75 and 1.3 pitches (double points each half pitch). */
     @Test
     void countsAlongTheAxisOfARod() {
-        IndexField rod = field((x, y, z, out, i) -> {
-            double w = 1.6 * 1.6 * 0.09;
-            out.value[i] = 1.56 - w * (x * x + y * y);
-            out.gx[i] = -w * x;
-            out.gy[i] = -w * y;
-            out.hxx[i] = -w;
-            out.hyy[i] = -w;
-        });
+        IndexField rod = Fields.rod(1.6, 0.3);
         double pitch = 2 * Math.PI / 0.3;
         double[] pitches = {0.2, 0.75, 1.3};
         int[] index = {0, 2, 4};
@@ -152,26 +120,7 @@ class PathSearchTest {
                     0.5 + r.nextDouble()
                 };
             }
-            IndexField lumpy = field((x, y, z, out, i) -> {
-                out.value[i] = 1.25;
-                for (double[] b : bumps) {
-                    double u = x - b[0];
-                    double v = y - b[1];
-                    double w = z - b[2];
-                    double q = 1 / (b[4] * b[4]);
-                    double f = b[3] * Math.exp(-0.5 * q * (u * u + v * v + w * w));
-                    out.value[i] += 2 * f;
-                    out.gx[i] -= f * q * u;
-                    out.gy[i] -= f * q * v;
-                    out.gz[i] -= f * q * w;
-                    out.hxx[i] += f * q * (q * u * u - 1);
-                    out.hxy[i] += f * q * q * u * v;
-                    out.hxz[i] += f * q * q * u * w;
-                    out.hyy[i] += f * q * (q * v * v - 1);
-                    out.hyz[i] += f * q * q * v * w;
-                    out.hzz[i] += f * q * (q * w * w - 1);
-                }
-            });
+            IndexField lumpy = Fields.bumps(1.5, bumps);
             Vector from = new Vector(0.3 * r.nextDouble(), 0.3 * r.nextDouble(), 0);
             Vector to = new Vector(0.3 * r.nextDouble(), 0.3 * r.nextDouble(), 12);
             Train train = Train.through(lumpy);
@@ -197,13 +146,9 @@ class PathSearchTest {
                 .plane()
                 .orElseThrow();
         assertThat(normal.y()).isCloseTo(0, within(1e-15));
-        IndexField skew = field((x, y, z, out, i) -> {
-            out.value[i] = 1 + 0.1 * Math.sin(x + 2 * y * z) + 0.1 * x * y;
-        });
+        IndexField skew =
+                Fields.bumps(1.5, new double[][] {{1, 0.3, 0.2, 0.1, 1}, {-0.2, 1, 2, 0.1, 1}, {0, 0, 3, 0.1, 2}});
         assertThat(new Symmetry(Train.through(skew), Vector.ZERO, new Vector(1, 2, 3)).plane())
                 .isEmpty();
-        Samples s = new Samples(1);
-        skew.sample(new double[1], new double[1], new double[1], 1, Order.VALUE, s);
-        assertThat(s.value[0]).isEqualTo(1);
     }
 }

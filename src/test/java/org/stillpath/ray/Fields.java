@@ -6,11 +6,11 @@ import org.stillpath.geometry.Vector;
 import org.stillpath.medium.IndexField;
 
 /** Index fields written by hand, with closed-form rays, so that the engines are tested without the formula compiler. */
-final class Fields {
+public final class Fields {
     private Fields() {}
 
     /** The same index everywhere. */
-    static IndexField uniform(double n) {
+    public static IndexField uniform(double n) {
         return new IndexField() {
             @Override
             public void sample(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
@@ -36,12 +36,12 @@ final class Fields {
     }
 
     /** n² = n0² (1 − (g r)²). */
-    static IndexField rod(double n0, double g) {
+    public static IndexField rod(double n0, double g) {
         return oscillator(n0, g, 0);
     }
 
     /** n² = n0² (1 − g²(x² + y²) − gz² z²). */
-    static IndexField oscillator(double n0, double g, double gz) {
+    public static IndexField oscillator(double n0, double g, double gz) {
         double w = n0 * n0 * g * g;
         double wz = n0 * n0 * gz * gz;
         return (x, y, z, count, order, out) -> {
@@ -61,7 +61,7 @@ final class Fields {
     }
 
     /** n² = n0² + 2 a·q. */
-    static IndexField slope(double n0, Vector a) {
+    public static IndexField slope(double n0, Vector a) {
         return (x, y, z, count, order, out) -> {
             for (int i = 0; i < count; i++) {
                 out.value[i] = n0 * n0 - 1 + 2 * (a.x() * x[i] + a.y() * y[i] + a.z() * z[i]);
@@ -79,7 +79,7 @@ final class Fields {
     }
 
     /** n² = 2a/ρ − 1. */
-    static IndexField eaton(double a) {
+    public static IndexField eaton(double a) {
         return (x, y, z, count, order, out) -> {
             for (int i = 0; i < count; i++) {
                 double rho2 = x[i] * x[i] + y[i] * y[i] + z[i] * z[i];
@@ -93,7 +93,7 @@ final class Fields {
     }
 
     /** A smooth medium of Gaussian bumps n² = n0² + Σ 2 h exp(−|q − c|²/2w²), {@code bumps} rows of cx, cy, cz, h, w. */
-    static IndexField bumps(double n0, double[][] bumps) {
+    public static IndexField bumps(double n0, double[][] bumps) {
         return (x, y, z, count, order, out) -> {
             for (int i = 0; i < count; i++) {
                 out.value[i] = n0 * n0 - 1;
@@ -140,7 +140,7 @@ final class Fields {
     }
 
     /** n = n0/(1 + (ρ/a)²). */
-    static IndexField fisheye(double n0, double a) {
+    public static IndexField fisheye(double n0, double a) {
         return (x, y, z, count, order, out) -> {
             for (int i = 0; i < count; i++) {
                 double u = 1 + (x[i] * x[i] + y[i] * y[i] + z[i] * z[i]) / (a * a);
