@@ -8,8 +8,8 @@ import org.stillpath.formula.Order;
  * 315, for 450 ppm of carbon dioxide. Uncertainty 3e-8 at three standard deviations in laboratory air; within 4e-9 of
  * Ciddor's there.
  *
- * <p>The wavelengths of its range, 350 nm to 650 nm, and its temperatures, 15 °C to 30 °C, are from memory; the term of
- * the vapour was measured near 20 °C. A relative humidity is taken with the saturation pressure that Ciddor's law uses.
+ * <p>The wavelengths of its range, 350 nm to 650 nm, its temperatures, 15 °C to 30 °C, and its pressures, 60 kPa to 120 kPa,
+ * are from memory; the term of the vapour was measured near 20 °C. A relative humidity is taken with the saturation pressure that Ciddor's law uses.
  */
 public record BirchDowns() implements AirLaw {
     private static final double STANDARD = 96095.43;
