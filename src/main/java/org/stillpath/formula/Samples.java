@@ -44,6 +44,24 @@ public final class Samples {
         hzz = new double[capacity];
     }
 
+    /** Makes a point undefined: NaN in all arrays that {@code order} asks for. */
+    public void undefine(Order order, int point) {
+        value[point] = Double.NaN;
+        if (order != Order.VALUE) {
+            gx[point] = Double.NaN;
+            gy[point] = Double.NaN;
+            gz[point] = Double.NaN;
+        }
+        if (order == Order.HESSIAN) {
+            hxx[point] = Double.NaN;
+            hxy[point] = Double.NaN;
+            hxz[point] = Double.NaN;
+            hyy[point] = Double.NaN;
+            hyz[point] = Double.NaN;
+            hzz[point] = Double.NaN;
+        }
+    }
+
     /** Number of points there is room for. */
     public int capacity() {
         return value.length;

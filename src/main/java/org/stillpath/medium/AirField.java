@@ -76,7 +76,7 @@ final class AirField implements ScalarField {
                 vapour = k.e[AirLaw.N];
             }
             if (!(kelvin > 0 && pascal > 0 && vapour >= 0 && vapour <= pascal)) {
-                nothing(order, out, i);
+                out.undefine(order, i);
                 continue;
             }
             law.refractivity(dispersion, kelvin, pascal, vapour, order, k.n);
@@ -161,23 +161,6 @@ final class AirField implements ScalarField {
             sum += n[AirLaw.TE] * (t1 * w2 + w1 * t2) + n[AirLaw.PE] * (p1 * w2 + w1 * p2) + n[AirLaw.EE] * w1 * w2;
         }
         return sum;
-    }
-
-    private static void nothing(Order order, Samples out, int i) {
-        out.value[i] = Double.NaN;
-        if (order != Order.VALUE) {
-            out.gx[i] = Double.NaN;
-            out.gy[i] = Double.NaN;
-            out.gz[i] = Double.NaN;
-        }
-        if (order == Order.HESSIAN) {
-            out.hxx[i] = Double.NaN;
-            out.hxy[i] = Double.NaN;
-            out.hxz[i] = Double.NaN;
-            out.hyy[i] = Double.NaN;
-            out.hyz[i] = Double.NaN;
-            out.hzz[i] = Double.NaN;
-        }
     }
 
     @Override

@@ -67,7 +67,7 @@ public final class Grid implements ScalarField {
                 py = Math.max(by.first(), Math.min(by.last(), py));
                 pz = Math.max(bz.first(), Math.min(bz.last(), pz));
             } else if (!(bx.reaches(px) && by.reaches(py) && bz.reaches(pz))) {
-                nothing(order, out, m);
+                out.undefine(order, m);
                 continue;
             }
             ci = bx.holds(ci, px) ? ci : bx.cell(px);
@@ -294,23 +294,6 @@ public final class Grid implements ScalarField {
             out.hyy[m] = fy ? 0 : out.hyy[m];
             out.hyz[m] = fy || fz ? 0 : out.hyz[m];
             out.hzz[m] = fz ? 0 : out.hzz[m];
-        }
-    }
-
-    private static void nothing(Order order, Samples out, int m) {
-        out.value[m] = Double.NaN;
-        if (order != Order.VALUE) {
-            out.gx[m] = Double.NaN;
-            out.gy[m] = Double.NaN;
-            out.gz[m] = Double.NaN;
-        }
-        if (order == Order.HESSIAN) {
-            out.hxx[m] = Double.NaN;
-            out.hxy[m] = Double.NaN;
-            out.hxz[m] = Double.NaN;
-            out.hyy[m] = Double.NaN;
-            out.hyz[m] = Double.NaN;
-            out.hzz[m] = Double.NaN;
         }
     }
 }

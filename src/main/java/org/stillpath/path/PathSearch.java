@@ -33,6 +33,8 @@ public final class PathSearch {
     private static final double GLANCE = 1e-9;
     private static final double REACH = 12;
     private static final double NULL_DIRECTION = 1e-6;
+    /** A step of Newton's method turns the launch by no more than this, rad. */
+    private static final double LONGEST_TURN = 0.3;
 
     private final Query query;
     private final double chord;
@@ -365,14 +367,8 @@ public final class PathSearch {
     }
 
     private Vector moved(Vector direction, double[] step, double share) {
-        double[][] axes = columns.axes(direction.x(), direction.y(), direction.z());
-        Vector a = new Vector(axes[0][0], axes[0][1], axes[0][2]);
-        Vector b = new Vector(axes[1][0], axes[1][1], axes[1][2]);
-        double size = Math.max(1, Math.hypot(step[0], step[1]) / 0.3);
-        return direction
-                .plus(share * step[0] / size, a)
-                .plus(share * step[1] / size, b)
-                .unit();
+        double part = share / Math.max(1, Math.hypot(step[0], step[1]) / LONGEST_TURN);
+        return turned(direction, new double[] {part * step[0], part * step[1]}, columns);
     }
 
     // ---- what was found

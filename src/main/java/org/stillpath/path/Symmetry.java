@@ -137,7 +137,6 @@ final class Symmetry {
                 return false;
             }
         }
-        // the axis too, from which apertures are measured
         return true;
     }
 }

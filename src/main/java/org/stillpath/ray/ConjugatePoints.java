@@ -9,8 +9,7 @@ import org.stillpath.medium.IndexField;
  * directions meet it again, each counted as often as there are such directions. Mutable, one a ray.
  *
  * <p>With the Jacobi fields (Q, P) across the ray that start at a point, a conjugate point is where Q is singular. P Q⁻¹ is
- * symmetric, its eigenvalues w fall through ∞ to −∞... and back at each conjugate point, always in the same sense, since Q' =
- * P. So the number between two places is the change of arg det(Q + i c P), less that of Σ arctan(c w), over −π (Morse's index
+ * symmetric, an eigenvalue w jumps from −∞ to +∞ at each conjugate point, never the other way, since Q' = P. So the number between two places is the change of arg det(Q + i c P), less that of Σ arctan(c w), over −π (Morse's index
  * theorem in the form of Maslov and Arnold; Arnold, <i>Mathematical Methods of Classical Mechanics</i>, appendix 11). Watching
  * det Q for a change of sign would miss double points, as on the axis of every rod. A step is split until the argument turns
  * by less than 2 rad a part, so that no turn is lost.
@@ -72,8 +71,7 @@ final class ConjugatePoints {
         double turn = Math.atan2(db[1] * da[0] - db[0] * da[1], db[0] * da[0] + db[1] * da[1]);
         boolean coarse = Math.abs(turn) > MOST_TURN;
         int points = (int) Math.round((principal(b, scale) - principal(a, scale) - turn) / Math.PI);
-        boolean found = !coarse && points <= 0;
-        if (found) {
+        if (!coarse && points <= 0) {
             return;
         }
         if (depth < DEEPEST && b.t - a.t > least) {

@@ -27,7 +27,6 @@ import org.stillpath.unit.Kind;
 
 /** The task {@code between}: the stationary optical paths from one point to another. */
 final class BetweenTask implements Task {
-    private static final double LIGHT = 299_792_458;
     private static final double USUAL_HALF_ANGLE = Math.toRadians(60);
     private static final int MOST_POINTS = 400;
 
@@ -181,7 +180,7 @@ final class BetweenTask implements Task {
         Map<String, Double> errors = new LinkedHashMap<>();
         errors.put("optical-length", p.errors()[0]);
         errors.put("length", p.errors()[1]);
-        errors.put("travel-time", p.errors()[0] / LIGHT);
+        errors.put("travel-time", p.errors()[0] / TraceTask.LIGHT);
         errors.put("arrival-direction", p.errors()[2]);
         double[] trail = p.points();
         int n = trail.length / 3;
@@ -197,7 +196,7 @@ final class BetweenTask implements Task {
                 p.opticalLength(),
                 p.opticalLength() - least,
                 p.length(),
-                p.opticalLength() / LIGHT,
+                p.opticalLength() / TraceTask.LIGHT,
                 p.launch(),
                 p.arrival(),
                 p.kind().word(),

@@ -18,7 +18,8 @@ import org.stillpath.unit.Kind;
 
 /** The task {@code trace}: given rays through the train, to where they end. */
 final class TraceTask implements Task {
-    private static final double LIGHT = 299_792_458;
+    /** Speed of light in vacuum, m/s (exact, SI). */
+    static final double LIGHT = 299_792_458;
 
     @Override
     public String name() {
