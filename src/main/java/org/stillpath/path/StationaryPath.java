@@ -12,6 +12,8 @@ import org.stillpath.geometry.Vector;
  * @param kind for the optical length among all nearby paths
  * @param morseIndex number of independent ways of bending the path that shorten it (in its plane alone, where the search was
  *     confined to one)
+ * @param nullDirections number of independent ways of bending it that leave it equally long to second order: 0 unless it is
+ *     degenerate
  * @param conjugates geometric lengths from the start to the points conjugate to it before the target, metres
  * @param overInterfaces the same question asked of the meeting points with surfaces alone; {@link Kind#NONE} where the path
  *     meets none, or is curved
@@ -26,6 +28,7 @@ public record StationaryPath(
         Vector arrival,
         Kind kind,
         int morseIndex,
+        int nullDirections,
         double[] conjugates,
         Kind overInterfaces,
         double residual,

@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
 import java.util.Random;
+import java.util.function.UnaryOperator;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Surface;
@@ -69,6 +70,11 @@ final class Symmetry {
     /** Whether everything is its own image in the plane through the start with this unit normal. */
     boolean holds(Vector normal) {
         Random random = new Random(SEED);
+        return moves(places(random, q -> q.plus(-2 * q.minus(from).dot(normal), normal)));
+    }
+
+    /** Random places, each followed by its image. */
+    private double[][] places(Random random, UnaryOperator<Vector> move) {
         Vector middle = from.plus(0.5, to.minus(from));
         double size = to.minus(from).norm();
         double[][] places = new double[3][2 * PLACES];
@@ -81,15 +87,97 @@ final class Symmetry {
                 // near the chord too, where media may vary on a smaller scale
                 q = middle.plus(1e-2, q.minus(middle)).plus(random.nextDouble() - 0.5, to.minus(from));
             }
-            Vector image = q.plus(-2 * q.minus(from).dot(normal), normal);
             put(places, 2 * i, q);
-            put(places, 2 * i + 1, image);
+            put(places, 2 * i + 1, move.apply(q));
         }
+        return places;
+    }
+
+    /** Whether media and surfaces are the same at places and their images. */
+    private boolean moves(double[][] places) {
         boolean same = sameField(train.from(), places);
         for (Element e : train.elements()) {
             same = same && sameField(e.into(), places) && sameSurface(e.surface(), places);
         }
         return same;
+    }
+
+    /**
+     * Whether every ray between the two points must lie in a plane of symmetry: where nothing changes along its normal, the
+     * momentum along that is kept, and it is 0; where all is symmetric round a centre in the plane, so is the angular
+     * momentum; round an axis through one of the points likewise. Otherwise rays may leave the plane and come back.
+     */
+    boolean binds(Vector normal) {
+        Random random = new Random(SEED);
+        double size = to.minus(from).norm();
+        if (moves(places(random, q -> q.plus(size * (2 * random.nextDouble() - 1), normal)))) {
+            return true;
+        }
+        for (Vector centre : centres(normal)) {
+            if (moves(places(random, q -> centre.plus(turned(q.minus(centre), random))))) {
+                return true;
+            }
+        }
+        for (Vector point : List.of(from, to)) {
+            for (Vector axis : axes(point)) {
+                if (moves(places(random, q -> point.plus(round(q.minus(point), axis, random))))) {
+                    return true;
+                }
+            }
+        }
+        return false;
+    }
+
+    /** Points of the plane about which all may be symmetric. */
+    private List<Vector> centres(Vector normal) {
+        List<Vector> list = new ArrayList<>();
+        list.add(Vector.ZERO);
+        for (Element e : train.elements()) {
+            list.add(e.surface().vertex());
+            double c = e.surface().form().curvature();
+            if (c > 0) {
+                Vector ez = e.surface().frame().ez();
+                list.add(e.surface().vertex().plus(1 / c, ez));
+                list.add(e.surface().vertex().plus(-1 / c, ez));
+            }
+        }
+        // where the gradients at two places meet
+        Optional<Vector> a = gradient(from);
+        Optional<Vector> b = gradient(to);
+        if (a.isPresent() && b.isPresent()) {
+            Vector u = a.get().unit();
+            Vector across = normal.cross(b.get().unit());
+            double steep = u.dot(across);
+            if (Math.abs(steep) > 1e-12) {
+                list.add(from.plus(to.minus(from).dot(across) / steep, u));
+            }
+        }
+        list.removeIf(
+                c -> Math.abs(c.minus(from).dot(normal)) > 1e-9 * to.minus(from).norm());
+        return list;
+    }
+
+    /** Directions of axes through a point round which all may be symmetric. */
+    private List<Vector> axes(Vector point) {
+        List<Vector> list = new ArrayList<>();
+        list.add(Vector.Z);
+        list.add(to.minus(from).unit());
+        gradient(point).map(Vector::unit).ifPresent(list::add);
+        train.elements().forEach(e -> list.add(e.surface().frame().ez()));
+        return list;
+    }
+
+    private static Vector turned(Vector v, Random random) {
+        Vector a = new Vector(random.nextGaussian(), random.nextGaussian(), random.nextGaussian()).unit();
+        return round(v, a, random);
+    }
+
+    /** A vector turned about an axis by a random angle (Rodrigues). */
+    private static Vector round(Vector v, Vector axis, Random random) {
+        double angle = 2 * Math.PI * random.nextDouble();
+        return v.times(Math.cos(angle))
+                .plus(Math.sin(angle), axis.cross(v))
+                .plus((1 - Math.cos(angle)) * axis.dot(v), axis);
     }
 
     private static void put(double[][] places, int i, Vector q) {

@@ -138,6 +138,25 @@ public final class Tracer {
         return run.traced(run.errors(run), run.propagator.evaluations());
     }
 
+    /**
+     * Traces one ray once, as {@link #glance} does, to an ending {@link Ending.Nearest}, and tells of every passage on the way.
+     *
+     * @return the ray at each minimum of its distance from the point, at most as many as the ending says, in order; where it met
+     *     none, the one ray as it ended early
+     * @throws IllegalStateException if the ending is another
+     */
+    public List<Traced> passages(RayStart start, double tolerance) {
+        if (!(ending instanceof Ending.Nearest)) {
+            throw new IllegalStateException("passages need an ending nearest to a point");
+        }
+        Run run = new Run(start, tolerance, 1);
+        run.passed = new ArrayList<>();
+        run.go();
+        return run.passed.isEmpty()
+                ? List.of(run.traced(run.errors(run), run.propagator.evaluations()))
+                : List.copyOf(run.passed);
+    }
+
     /** Length of the scene that a ray from this start sees, metres: what positions and steps are judged against. */
     double scale(RayStart start) {
         double scale = 0;
@@ -187,6 +206,8 @@ public final class Tracer {
         private double drift;
         private double placeError;
         private double angleError;
+        /** The ray at the passages met so far, where they are asked for. */
+        private @Nullable List<Traced> passed;
 
         Run(RayStart start, double tolerance, double stride) {
             this.start = start;
@@ -515,7 +536,15 @@ public final class Tracer {
             int met = 0;
             while (reach(target, -1, null)) {
                 boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
-                if (defined && target.isNearest(y, flow.samples()) && ++met == at.which()) {
+                if (!defined || !target.isNearest(y, flow.samples())) {
+                    continue;
+                }
+                if (passed != null) {
+                    status = Status.ARRIVED;
+                    passed.add(traced(errors(this), propagator.evaluations()));
+                    status = Status.LOST;
+                }
+                if (++met == at.which()) {
                     arrive();
                     return;
                 }
