@@ -26,7 +26,7 @@ public final class PathSearch {
     private static final int FAN = 16;
     private static final double NULL_DIRECTION = 1e-6;
     /** The fan crowds toward its axis down to this angle, rad. */
-    private static final double INNERMOST = 1e-6;
+    private static final double INNERMOST = 1e-5;
 
     private final Query query;
     private final double chord;
@@ -217,32 +217,35 @@ public final class PathSearch {
     }
 
     private @Nullable StationaryPath polish(Root root) {
-        Columns how = query.confined() ? columns : Columns.RAY;
-        Passage best = passage(root.direction, root.passage, how);
-        for (int i = 0; i < 8 && best != null && best.miss() > 0.01 * query.accuracy * chord; i++) {
+        Columns how = (query.confined() ? columns : Columns.RAY).withConjugates();
+        Traced ray = gun.trace(root.direction, root.passage, query.accuracy, true, how);
+        if (ray.status() != Status.ARRIVED) {
+            return null;
+        }
+        Passage best = Passage.of(root.direction, root.passage, ray, query.to, how);
+        for (int i = 0; i < 8 && best.miss() > 0.1 * query.accuracy * chord; i++) {
             Vector turn = query.confined() || bound
                     ? best.turnInPlane(normal.orElseThrow().cross(best.direction()))
                     : best.turn();
             if (!(turn.norm() < 1e-2)) {
                 break;
             }
-            Passage next = passage(best.direction().plus(turn).unit(), root.passage, how);
-            if (next == null || next.miss() >= best.miss()) {
+            Vector direction = best.direction().plus(turn).unit();
+            Traced again = gun.trace(direction, root.passage, query.accuracy, true, how);
+            if (again.status() != Status.ARRIVED) {
+                break;
+            }
+            Passage next = Passage.of(direction, root.passage, again, query.to, how);
+            if (next.miss() >= best.miss()) {
                 break;
             }
             best = next;
+            ray = again;
         }
-        if (best == null
-                || best.miss() > Math.max(1e-9, 10 * query.accuracy) * chord
-                || passedBefore(best.direction(), root.passage)) {
+        if (best.miss() > Math.max(1e-9, 10 * query.accuracy) * chord || passedBefore(best.direction(), root.passage)) {
             return null;
         }
-        return described(best, how);
-    }
-
-    private @Nullable Passage passage(Vector direction, int which, Columns how) {
-        Traced t = gun.trace(direction, which, query.accuracy, false, how);
-        return t.status() == Status.ARRIVED ? Passage.of(direction, which, t, query.to, how) : null;
+        return described(best, ray);
     }
 
     /** Whether a ray reaches the target at an earlier passage, where its path has ended. */
@@ -251,8 +254,7 @@ public final class PathSearch {
                 && gun.shoot(direction, 1e-9).stream().anyMatch(p -> p.which() < passage && p.miss() < 1e-6 * chord);
     }
 
-    private StationaryPath described(Passage best, Columns how) {
-        Traced t = gun.trace(best.direction(), best.which(), query.accuracy, true, how.withConjugates());
+    private StationaryPath described(Passage best, Traced t) {
         double[] sizes = best.singular();
         if (query.confined()) {
             double inPlane = Math.abs(best.slope()[0]);
