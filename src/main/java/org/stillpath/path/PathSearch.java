@@ -272,6 +272,8 @@ public final class PathSearch {
             }
         }
         int index = before.size();
+        Optional<SecondVariation.Counts> counts = SecondVariation.of(
+                query.train, query.from, best.direction(), t.length(), query.confined() ? normal : Optional.empty());
         StationaryPath.Kind kind = degenerate
                 ? StationaryPath.Kind.DEGENERATE
                 : index == 0 ? StationaryPath.Kind.MINIMUM : StationaryPath.Kind.SADDLE;
@@ -282,9 +284,10 @@ public final class PathSearch {
                 t.direction(),
                 kind,
                 index,
+                counts.map(SecondVariation.Counts::negative).orElse(index),
                 nullDirections,
                 before.stream().mapToDouble(Double::doubleValue).toArray(),
-                MeetingPoints.kind(query.train, t.trail(), query.confined() ? normal : Optional.empty()),
+                counts.map(SecondVariation.Counts::overInterfaces).orElse(StationaryPath.Kind.NONE),
                 best.miss(),
                 t.trail(),
                 new double[] {

@@ -77,6 +77,9 @@ class RandomProblemsTest {
                 StationaryPath p = paths.get(k);
                 degenerate |= p.kind() == StationaryPath.Kind.DEGENERATE;
                 sum += p.morseIndex() % 2 == 0 ? 1 : -1;
+                assertThat(p.reducedIndex())
+                        .as("index of path " + k + " of problem " + i)
+                        .isEqualTo(p.morseIndex());
                 for (int j = 0; j < k; j++) {
                     assertThat(paths.get(j).launch().minus(p.launch()).norm())
                             .as("two paths of problem " + i)
