@@ -34,7 +34,8 @@ final class ConeSearch {
     /** From this depth on only derivatives decide what is left, so that jumps are not followed along their whole length. */
     private static final int DEEP = 3;
     /** How well the middles of sides must be predicted, as a part of how much the misses change. */
-    private static final double PREDICTED = 0.03;
+    private static final double PREDICTED = 0.01;
+
     /** Most that the map's determinant may vary over a triangle with one zero. */
     private static final double VARIATION = 4;
 
@@ -187,7 +188,7 @@ final class ConeSearch {
                 swing = Math.max(swing, change);
             }
         }
-        swing *= t.depth < DEEP ? 1 : 2;
+        swing *= t.depth < DEEP ? 1.5 : 2;
         if (arriving == 0 || nearest > swing + 1e-9 * chord || gun.shots() > MOST_SHOTS || size < 1e-12) {
             return;
         }
