@@ -42,6 +42,7 @@ public final class PathSearch {
     private final Optional<Vector> normal;
     private final Columns columns;
     private final List<Root> roots = new ArrayList<>();
+    private final List<Sample> samples = new ArrayList<>();
     private int shots;
 
     /**
@@ -111,8 +112,19 @@ public final class PathSearch {
             }
         }
         List<StationaryPath> paths = search.polished();
-        return new Outcome(paths, search.normal.isPresent(), search.shots);
+        search.samples.sort(Comparator.comparingInt(Sample::passage).thenComparingDouble(Sample::angle));
+        return new Outcome(paths, search.normal.isPresent(), search.shots, search.samples, search.normal);
     }
+
+    /**
+     * One ray of a search in a plane.
+     *
+     * @param angle of the launch from the axis of the search, in the plane searched, rad; positive from the axis toward the
+     *     plane's normal times the axis
+     * @param passage which of its passages of the target is meant, from 1
+     * @param miss what it misses the target by, across the ray, signed, metres; NaN where it did not arrive
+     */
+    public record Sample(double angle, int passage, double miss) {}
 
     /**
      * What a search found, and how it was bounded.
@@ -120,10 +132,14 @@ public final class PathSearch {
      * @param paths by optical length
      * @param planar whether it was one-dimensional
      * @param shots number of rays traced
+     * @param samples the rays by passage and angle; none of a search over a cone
+     * @param normal unit normal of the plane searched; empty for a search over a cone
      */
-    public record Outcome(List<StationaryPath> paths, boolean planar, int shots) {
+    public record Outcome(
+            List<StationaryPath> paths, boolean planar, int shots, List<Sample> samples, Optional<Vector> normal) {
         public Outcome {
             paths = List.copyOf(paths);
+            samples = List.copyOf(samples);
         }
     }
 
@@ -139,6 +155,12 @@ public final class PathSearch {
         RayStart start = RayStart.of(query.from, direction);
         Traced t = tracer(passage, GLANCE, false, columns).glance(start, GLANCE);
         return t.status() == Status.ARRIVED ? shot(direction, t, columns) : null;
+    }
+
+    private @Nullable Shot shootAt(double angle, int passage) {
+        Shot s = shoot(at(angle), passage);
+        samples.add(new Sample(angle, passage, s == null ? Double.NaN : s.miss[0]));
+        return s;
     }
 
     private Shot shot(Vector direction, Traced t, Columns how) {
@@ -179,10 +201,10 @@ public final class PathSearch {
         }
         angles.sort(Comparator.naturalOrder());
         double before = angles.get(0);
-        Shot a = shoot(at(before), passage);
+        Shot a = shootAt(before, passage);
         for (int i = 1; i < angles.size(); i++) {
             double angle = angles.get(i);
-            Shot b = shoot(at(angle), passage);
+            Shot b = shootAt(angle, passage);
             interval(before, a, angle, b, passage, 0);
             before = angle;
             a = b;
@@ -196,7 +218,7 @@ public final class PathSearch {
         double middle = 0.5 * (ta + tb);
         if (a == null || b == null) {
             if (depth < DEEPEST) {
-                Shot m = shoot(at(middle), passage);
+                Shot m = shootAt(middle, passage);
                 interval(ta, a, middle, m, passage, depth + 1);
                 interval(middle, m, tb, b, passage, depth + 1);
             }
@@ -213,7 +235,7 @@ public final class PathSearch {
         if (!crosses && Math.min(Math.abs(ma), Math.abs(mb)) > swing) {
             return;
         }
-        Shot m = shoot(at(middle), passage);
+        Shot m = shootAt(middle, passage);
         double predicted = 0.5 * (ma + mb) + 0.125 * (sa - sb);
         boolean smooth = m != null && Math.abs(m.miss[0] - predicted) <= 1e-3 * swing + 1e-13 * chord;
         if (m != null && smooth) {
@@ -240,7 +262,7 @@ public final class PathSearch {
         Shot turning = a;
         for (int i = 0; i < 40 && hi - lo > 1e-12; i++) {
             double t = 0.5 * (lo + hi);
-            Shot m = shoot(at(t), passage);
+            Shot m = shootAt(t, passage);
             if (m == null) {
                 return;
             }
@@ -268,7 +290,7 @@ public final class PathSearch {
         double t = 0.5 * (lo + hi);
         Shot best = Math.abs(a.miss[0]) < Math.abs(b.miss[0]) ? a : b;
         for (int i = 0; i < 60; i++) {
-            Shot m = shoot(at(t), passage);
+            Shot m = shootAt(t, passage);
             if (m == null) {
                 return;
             }
