@@ -16,12 +16,15 @@ import org.stillpath.task.SectionFigure.Role;
 
 /**
  * Draws a {@link CurveFigure}: its panels side by side on wide paper, below each other on narrow. Curves are cut off where they
- * leave a panel. Samples show as dots where they stand apart.
+ * leave a panel. In panels that look closer samples show as dots where they stand apart.
  */
 final class CurveDrawing {
     private static final double GUTTER = 10;
     /** Samples at least so far from both neighbours show as dots, points. */
     private static final double APART = 4;
+
+    /** Between two ticks of a logarithmic axis, points. */
+    private static final double LEAST_STEP = 13;
 
     private static final double THINNING = 0.03;
     private static final Pen ZERO = Pen.firm(Ink.GREY, 0.5);
@@ -86,13 +89,16 @@ final class CurveDrawing {
         return legend.draw(canvas, top);
     }
 
-    /** How an axis' values lie on paper: as they are, or logarithmic on both sides of zero. */
+    /**
+     * How an axis' values lie on paper: as they are, or logarithmic on both sides of zero. An inverse hyperbolic sine, since a
+     * line that turns into a logarithm at a point has a corner there, which every curve would show.
+     */
     private static double place(Axis axis, double value) {
         if (axis.linear() == 0) {
             return value;
         }
-        double t = Math.abs(value) / axis.linear();
-        return Math.signum(value) * (t <= 1 ? t : 1 + Math.log10(t));
+        double t = Math.abs(value) / (2 * axis.linear());
+        return Math.signum(value) * Math.log10(t + Math.hypot(t, 1));
     }
 
     /** Draws one panel between two edges of the paper; returns the y below it. */
@@ -180,6 +186,9 @@ final class CurveDrawing {
         }
         Polyline whole = view.line(u, v);
         whole.inside(plot).forEach(part -> chart.line(part.thinned(THINNING), pen));
+        if (panel.equals(figure.panels().get(0))) {
+            return;
+        }
         for (int i = 0; i < x.length; i++) {
             double px = whole.x()[i];
             double py = whole.y()[i];
@@ -211,14 +220,15 @@ final class CurveDrawing {
         }
         // decades on both sides, as many as have room
         double span = place(axis, axis.high()) - place(axis, axis.low());
-        int every = 1;
-        while (every * points / span < 13) {
-            every++;
+        int every = (int) Math.max(1, Math.ceil(LEAST_STEP * span / points));
+        int first = 0;
+        while (place(axis, axis.linear() * Math.pow(10, first)) * points / span < LEAST_STEP) {
+            first++;
         }
         List<Scale.Tick> ticks = new ArrayList<>();
         for (int sign = -1; sign <= 1; sign += 2) {
             double end = sign < 0 ? -axis.low() : axis.high();
-            for (int k = 0; axis.linear() * Math.pow(10, k) <= end * (1 + 1e-9); k += every) {
+            for (int k = first; axis.linear() * Math.pow(10, k) <= end * (1 + 1e-9); k += every) {
                 double value = axis.linear() * Math.pow(10, k);
                 double shown = value / unit.size();
                 String text = Scale.plain(BigDecimal.valueOf(sign * shown), decimals(shown));

@@ -123,10 +123,12 @@ final class FirstArrival {
     private static String missed(Arrival.Course course) {
         return switch (course) {
             case FREE -> "the search may have missed a shorter way; search a wider cone, or from another direction";
-            case WALL -> "it may be a way along the edge of the medium, which is not stationary, or one that the search has "
-                    + "missed";
-            case EDGE -> "the edge of the grid may make it longer than it is; the search may have missed it, in a wider cone "
-                    + "or from another direction";
+            case WALL ->
+                "it may be a way along the edge of the medium, which is not stationary, or one that the search has "
+                        + "missed";
+            case EDGE ->
+                "the edge of the grid may make it longer than it is; the search may have missed it, in a wider cone "
+                        + "or from another direction";
         };
     }
 }
