@@ -127,7 +127,7 @@ final class CurveDrawing {
                 (plot.top() + plot.bottom()) / 2,
                 plot.width() / (u1 - u0),
                 plot.height() / (v1 - v0));
-        int count = (int) Math.max(2, plot.width() / 36);
+        int count = (int) Math.max(2, plot.width() / 22);
         Scale across = scale(panel.across(), count, plot.width());
         while (count > 1 && !Axes.isClear(across, view.across())) {
             count--;

@@ -18,11 +18,11 @@ import org.stillpath.unit.Display;
  * The least optical length on a grid, a second opinion on the first of the paths that a search found.
  *
  * <p>The grid lies in the plane that was searched, or round both points where the search was over a cone. Its cells were chosen
- * for the time, not for an accuracy: in a plane {@value #PLANE_CELLS} from point to point, some 0.6 s; in space
- * {@value #SPACE_CELLS}, some 2 s. What that gives is told by the solver's own estimate.
+ * for the time, not for an accuracy: in a plane {@value #PLANE_CELLS} from point to point, in space {@value #SPACE_CELLS}, each
+ * some 1 s of a short job on a shared machine. What that gives is told by the solver's own estimate.
  */
 final class FirstArrival {
-    private static final int PLANE_CELLS = 320;
+    private static final int PLANE_CELLS = 256;
     private static final int SPACE_CELLS = 64;
 
     /** Below this a path is as good as straight and spans no plane. */
