@@ -29,7 +29,6 @@ final class ConeSearch {
     /** Rings crowd toward the axis down to this angle, rad: long sights through layers have all their images there. */
     private static final double INNERMOST = 1e-4;
 
-    private static final int MOST_SHOTS = 20_000;
     private static final int DEEPEST = 16;
     /** From this depth on only derivatives decide what is left, so that jumps are not followed along their whole length. */
     private static final int DEEP = 3;
@@ -189,7 +188,7 @@ final class ConeSearch {
             }
         }
         swing *= t.depth < DEEP ? 1.5 : 2;
-        if (arriving == 0 || nearest > swing + 1e-9 * chord || gun.shots() > MOST_SHOTS || size < 1e-12) {
+        if (arriving == 0 || nearest > swing + 1e-9 * chord || gun.shots() > PathSearch.MOST_SHOTS || size < 1e-12) {
             return;
         }
         if (arriving == 3 && farthest < LOOSE * chord) {

@@ -22,7 +22,6 @@ public final class FanSearch {
     /** Least width to which an interval is split, rad. */
     private static final double NARROWEST = 1e-13;
 
-    private static final int MOST_SHOTS = 20_000;
     /** How well a cubic must predict the middle, as a part of how much the misses change. */
     private static final double PREDICTED = 1e-2;
     /** Tolerance at which the fan is shot, and at which zeros are narrowed. */
@@ -131,7 +130,7 @@ public final class FanSearch {
         boolean here = a.arrives(branch);
         boolean there = b.arrives(branch);
         double h = b.angle - a.angle;
-        if ((!here && !there) || h < NARROWEST || shots > MOST_SHOTS) {
+        if ((!here && !there) || h < NARROWEST || shots > PathSearch.MOST_SHOTS) {
             return;
         }
         double middle = 0.5 * (a.angle + b.angle);

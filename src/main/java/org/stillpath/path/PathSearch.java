@@ -23,6 +23,9 @@ import org.stillpath.ray.Train;
  * variation is counted twice ({@link SecondVariation}).
  */
 public final class PathSearch {
+    /** Most rays of a search. */
+    static final int MOST_SHOTS = 20_000;
+
     private static final int FAN = 16;
     private static final double NULL_DIRECTION = 1e-6;
     /** The fan crowds toward its axis down to this angle, rad. */
@@ -106,6 +109,7 @@ public final class PathSearch {
                 search.roots.add(new Root(p.direction(), p.which()));
             }
         }
+        boolean exhausted = search.gun.shots() > MOST_SHOTS;
         List<StationaryPath> paths = search.polished();
         return new Outcome(
                 paths,
@@ -115,7 +119,8 @@ public final class PathSearch {
                 search.samples,
                 search.gun.ended(),
                 search.gun.shots(),
-                search.gun.evaluations());
+                search.gun.evaluations(),
+                exhausted);
     }
 
     /**
@@ -129,6 +134,7 @@ public final class PathSearch {
      * @param ended how many rays ended before they passed the target, by the way they did
      * @param shots number of rays traced
      * @param evaluations number of points at which fields were sampled
+     * @param exhausted whether it stopped at its limit of rays
      */
     public record Outcome(
             List<StationaryPath> paths,
@@ -138,11 +144,17 @@ public final class PathSearch {
             List<Sample> samples,
             Map<Status, Integer> ended,
             int shots,
-            long evaluations) {
+            long evaluations,
+            boolean exhausted) {
         public Outcome {
             paths = List.copyOf(paths);
             samples = List.copyOf(samples);
             ended = Map.copyOf(ended);
+        }
+
+        /** The same with other paths. */
+        public Outcome withPaths(List<StationaryPath> others) {
+            return new Outcome(others, planar, normal, axis, samples, ended, shots, evaluations, exhausted);
         }
     }
 
