@@ -26,7 +26,7 @@ public final class PathSearch {
     /** Most rays of a search. */
     static final int MOST_SHOTS = 20_000;
 
-    private static final int FAN = 16;
+    private static final int FAN = 12;
     /** What a path may miss by, as a part of the chord, to be worth mending by multiple shooting. */
     private static final double MENDABLE = 1e-3;
 

@@ -36,7 +36,7 @@ import org.stillpath.ray.Train;
  */
 final class SecondVariation {
     private static final double NULL_DIRECTION = 1e-6;
-    private static final double TOLERANCE = 1e-10;
+    private static final double TOLERANCE = 1e-8;
     /** Most that ω Δτ may be on a piece; well below π, since ω is sampled at three places. */
     private static final double LONGEST_PHASE = 1;
 
