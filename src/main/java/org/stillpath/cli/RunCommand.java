@@ -16,7 +16,8 @@ import org.stillpath.problem.ProblemException;
 import org.stillpath.problem.Words;
 import org.stillpath.report.PlainText;
 import org.stillpath.report.TextReport;
-import org.stillpath.task.Result;
+import org.stillpath.study.Outcome;
+import org.stillpath.study.Studies;
 import org.stillpath.task.Tasks;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
@@ -77,17 +78,18 @@ final class RunCommand implements Callable<Integer> {
         try {
             Job job = Job.read(name, settings, allowOutside);
             claimFolder(job, name);
-            Result result = job.work((root, sources) -> {
+            Outcome outcome = job.work((root, sources) -> {
                         if (job.isSound()) {
-                            return Optional.of(Tasks.run(root, sources, new Tasks.Options(!out.isEmpty())));
+                            return Optional.of(Studies.run(
+                                    root, sources, new Tasks.Options(!out.isEmpty()), Studies.Means.plain()));
                         }
-                        Tasks.check(root, sources);
-                        return Optional.<Result>empty();
+                        CheckCommand.check(root, sources);
+                        return Optional.<Outcome>empty();
                     })
                     .orElseThrow();
-            Optional<OutputFolder> folder = out.isEmpty() ? Optional.empty() : Optional.of(write(job, result));
-            tell(result, folder);
-            if (!result.accuracyReached()) {
+            Optional<OutputFolder> folder = out.isEmpty() ? Optional.empty() : Optional.of(write(job, outcome));
+            tell(outcome, folder);
+            if (!outcome.result().accuracyReached()) {
                 console.say(name + ": the asked accuracy was not reached; the error beside each value tells how far its"
                         + " digits can be trusted");
                 return Problem.Kind.ACCURACY.exitStatus();
@@ -107,23 +109,23 @@ final class RunCommand implements Callable<Integer> {
         return console.tell(faults);
     }
 
-    private OutputFolder write(Job job, Result result) {
+    private OutputFolder write(Job job, Outcome outcome) {
         Path folder = Job.path(out);
         OutputFolder written = new OutputFolder(jobs.size() > 1 ? folder.resolve(job.name()) : folder);
-        written.write(result, job.file(), settings);
+        written.write(outcome, job.file(), settings);
         return written;
     }
 
-    private void tell(Result result, Optional<OutputFolder> folder) throws IOException {
+    private void tell(Outcome outcome, Optional<OutputFolder> folder) throws IOException {
         if (json) {
             ResultJson.writeLine(
-                    result,
+                    outcome,
                     Version.text(),
                     folder.map(OutputFolder::tables).orElse(List.of()),
                     folder.map(OutputFolder::figures).orElse(List.of()),
                     console.out());
         } else if (!quiet) {
-            console.out().write(TextReport.of(result).getBytes(StandardCharsets.UTF_8));
+            console.out().write(TextReport.of(outcome).getBytes(StandardCharsets.UTF_8));
             if (folder.isPresent()) {
                 console.out().print(PlainText.wrapped("\n" + folder.get().summary(), "", "  ", 80));
             }
