@@ -9,6 +9,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.concurrent.Callable;
+import org.stillpath.io.Checkpoint;
 import org.stillpath.io.ResultJson;
 import org.stillpath.problem.Place;
 import org.stillpath.problem.Problem;
@@ -17,6 +18,8 @@ import org.stillpath.problem.Words;
 import org.stillpath.report.PlainText;
 import org.stillpath.report.TextReport;
 import org.stillpath.study.Outcome;
+import org.stillpath.study.Progress;
+import org.stillpath.study.Store;
 import org.stillpath.study.Studies;
 import org.stillpath.task.Tasks;
 import picocli.CommandLine.Command;
@@ -78,16 +81,17 @@ final class RunCommand implements Callable<Integer> {
         try {
             Job job = Job.read(name, settings, allowOutside);
             claimFolder(job, name);
-            Outcome outcome = job.work((root, sources) -> {
-                        if (job.isSound()) {
-                            return Optional.of(Studies.run(
-                                    root, sources, new Tasks.Options(!out.isEmpty()), Studies.Means.plain()));
-                        }
-                        CheckCommand.check(root, sources);
-                        return Optional.<Outcome>empty();
-                    })
-                    .orElseThrow();
-            Optional<OutputFolder> folder = out.isEmpty() ? Optional.empty() : Optional.of(write(job, outcome));
+            Outcome outcome;
+            Optional<OutputFolder> folder = Optional.empty();
+            if (out.isEmpty()) {
+                outcome = compute(job, Store.none());
+            } else {
+                try (Checkpoint checkpoint = Checkpoint.in(folder(job))) {
+                    outcome = compute(job, checkpoint);
+                    folder = Optional.of(write(job, outcome));
+                    checkpoint.finish();
+                }
+            }
             tell(outcome, folder);
             if (!outcome.result().accuracyReached()) {
                 console.say(name + ": the asked accuracy was not reached; the error beside each value tells how far its"
@@ -102,6 +106,28 @@ final class RunCommand implements Callable<Integer> {
         }
     }
 
+    private Outcome compute(Job job, Store store) {
+        return job.work((root, sources) -> {
+                    if (!job.isSound()) {
+                        CheckCommand.check(root, sources);
+                        return Optional.<Outcome>empty();
+                    }
+                    Tasks.Options options = new Tasks.Options(!out.isEmpty());
+                    int threads = Runtime.getRuntime().availableProcessors();
+                    try (ProgressBar bar = new ProgressBar(console.err())) {
+                        Progress progress = ProgressBar.isTerminal() && !quiet ? bar : Progress.SILENT;
+                        Studies.Means means = new Studies.Means(threads, store, progress, Version.text());
+                        return Optional.of(Studies.run(root, sources, options, means));
+                    }
+                })
+                .orElseThrow();
+    }
+
+    private Path folder(Job job) {
+        Path folder = Job.path(out);
+        return jobs.size() > 1 ? folder.resolve(job.name()) : folder;
+    }
+
     private int fail(String name, List<Problem> faults) throws IOException {
         if (json) {
             ResultJson.writeFaults(name, faults, console.out());
@@ -110,8 +136,7 @@ final class RunCommand implements Callable<Integer> {
     }
 
     private OutputFolder write(Job job, Outcome outcome) {
-        Path folder = Job.path(out);
-        OutputFolder written = new OutputFolder(jobs.size() > 1 ? folder.resolve(job.name()) : folder);
+        OutputFolder written = new OutputFolder(folder(job));
         written.write(outcome, job.file(), settings);
         return written;
     }

@@ -43,7 +43,12 @@ record RowTable(List<String> headers, List<List<String>> rows, int left, List<St
                         units.add("");
                         continue;
                     }
-                    Display.Reading r = Display.of(values[i], m.units().get(i), errors[i]);
+                    // what lies within its own error of zero is zero to a reader
+                    double value = Math.abs(values[i]) <= errors[i] ? 0 : values[i];
+                    String shown = m.shown().get(i);
+                    Display.Reading r = shown.isEmpty()
+                            ? Display.of(value, m.units().get(i), errors[i])
+                            : Display.in(value, shown, errors[i]);
                     numbers.add(r.number());
                     units.add(r.unit());
                 }

@@ -32,7 +32,7 @@ public final class TextReport {
             text.append('\n')
                     .append(PlainText.wrapped(listing.heading(), "", "", WIDTH))
                     .append('\n');
-            table(RowTable.listing(listing, MOST_ROWS), "rows", text);
+            table(RowTable.listing(listing.brief(), MOST_ROWS), "rows", text);
         }
         if (!outcome.findings().isEmpty()) {
             text.append('\n')

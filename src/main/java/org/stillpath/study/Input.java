@@ -98,6 +98,11 @@ record Input(String path, Place place, Kind kind, String unit, String shown, dou
         return Units.parse(text).isPresent() ? text : q.flavour() == Flavour.ANGLE ? "deg" : "";
     }
 
+    /** Unit of differences for people: that of the values, and kelvin where those are in degrees Celsius. */
+    String shownDifference() {
+        return kind.flavour() == Flavour.TEMPERATURE_POINT ? "K" : shown;
+    }
+
     /** Whether the job has a value here. */
     boolean isGiven() {
         return !Double.isNaN(nominal);

@@ -1,6 +1,7 @@
 package org.stillpath.study;
 
 import java.util.ArrayList;
+import java.util.Collections;
 import java.util.List;
 import org.stillpath.task.Table;
 
@@ -11,13 +12,28 @@ import org.stillpath.task.Table;
  * @param name stem of the CSV file, such as {@code sweep}
  * @param heading for people
  * @param columns from left to right, all of one length
+ * @param details names of columns that a terminal leaves out
  */
-public record Listing(String name, String heading, List<Column> columns) {
+public record Listing(String name, String heading, List<Column> columns, List<String> details) {
     public Listing {
         columns = List.copyOf(columns);
+        details = List.copyOf(details);
         if (columns.stream().mapToInt(Column::size).distinct().count() > 1) {
             throw new IllegalArgumentException("columns of " + name + " must be of one length");
         }
+    }
+
+    /** A table that a terminal shows in full. */
+    public Listing(String name, String heading, List<Column> columns) {
+        this(name, heading, columns, List.of());
+    }
+
+    /** The same without its details. */
+    public Listing brief() {
+        return new Listing(
+                name,
+                heading,
+                columns.stream().filter(c -> !details.contains(c.name())).toList());
     }
 
     /** One column. */
@@ -71,13 +87,21 @@ public record Listing(String name, String heading, List<Column> columns) {
      * @param name header
      * @param values in SI; NaN where there is none
      * @param units SI unit symbols
+     * @param shown units for people; empty texts: one that suits the size
      * @param errors of each, for people; 0 where unknown
      */
-    public record Mixed(String name, double[] values, List<String> units, double[] errors) implements Column {
+    public record Mixed(String name, double[] values, List<String> units, List<String> shown, double[] errors)
+            implements Column {
         public Mixed {
             values = values.clone();
             units = List.copyOf(units);
+            shown = List.copyOf(shown);
             errors = errors.clone();
+        }
+
+        /** Numbers in units that suit their size. */
+        public Mixed(String name, double[] values, List<String> units, double[] errors) {
+            this(name, values, units, Collections.nCopies(units.size(), ""), errors);
         }
 
         /** A copy. */

@@ -84,7 +84,8 @@ final class RunTable {
             columns.add(new Listing.Texts("fault", faults));
         }
         String heading = SweepStudy.capital(key) + (bench.variant().isEmpty() ? "" : ", variant " + bench.variant());
-        return new Listing(bench.stem(key), heading, columns);
+        // the warnings tell faults too, and no line of a terminal is long enough for them
+        return new Listing(bench.stem(key), heading, columns, List.of("fault"));
     }
 
     /**
