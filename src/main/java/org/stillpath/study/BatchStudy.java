@@ -114,7 +114,7 @@ final class BatchStudy implements Study {
             paths.add(key);
             columns.add(new Column(i, h.name(), h.unit(), sexagesimal));
         }
-        if (columns.isEmpty()) {
+        if (columns.isEmpty() && desk.problems().isEmpty()) {
             desk.problems()
                     .add(
                             file.place(),

@@ -7,6 +7,7 @@ import java.util.Map;
 import java.util.Optional;
 import org.stillpath.job.Section;
 import org.stillpath.job.Value;
+import org.stillpath.problem.Place;
 import org.stillpath.problem.Problems;
 import org.stillpath.problem.Words;
 import org.stillpath.task.Figure;
@@ -42,7 +43,7 @@ final class BudgetStudy implements Study {
     }
 
     /** What of a result is wanted: low and high limits, read once its unit is known. */
-    private record Limit(Value key, Optional<Value> low, Optional<Value> high) {}
+    private record Limit(Place place, String path, Optional<Value> low, Optional<Value> high) {}
 
     /** Everything read. */
     private record Order(
@@ -229,7 +230,9 @@ final class BudgetStudy implements Study {
             if (low.isEmpty() && high.isEmpty() && !ends.isPlaceholder()) {
                 ends.fault("a limit is needed: low, high or both");
             }
-            limits.put(path.replace("]", "").replace('[', '.'), new Limit(s.at(path), low, high));
+            limits.put(
+                    path.replace("]", "").replace('[', '.'),
+                    new Limit(s.keyPlace(path), s.path() + "." + path, low, high));
         }
         return limits;
     }
@@ -272,9 +275,7 @@ final class BudgetStudy implements Study {
                 Optional<Watched> w = find(bench, path);
                 if (w.isEmpty()) {
                     problems.add(
-                            limit.key().place(),
-                            limit.key().path(),
-                            "this result is not watched" + Words.remedy(path, watched));
+                            limit.place(), limit.path(), "this result is not watched" + Words.remedy(path, watched));
                 } else {
                     ends(limit, w.get(), problems);
                 }
@@ -308,7 +309,7 @@ final class BudgetStudy implements Study {
                     .map(v -> Value.of(v.node(), v.path(), problems).quantity(kind))
                     .orElse(Double.POSITIVE_INFINITY);
             if (low > high) {
-                problems.add(limit.key().place(), limit.key().path(), "the low limit lies above the high one");
+                problems.add(limit.place(), limit.path(), "the low limit lies above the high one");
             }
             return new Ends(low, high);
         }

@@ -106,10 +106,10 @@ public final class Studies {
         for (Study s : ALL) {
             study.find(s.key()).ifPresent(v -> plans.add(new Planned(s.key(), s.read(v, desk))));
         }
-        if (plans.isEmpty() && !study.isPlaceholder()) {
+        study.finish();
+        if (plans.isEmpty() && problems.isEmpty()) {
             study.fault("a study needs one of " + String.join(", ", keys()));
         }
-        study.finish();
         return new Order(job, root, sources, variants, watch, watched, plans, problems);
     }
 
