@@ -86,10 +86,17 @@ final class RunCommand implements Callable<Integer> {
             if (out.isEmpty()) {
                 outcome = compute(job, Store.none());
             } else {
+                Thread stopped = new Thread(() -> console.say(
+                        "stopped; the runs that were done are kept in " + out + ", and the same command goes on"));
                 try (Checkpoint checkpoint = Checkpoint.in(folder(job))) {
+                    if (Studies.isIn(job.file().root())) {
+                        Runtime.getRuntime().addShutdownHook(stopped);
+                    }
                     outcome = compute(job, checkpoint);
                     folder = Optional.of(write(job, outcome));
                     checkpoint.finish();
+                } finally {
+                    forget(stopped);
                 }
             }
             tell(outcome, folder);
@@ -121,6 +128,14 @@ final class RunCommand implements Callable<Integer> {
                     }
                 })
                 .orElseThrow();
+    }
+
+    private static void forget(Thread hook) {
+        try {
+            Runtime.getRuntime().removeShutdownHook(hook);
+        } catch (IllegalStateException e) {
+            // the program is being stopped, and the hook has its say
+        }
     }
 
     private Path folder(Job job) {

@@ -14,6 +14,7 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.nio.file.StandardOpenOption;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
@@ -46,6 +47,8 @@ public final class Checkpoint implements Store, AutoCloseable {
     private @Nullable FileChannel channel;
     private final Map<String, List<Part>> kept = new HashMap<>();
     private int found;
+    /** Whether anything is kept. */
+    private boolean worth;
 
     private Checkpoint(Path folder) {
         this.folder = folder;
@@ -75,14 +78,15 @@ public final class Checkpoint implements Store, AutoCloseable {
             while (start.hasRemaining() && opened.read(start, start.position()) >= 0) {
                 // reads on to the end of the header or of the file
             }
-            if (start.hasRemaining()) {
-                // new, or torn before anything was kept
+            boolean same = !start.hasRemaining() && Arrays.equals(start.array(), header);
+            if (!same && opened.size() <= header.length) {
+                // new, or of a process that ended before anything was kept
                 opened.truncate(0);
                 opened.write(ByteBuffer.wrap(header), 0);
                 opened.position(header.length);
                 return;
             }
-            if (!java.util.Arrays.equals(start.array(), header)) {
+            if (!same) {
                 throw refuse("holds the unfinished study of another job, of other files or of another version of the "
                         + "program; give another --out, or delete " + file + " to begin anew");
             }
@@ -113,6 +117,7 @@ public final class Checkpoint implements Store, AutoCloseable {
     }
 
     private ProblemException refuse(String why) {
+        worth = true;
         close();
         return new ProblemException(Problem.input(Place.of("--out " + folder), "", "the folder " + why));
     }
@@ -188,6 +193,7 @@ public final class Checkpoint implements Store, AutoCloseable {
         }
         kept.computeIfAbsent(stage, s -> new ArrayList<>()).add(new Part(from, width, results, flags, faults));
         found += count;
+        worth = true;
     }
 
     @Override
@@ -225,6 +231,7 @@ public final class Checkpoint implements Store, AutoCloseable {
             while (record.hasRemaining()) {
                 opened.write(record);
             }
+            worth = true;
         } catch (IOException e) {
             throw failed(e);
         }
@@ -236,13 +243,15 @@ public final class Checkpoint implements Store, AutoCloseable {
      * @throws IOException if it cannot be deleted
      */
     public void finish() throws IOException {
-        if (channel != null) {
+        boolean open = channel != null;
+        worth = true;
+        close();
+        if (open) {
             Files.deleteIfExists(file);
         }
-        close();
     }
 
-    /** Lets go of the file and leaves it where it is. */
+    /** Lets go of the file and leaves it where it is, if anything is kept in it. */
     @Override
     public void close() {
         FileChannel opened = channel;
@@ -250,6 +259,9 @@ public final class Checkpoint implements Store, AutoCloseable {
         if (opened != null) {
             try {
                 opened.close();
+                if (!worth) {
+                    Files.deleteIfExists(file);
+                }
             } catch (IOException e) {
                 // nothing is lost: what was kept is in the file
             }

@@ -79,7 +79,7 @@ public final class HtmlReport {
                                 ? ""
                                 : tidy(outcome.nominal().headline())),
                 Map.entry("tables", tables(outcome)),
-                Map.entry("methods", Methods.of(result)),
+                Map.entry("methods", Methods.of(outcome)),
                 Map.entry("conventions", Methods.conventions(result.task())),
                 Map.entry("inputs", inputs(origin.tree())),
                 Map.entry(
@@ -108,18 +108,18 @@ public final class HtmlReport {
         Result result = outcome.result();
         List<Map<String, Object>> tables = new ArrayList<>();
         for (Listing listing : outcome.listings()) {
-            tables.add(table(tidy(listing.heading()), listing.name(), RowTable.listing(listing, 200)));
+            tables.add(table(tidy(listing.heading()), "rows", listing.name(), RowTable.listing(listing, 200)));
         }
         if (!result.rays().isEmpty()) {
-            tables.add(table("Rays", "rays", RowTable.rays(result.rays(), 200)));
+            tables.add(table("Rays", "rays", "rays", RowTable.rays(result.rays(), 200)));
         }
         if (!result.paths().isEmpty()) {
-            tables.add(table("Paths", "paths", RowTable.paths(result.paths(), 200)));
+            tables.add(table("Paths", "paths", "paths", RowTable.paths(result.paths(), 200)));
         }
         return tables;
     }
 
-    private static Map<String, Object> table(String heading, String what, RowTable table) {
+    private static Map<String, Object> table(String heading, String what, String file, RowTable table) {
         List<Map<String, Object>> rows = table.rows().stream()
                 .map(cells -> Map.<String, Object>of(
                         "cells", cells.stream().map(HtmlReport::typeset).toList()))
@@ -134,7 +134,7 @@ public final class HtmlReport {
                 "more",
                 table.left() == 0
                         ? ""
-                        : "And " + table.left() + " more " + what + ": see " + what + ".csv or result.json.",
+                        : "And " + table.left() + " more " + what + ": see " + file + ".csv or result.json.",
                 "notes",
                 table.notes().stream().map(HtmlReport::tidy).toList());
     }

@@ -14,15 +14,35 @@ import org.stillpath.task.Table;
  * @param nominal the task's own result at the job's own values
  * @param findings what the studies found; empty for a job without one
  * @param doc the part {@code study} of the result document
+ * @param result the nominal result with the studies' answer, tables, figures and warnings added to its own
  */
-public record Outcome(Result nominal, List<Finding> findings, Doc.Fields doc) {
+public record Outcome(Result nominal, List<Finding> findings, Doc.Fields doc, Result result) {
     public Outcome {
         findings = List.copyOf(findings);
     }
 
     /** A result without a study. */
     public static Outcome of(Result result) {
-        return new Outcome(result, List.of(), Doc.Fields.none());
+        return new Outcome(result, List.of(), Doc.Fields.none(), result);
+    }
+
+    /** A result with its studies. */
+    static Outcome of(Result nominal, List<Finding> findings, Doc.Fields doc) {
+        List<Table> tables = new ArrayList<>(nominal.tables());
+        List<Figure> figures = new ArrayList<>();
+        Set<String> warnings = new LinkedHashSet<>(nominal.warnings());
+        boolean accurate = nominal.accuracyReached();
+        for (Finding f : findings) {
+            f.listings().forEach(l -> tables.add(l.table()));
+            figures.addAll(f.figures());
+            warnings.addAll(f.warnings());
+            accurate &= f.accurate();
+        }
+        figures.addAll(nominal.figures());
+        String headline =
+                String.join(". ", findings.stream().map(Finding::headline).toList());
+        return new Outcome(
+                nominal, findings, doc, nominal.with(headline, tables, figures, List.copyOf(warnings), accurate));
     }
 
     /** Tables of the studies. */
@@ -35,35 +55,5 @@ public record Outcome(Result nominal, List<Finding> findings, Doc.Fields doc) {
         return findings.isEmpty()
                 ? List.of(nominal.headline())
                 : findings.stream().map(Finding::headline).toList();
-    }
-
-    /** The nominal result with the studies' answer, tables, figures and warnings added to its own. */
-    public Result result() {
-        if (findings.isEmpty()) {
-            return nominal;
-        }
-        List<Table> tables = new ArrayList<>(nominal.tables());
-        List<Figure> figures = new ArrayList<>();
-        Set<String> warnings = new LinkedHashSet<>(nominal.warnings());
-        boolean accurate = nominal.accuracyReached();
-        for (Finding f : findings) {
-            f.listings().forEach(l -> tables.add(l.table()));
-            figures.addAll(f.figures());
-            warnings.addAll(f.warnings());
-            accurate &= f.accurate();
-        }
-        figures.addAll(nominal.figures());
-        return new Result(
-                nominal.task(),
-                nominal.title(),
-                String.join(". ", headlines()),
-                nominal.quantities(),
-                nominal.rays(),
-                nominal.paths(),
-                tables,
-                figures,
-                List.copyOf(warnings),
-                nominal.cautions(),
-                accurate);
     }
 }

@@ -80,11 +80,13 @@ public final class Studies {
         Order order = read(job, new RememberedSources(sources, fingerprint));
         MediaMemory memory = new MediaMemory();
         Nominal nominal = order.plan(memory);
-        means.store().open(fingerprint.text());
         Result result = nominal.plan().run(options);
         memory.keep(false);
         try (Crew crew = new Crew(means.threads(), means.store(), means.progress())) {
-            return order.outcome(nominal, result, memory, crew, options.figures());
+            Bench bench = order.bench(result, memory, crew, options.figures());
+            // only now: a job at fault leaves nothing behind
+            means.store().open(fingerprint.text());
+            return order.outcome(nominal, bench);
         }
     }
 
@@ -221,7 +223,8 @@ public final class Studies {
             return Optional.empty();
         }
 
-        Outcome outcome(Nominal nominal, Result result, MediaMemory memory, Crew crew, boolean drawn) {
+        /** The bench for the job itself; throws with what is wrong with the study in the light of the nominal result. */
+        Bench bench(Result result, MediaMemory memory, Crew crew, boolean drawn) {
             Problems wrong = new Problems();
             List<Watched> watched = watched(result, wrong);
             List<String> figures = drawn ? figures() : List.of();
@@ -230,6 +233,11 @@ public final class Studies {
                 p.plan().bind(bench, wrong);
             }
             wrong.throwIfAny();
+            return bench;
+        }
+
+        Outcome outcome(Nominal nominal, Bench bench) {
+            Result result = bench.nominal();
             List<Finding> findings = new ArrayList<>();
             Doc.Builder doc = new Doc.Builder();
             for (Planned p : plans) {
@@ -257,7 +265,7 @@ public final class Studies {
             if (!all.values().isEmpty()) {
                 doc.put("variants", all);
             }
-            return new Outcome(result, findings, doc.build());
+            return Outcome.of(result, findings, doc.build());
         }
 
         private Bench variantBench(Map.Entry<String, Node.Mapping> variant, Bench bench) {

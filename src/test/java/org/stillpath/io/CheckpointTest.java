@@ -41,6 +41,24 @@ class CheckpointTest {
         assertThat(folder.resolve(Checkpoint.NAME)).doesNotExist();
     }
 
+    /** A job at fault, or one that was stopped before its first run, leaves nothing that refuses the next. */
+    @Test
+    void leavesNothingWhereNothingWasKept(@TempDir Path folder) throws IOException {
+        try (Checkpoint c = Checkpoint.in(folder)) {
+            c.open("abc");
+        }
+        assertThat(folder.resolve(Checkpoint.NAME)).doesNotExist();
+        Files.writeString(folder.resolve(Checkpoint.NAME), "stillpath study 1\nab\n");
+        try (Checkpoint c = Checkpoint.in(folder)) {
+            c.open("xyz");
+            c.add("sweep", FIRST);
+        }
+        try (Checkpoint c = Checkpoint.in(folder)) {
+            c.open("xyz");
+            assertThat(c.parts("sweep")).containsExactly(FIRST);
+        }
+    }
+
     /** Cut at every byte, as a process killed while writing leaves it: whole records stay, and more can be added. */
     @Test
     void survivesBeingCutAnywhere(@TempDir Path folder) throws IOException {
