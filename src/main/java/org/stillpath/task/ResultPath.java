@@ -68,7 +68,7 @@ public final class ResultPath {
         return String.join("-", said).replaceAll("[^A-Za-z0-9-]", "");
     }
 
-    /** The number in a result; empty where the result has none there. */
+    /** The number in a result; empty where the result has none there, or where its ray did not arrive. */
     public Optional<Found> find(Result result) {
         return switch (parts.get(0)) {
             case "quantities" -> quantity(result.quantities().get(parts.get(1)));
@@ -109,6 +109,10 @@ public final class ResultPath {
 
     private Optional<Found> ray(RayRow r) {
         String key = parts.get(2);
+        if (!r.status().equals("arrived")) {
+            // where a clipped ray ended is another thing than where it would have arrived
+            return Optional.empty();
+        }
         double error = r.errors().getOrDefault(key, 0.0);
         return switch (key) {
             case "position" -> component(r.position(), "m", error);

@@ -191,6 +191,29 @@ class StudiesTest {
         assertThat(o.result().warnings().toString()).contains("could not be computed");
     }
 
+    /** Where a clipped ray ended is no value of where it arrives. */
+    @Test
+    void aClippedRayGivesNoResult() {
+        Outcome o = Studies.run(read("""
+                        task: trace
+                        train: {from: vacuum, surfaces: [{at: 0 mm, action: stop, aperture: 1 mm}]}
+                        rays: [{from: [0, 0.5 mm, -5 mm], direction: [0, 0, 1]}]
+                        stop-at: {z: 10 mm}
+                        study:
+                          sweep: {rays.0.from.1: {from: 0 mm, to: 2 mm, count: 5}}
+                          watch: [rays.0.position.1]
+                        """), Sources.none(), new Tasks.Options(false), Studies.Means.plain());
+        double[] wanted = {0, 0.5e-3, 1e-3, Double.NaN, Double.NaN};
+        for (int i = 0; i < 5; i++) {
+            double got = ((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "results")).values()[0];
+            if (i != 2) {
+                // the third ray grazes the rim
+                assertThat(Double.valueOf(got)).isEqualTo(Double.valueOf(wanted[i]));
+            }
+        }
+        assertThat(o.result().warnings().toString()).contains("have no rays 0 position 1");
+    }
+
     private static final String FIT = """
             study:
               fit:
@@ -423,7 +446,7 @@ class StudiesTest {
 
     private static Outcome batch(String head, String... rows) {
         List<Cells.Header> headers = new ArrayList<>();
-        for (String h : head.split(",")) {
+        for (String h : head.split(",", -1)) {
             int open = h.indexOf(" [");
             headers.add(new Cells.Header(
                     open < 0 ? h : h.substring(0, open),
