@@ -54,7 +54,23 @@ final class MultipleShooting {
             double length,
             double residual,
             double[] points,
-            double[] errors) {}
+            double[] errors) {
+        /** A path that needs no mending: one ray. */
+        static Mended of(Traced ray, Passage passage) {
+            return new Mended(
+                    passage.direction(),
+                    ray.direction(),
+                    ray.opticalLength(),
+                    ray.length(),
+                    passage.miss(),
+                    ray.trail(),
+                    new double[] {
+                        ray.errors().opticalLength(),
+                        ray.errors().length(),
+                        ray.errors().direction()
+                    });
+        }
+    }
 
     private MultipleShooting(PathSearch.Query query, Optional<Vector> normal) {
         this.variation = new SecondVariation(query.train(), query.from(), normal);

@@ -49,15 +49,8 @@ record Passage(
             double later = -(q.dot(p) + off.dot(m)) / along;
             by[c] = q.plus(later, p).times(n);
         }
-        Vector[] start = vectors(columns.axes(first[3], first[4], first[5]));
-        Vector[] end = vectors(columns.axes(y[3], y[4], y[5]));
-        return new Passage(direction, which, off, by[0], by[1], start, p.unit(), end, ray.length());
-    }
-
-    private static Vector[] vectors(double[][] axes) {
-        return new Vector[] {
-            new Vector(axes[0][0], axes[0][1], axes[0][2]), new Vector(axes[1][0], axes[1][1], axes[1][2])
-        };
+        Vector[] start = columns.across(new Vector(first[3], first[4], first[5]));
+        return new Passage(direction, which, off, by[0], by[1], start, p.unit(), columns.across(p), ray.length());
     }
 
     /** What it misses the target by, metres. */

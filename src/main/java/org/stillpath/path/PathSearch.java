@@ -281,9 +281,7 @@ public final class PathSearch {
             double inPlane = Math.abs(best.slope()[0]);
             sizes = new double[] {inPlane, inPlane};
         }
-        // what a unit turn of the launch would miss by in a uniform medium is the scale; not the larger value, which
-        // grows
-        // without bound where rays part
+        // the scale is what a unit turn would miss by in a uniform medium, not the larger value, which has no bound
         double scale = NULL_DIRECTION * best.length();
         int nullDirections = sizes[0] >= scale ? 0 : sizes[1] >= scale || query.confined() ? 1 : 2;
         boolean degenerate = nullDirections > 0;
@@ -299,38 +297,20 @@ public final class PathSearch {
         StationaryPath.Kind kind = degenerate
                 ? StationaryPath.Kind.DEGENERATE
                 : index == 0 ? StationaryPath.Kind.MINIMUM : StationaryPath.Kind.SADDLE;
-        if (mended.isPresent()) {
-            MultipleShooting.Mended m = mended.get();
-            return new StationaryPath(
-                    m.opticalLength(),
-                    m.length(),
-                    m.launch(),
-                    m.arrival(),
-                    kind,
-                    index,
-                    counts.map(SecondVariation.Counts::negative).orElse(index),
-                    nullDirections,
-                    before.stream().mapToDouble(Double::doubleValue).toArray(),
-                    counts.map(SecondVariation.Counts::overInterfaces).orElse(StationaryPath.Kind.NONE),
-                    m.residual(),
-                    m.points(),
-                    m.errors());
-        }
+        MultipleShooting.Mended whole = mended.orElseGet(() -> MultipleShooting.Mended.of(t, best));
         return new StationaryPath(
-                t.opticalLength(),
-                t.length(),
-                best.direction(),
-                t.direction(),
+                whole.opticalLength(),
+                whole.length(),
+                whole.launch(),
+                whole.arrival(),
                 kind,
                 index,
                 counts.map(SecondVariation.Counts::negative).orElse(index),
                 nullDirections,
                 before.stream().mapToDouble(Double::doubleValue).toArray(),
                 counts.map(SecondVariation.Counts::overInterfaces).orElse(StationaryPath.Kind.NONE),
-                best.miss(),
-                t.trail(),
-                new double[] {
-                    t.errors().opticalLength(), t.errors().length(), t.errors().direction()
-                });
+                whole.residual(),
+                whole.points(),
+                whole.errors());
     }
 }

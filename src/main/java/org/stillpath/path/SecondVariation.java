@@ -258,8 +258,8 @@ final class SecondVariation {
         double[] g = ray.force();
         Vector p = momentum(y);
         Vector force = new Vector(g[0], g[1], g[2]);
-        Vector[] startAxes = vectors(columns.axes(first[3], first[4], first[5]));
-        Vector[] endAxes = vectors(columns.axes(y[3], y[4], y[5]));
+        Vector[] startAxes = columns.across(momentum(first));
+        Vector[] endAxes = columns.across(p);
         double[][][] blocks = new double[4][2][2];
         for (int c = 0; c < 4; c++) {
             int at = State.COLUMNS + State.COLUMN * c;
@@ -276,12 +276,6 @@ final class SecondVariation {
         Vector startForce = new Vector(sample.gx[0], sample.gy[0], sample.gz[0]);
         return new Piece(
                 blocks[0], blocks[1], blocks[3], startAxes, endAxes, momentum(first), p, startForce, force, blocks[2]);
-    }
-
-    private static Vector[] vectors(double[][] axes) {
-        return new Vector[] {
-            new Vector(axes[0][0], axes[0][1], axes[0][2]), new Vector(axes[1][0], axes[1][1], axes[1][2])
-        };
     }
 
     /** Pieces that follow each other as one. */

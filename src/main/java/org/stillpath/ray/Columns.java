@@ -50,6 +50,12 @@ public record Columns(boolean acrossRay, boolean places, boolean conjugates, Vec
         return normal.x() != 0 || normal.y() != 0 || normal.z() != 0;
     }
 
+    /** {@link #axes} of the direction of a momentum, as vectors. */
+    public Vector[] across(Vector momentum) {
+        double[][] a = axes(momentum.x(), momentum.y(), momentum.z());
+        return new Vector[] {new Vector(a[0][0], a[0][1], a[0][2]), new Vector(a[1][0], a[1][1], a[1][2])};
+    }
+
     /** Two unit vectors across a momentum and each other, the first in the plane of symmetry where one is given. */
     public double[][] axes(double px, double py, double pz) {
         if (planar()) {
