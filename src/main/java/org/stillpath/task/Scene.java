@@ -27,6 +27,7 @@ import org.stillpath.unit.Kind;
  * @param train the train; absent where one medium is everywhere
  * @param through the medium that is everywhere; absent where there is a train
  * @param figures names of the figures asked for; absent: the task's usual ones
+ * @param sources files that the job may name
  */
 public record Scene(
         String title,
@@ -35,7 +36,8 @@ public record Scene(
         double accuracy,
         Optional<TrainPlan> train,
         Optional<Medium> through,
-        Optional<List<Value>> figures) {
+        Optional<List<Value>> figures,
+        Sources sources) {
     /** The helium d line, the usual reference of catalogues, for jobs that name no wavelength. */
     private static final double D_LINE = 587.5618e-9;
 
@@ -120,7 +122,8 @@ public record Scene(
                 accuracy,
                 train,
                 through,
-                job.find("figures").map(Value::items));
+                job.find("figures").map(Value::items),
+                sources);
     }
 
     private static double[] wavelengths(Value value) {
