@@ -7,7 +7,6 @@ import java.util.Optional;
 import org.apache.commons.math3.analysis.integration.gauss.GaussIntegratorFactory;
 import org.apache.commons.math3.util.Pair;
 import org.stillpath.medium.IndexField;
-import org.stillpath.medium.Seam;
 
 /**
  * The second method for sights through air that depends on the height alone: Bouguer's invariant n·r·cos e = C makes the
@@ -66,23 +65,7 @@ public final class Bouguer {
         if (!field.ofHeightAlone()) {
             return Optional.empty();
         }
-        List<Double> knots = new ArrayList<>();
-        double[] gradient = new double[3];
-        for (Seam seam : field.seams()) {
-            // a seam of a field of height alone is a function of height: its knots are found along z, where it is one
-            double at0 = seam.coordinate().value(0, 0, 0, gradient);
-            double at1 = seam.coordinate().value(0, 0, 1, gradient);
-            if (Math.abs(at0) < 1e-9 && Math.abs(at1 - 1) < 1e-9) {
-                Arrays.stream(seam.knots()).forEach(knots::add);
-            }
-        }
-        return Optional.of(new Bouguer(
-                new HeightProfile(field, radius, 0),
-                knots.stream()
-                        .mapToDouble(Double::doubleValue)
-                        .sorted()
-                        .distinct()
-                        .toArray()));
+        return Optional.of(new Bouguer(new HeightProfile(field, radius, 0), HeightProfile.knots(field)));
     }
 
     /**

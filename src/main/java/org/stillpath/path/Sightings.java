@@ -55,12 +55,18 @@ public final class Sightings {
     private final EarthChart chart;
     private final double accuracy;
     private final Train train;
+    private final double[] knots;
+    /** The table of the search; made when first asked for, by several threads perhaps, each as good as the other. */
+    private volatile Optional<LayerTable> table = Optional.empty();
+
+    private volatile double[] tabulated = {Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY};
 
     private Sightings(IndexField field, EarthChart chart, double accuracy) {
         this.field = field;
         this.chart = chart;
         this.accuracy = accuracy;
         this.train = Train.through(new OverGround(field, chart, SUNK));
+        this.knots = HeightProfile.knots(field);
     }
 
     /**
@@ -187,6 +193,24 @@ public final class Sightings {
         boolean arrived() {
             return status == Status.ARRIVED;
         }
+    }
+
+    /** The table of the air from one height to another; empty where the air depends on more. */
+    private Optional<LayerTable> table(double low, double high) {
+        if (!field.ofHeightAlone() || field.uniform()) {
+            return Optional.empty();
+        }
+        Optional<LayerTable> known = table;
+        double[] covered = tabulated;
+        if (known.isPresent() && covered[0] <= low && covered[1] >= high) {
+            return known;
+        }
+        double from = Math.min(covered[0], low - 1);
+        double until = Math.max(covered[1], Math.max(2 * high, 100));
+        Optional<LayerTable> made = LayerTable.of(field, chart.radius(), knots, from, until);
+        tabulated = new double[] {from, until};
+        table = made;
+        return made;
     }
 
     /** Finds the images of a target and what else is seen where it stands. */
@@ -479,22 +503,37 @@ public final class Sightings {
         private final Tracer quick;
         private final List<Sample> samples = new ArrayList<>();
         private final List<Duct> ducts = new ArrayList<>();
+        private final Optional<LayerShot> layered;
         private int shots;
         private String note = "";
 
         Search(Chord chord) {
             this.chord = chord;
+            double top = Math.max(chord.fromHeight(), chord.toHeight()) + 2 * UP * chord.distance();
+            double bottom = Math.min(lowestGround(chord.distance()), Math.min(chord.fromHeight(), chord.toHeight()));
+            this.layered = table(bottom - SUNK, top)
+                    .filter(t -> t.low() <= chord.fromHeight() && t.high() >= chord.fromHeight())
+                    .map(t -> new LayerShot(t, chart.ground(), SUNK, chord.distance()));
             this.quick = tracer(new Ending.AtVertical(chart, chord.distance()), true, false);
         }
 
         Outcome run() {
             double[] angles = fan();
             FanSearch.Outcome found = FanSearch.run(this::shot, angles, chord.distance(), accuracy);
-            samples.sort(Comparator.comparingDouble(Sample::angle));
             List<Sighting> images = new ArrayList<>();
             for (FanSearch.Root root : found.roots()) {
-                polish(root).filter(s -> isNew(images, s)).ifPresent(images::add);
+                Optional<Sighting> image = polish(root);
+                if (image.isEmpty() && layered.isPresent()) {
+                    again(root.angle()).stream().filter(s -> isNew(images, s)).forEach(images::add);
+                }
+                image.filter(s -> isNew(images, s)).ifPresent(images::add);
             }
+            if (layered.isPresent()) {
+                for (double angle : jumps(found)) {
+                    again(angle).stream().filter(s -> isNew(images, s)).forEach(images::add);
+                }
+            }
+            samples.sort(Comparator.comparingDouble(Sample::angle));
             images.sort(Comparator.comparingDouble(Sighting::launch).reversed());
             List<double[]> transfer = new ArrayList<>();
             for (Sample s : samples) {
@@ -514,7 +553,67 @@ public final class Sightings {
                     transfer.isEmpty() ? note : "");
         }
 
+        /** Elevations across which the height jumps past the target's: the table's own, which cannot tell a jump from a rush. */
+        private List<Double> jumps(FanSearch.Outcome found) {
+            List<Double> list = new ArrayList<>();
+            List<FanSearch.Shot> shot = found.samples();
+            for (int i = 1; i < shot.size(); i++) {
+                FanSearch.Shot a = shot.get(i - 1);
+                FanSearch.Shot b = shot.get(i);
+                if (b.angle() - a.angle() < 1e-12 && a.miss()[0] * b.miss()[0] < 0) {
+                    double e = 0.5 * (a.angle() + b.angle());
+                    boolean known = found.roots().stream().anyMatch(r -> Math.abs(r.angle() - e) < 1e-12);
+                    boolean near = !list.isEmpty() && e - list.get(list.size() - 1) < 1e-10;
+                    if (!known && !near) {
+                        list.add(e);
+                    }
+                }
+            }
+            return list;
+        }
+
+        /**
+         * Searches with the air itself about a root of the table's that does not hold with the air: where the height depends so
+         * steeply on the elevation that the table's roundings move the root.
+         */
+        private List<Sighting> again(double e) {
+            TreeSet<Double> angles = new TreeSet<>();
+            for (int i = 8; i <= 30; i++) {
+                double off = Math.max(Math.abs(e), 1e-6) * Math.pow(10, -0.5 * i);
+                angles.add(e - off);
+                angles.add(e + off);
+            }
+            angles.add(e);
+            FanSearch.Outcome found = FanSearch.run(
+                    this::traced,
+                    angles.stream().mapToDouble(Double::doubleValue).toArray(),
+                    chord.distance(),
+                    accuracy);
+            List<Sighting> images = new ArrayList<>();
+            for (FanSearch.Root r : found.roots()) {
+                polish(r).ifPresent(images::add);
+            }
+            return images;
+        }
+
         private FanSearch.Shot shot(double angle, double tolerance) {
+            if (layered.isEmpty() || Math.abs(angle) > 1) {
+                return traced(angle, tolerance);
+            }
+            shots++;
+            LayerShot ray = layered.get();
+            Status status = ray.to(chord.fromHeight(), angle, tolerance);
+            if (status != Status.ARRIVED) {
+                samples.add(new Sample(angle, Double.NaN, Double.NaN, status));
+                note = status == Status.GROUNDED ? "the ray meets the ground" : "the ray leaves the air that is known";
+                return new FanSearch.Shot(angle, new double[] {Double.NaN}, new double[] {Double.NaN});
+            }
+            samples.add(new Sample(angle, ray.height(), ray.slope(), status));
+            return new FanSearch.Shot(
+                    angle, new double[] {ray.height() - chord.toHeight()}, new double[] {ray.slope()});
+        }
+
+        private FanSearch.Shot traced(double angle, double tolerance) {
             shots++;
             Traced t = quick.glance(start(chord.fromHeight(), angle), tolerance);
             if (t.status() != Status.ARRIVED) {
@@ -660,18 +759,11 @@ public final class Sightings {
                 list.add(h1 + (top - h1) * i * i / 256.0);
                 list.add(h1 - (h1 - bottom) * i * i / 256.0);
             }
-            double[] gradient = new double[3];
-            for (var seam : field.seams()) {
-                double at0 = seam.coordinate().value(0, 0, 0, gradient);
-                double at1 = seam.coordinate().value(0, 0, 1, gradient);
-                if (Math.abs(at0) < 1e-9 && Math.abs(at1 - 1) < 1e-9 && seam.count() < 200) {
-                    for (double k : seam.knots()) {
-                        if (k > bottom && k < top) {
-                            list.add(k);
-                            list.add(k + 1e-6 * (1 + Math.abs(k)));
-                            list.add(k - 1e-6 * (1 + Math.abs(k)));
-                        }
-                    }
+            if (knots.length < 200) {
+                for (double k : knots) {
+                    list.add(k);
+                    list.add(k + 1e-6 * (1 + Math.abs(k)));
+                    list.add(k - 1e-6 * (1 + Math.abs(k)));
                 }
             }
             return list.stream()
