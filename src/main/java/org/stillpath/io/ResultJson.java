@@ -197,6 +197,9 @@ public final class ResultJson {
         vector("arrival-direction", path.arrival());
         json.writeStringField("kind", path.kind());
         json.writeNumberField("morse-index", path.morseIndex());
+        if (path.nullDirections() > 0) {
+            json.writeNumberField("null-directions", path.nullDirections());
+        }
         numbers("conjugate-points", path.conjugatePoints());
         if (!path.overInterfaces().isEmpty()) {
             json.writeStringField("over-interfaces", path.overInterfaces());

@@ -1,6 +1,7 @@
 package org.stillpath.path;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
@@ -28,16 +29,16 @@ final class ConeSearch {
     /** Rings crowd toward the axis down to this angle, rad: long sights through layers have all their images there. */
     private static final double INNERMOST = 1e-4;
 
-    private static final int MOST_SHOTS = 20_000;
     private static final int DEEPEST = 16;
     /** From this depth on only derivatives decide what is left, so that jumps are not followed along their whole length. */
     private static final int DEEP = 3;
     /** How well the middles of sides must be predicted, as a part of how much the misses change. */
-    private static final double PREDICTED = 0.03;
+    private static final double PREDICTED = 0.01;
+
     /** Most that the map's determinant may vary over a triangle with one zero. */
     private static final double VARIATION = 4;
 
-    private static final double LOOSE = 1e-7;
+    private static final double LOOSE = 1e-6;
     private static final double TIGHT = 1e-10;
     /** A step of Newton's method turns the launch by no more than this, rad. */
     private static final double LONGEST_TURN = 0.3;
@@ -186,8 +187,8 @@ final class ConeSearch {
                 swing = Math.max(swing, change);
             }
         }
-        swing *= t.depth < DEEP ? 1 : 2;
-        if (arriving == 0 || nearest > swing + 1e-9 * chord || gun.shots() > MOST_SHOTS || size < 1e-12) {
+        swing *= t.depth < DEEP ? 1.5 : 2;
+        if (arriving == 0 || nearest > swing + 1e-9 * chord || gun.shots() > PathSearch.MOST_SHOTS || size < 1e-12) {
             return;
         }
         if (arriving == 3 && farthest < LOOSE * chord) {
@@ -216,15 +217,14 @@ final class ConeSearch {
             most = Math.max(most, Math.abs(det));
             positive += det > 0 ? 1 : 0;
         }
-        boolean single = complete
-                && (positive == 0 || positive == all.length)
-                && most < VARIATION * least
+        boolean smooth = complete
                 && predicted(t.a, ab, t.b, branch)
                 && predicted(t.b, bc, t.c, branch)
                 && predicted(t.c, ca, t.a, branch);
-        if (best == null) {
+        if (best == null || (smooth && excluded(all, branch, swing))) {
             return;
         }
+        boolean single = smooth && (positive == 0 || positive == all.length) && most < VARIATION * least;
         if (single || t.depth >= DEEPEST) {
             if (best.turn().norm() < 2 * size) {
                 newton(best).ifPresent(this::keep);
@@ -246,6 +246,45 @@ final class ConeSearch {
         look(new Triangle(ab, t.b, bc, t.depth + 1), branch);
         look(new Triangle(ca, bc, t.c, t.depth + 1), branch);
         look(new Triangle(ab, bc, ca, t.depth + 1), branch);
+    }
+
+    /**
+     * Whether the quadratic through six nodes of a triangle has no zero in it: it lies in the convex hull of its Bézier points, and
+     * the hull leaves out the origin if these are seen from there within less than half a turn.
+     *
+     * @param nodes corners, then middles of the sides from the first to the second corner and on
+     */
+    private static boolean excluded(Node[] nodes, int branch, double swing) {
+        Vector mean = Vector.ZERO;
+        for (Node n : nodes) {
+            mean = mean.plus(n.passages.get(branch).arrival());
+        }
+        if (!(mean.norm() > 4)) {
+            return false;
+        }
+        Vector u = mean.unit().perpendicular();
+        Vector v = mean.unit().cross(u);
+        double[] angles = new double[nodes.length];
+        for (int i = 0; i < nodes.length; i++) {
+            Vector q = nodes[i].passages.get(branch).off();
+            if (i >= 3) {
+                Vector a = nodes[i - 3].passages.get(branch).off();
+                Vector b = nodes[(i - 2) % 3].passages.get(branch).off();
+                q = q.times(2).plus(-0.5, a.plus(b));
+            }
+            double x = q.dot(u);
+            double y = q.dot(v);
+            if (Math.hypot(x, y) < PREDICTED * swing) {
+                return false;
+            }
+            angles[i] = Math.atan2(y, x);
+        }
+        Arrays.sort(angles);
+        double gap = angles[0] + 2 * Math.PI - angles[angles.length - 1];
+        for (int i = 1; i < angles.length; i++) {
+            gap = Math.max(gap, angles[i] - angles[i - 1]);
+        }
+        return gap > Math.PI + 2 * PREDICTED;
     }
 
     /** Whether a cubic along a side predicts the miss at its middle. */

@@ -22,11 +22,10 @@ public final class FanSearch {
     /** Least width to which an interval is split, rad. */
     private static final double NARROWEST = 1e-13;
 
-    private static final int MOST_SHOTS = 20_000;
     /** How well a cubic must predict the middle, as a part of how much the misses change. */
-    private static final double PREDICTED = 1e-3;
+    private static final double PREDICTED = 1e-2;
     /** Tolerance at which the fan is shot, and at which zeros are narrowed. */
-    private static final double LOOSE = 1e-7;
+    private static final double LOOSE = 1e-6;
 
     private static final double TIGHT = 1e-10;
     /** What a narrowed zero may miss by, as a part of the scale; what misses by more was a jump. */
@@ -131,7 +130,7 @@ public final class FanSearch {
         boolean here = a.arrives(branch);
         boolean there = b.arrives(branch);
         double h = b.angle - a.angle;
-        if ((!here && !there) || h < NARROWEST || shots > MOST_SHOTS) {
+        if ((!here && !there) || h < NARROWEST || shots > PathSearch.MOST_SHOTS) {
             return;
         }
         double middle = 0.5 * (a.angle + b.angle);
@@ -180,7 +179,7 @@ public final class FanSearch {
         // the parabola with these slopes turns there
         double t = sa / (sa - sb);
         double turning = 0.5 * (ma + mb) + 0.125 * h * (sa - sb) - 0.5 * h * (sb - sa) * (t - 0.5) * (t - 0.5);
-        double doubt = 10 * PREDICTED * (Math.abs(mb - ma) + h * (Math.abs(sa) + Math.abs(sb))) + 10 * LOOSE * scale;
+        double doubt = 3 * PREDICTED * (Math.abs(mb - ma) + h * (Math.abs(sa) + Math.abs(sb))) + 10 * LOOSE * scale;
         if (turning * ma > 0 && Math.abs(turning) > doubt) {
             return;
         }

@@ -45,15 +45,14 @@ final class Gun {
     /** The passages of the ray in a direction, none where it ends before the first. */
     List<Passage> shoot(Vector direction, double tolerance) {
         shots++;
-        List<Traced> rays = scout.passages(RayStart.of(from, direction), tolerance);
-        evaluations += rays.get(rays.size() - 1).evaluations();
-        if (rays.get(0).status() != Status.ARRIVED) {
-            ended.merge(rays.get(0).status(), 1, Integer::sum);
-            return List.of();
+        Tracer.Passing ray = scout.passages(RayStart.of(from, direction), tolerance);
+        evaluations += ray.end().evaluations();
+        if (ray.passages().isEmpty()) {
+            ended.merge(ray.end().status(), 1, Integer::sum);
         }
-        List<Passage> list = new ArrayList<>(rays.size());
-        for (Traced ray : rays) {
-            list.add(Passage.of(direction, list.size() + 1, ray, to, columns));
+        List<Passage> list = new ArrayList<>(ray.passages().size());
+        for (Traced t : ray.passages()) {
+            list.add(Passage.of(direction, list.size() + 1, t, to, columns));
         }
         return list;
     }

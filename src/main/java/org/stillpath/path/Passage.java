@@ -42,7 +42,7 @@ record Passage(
         double along = p.dot(p) + off.dot(force);
         Vector[] by = new Vector[2];
         for (int c = 0; c < 2; c++) {
-            int at = State.COLUMNS + State.COLUMN * (2 + c);
+            int at = State.COLUMNS + State.COLUMN * (State.columns(y) - 2 + c);
             Vector q = new Vector(y[at], y[at + 1], y[at + 2]);
             Vector m = new Vector(y[at + 3], y[at + 4], y[at + 5]);
             // how much later the neighbour is nearest

@@ -23,10 +23,13 @@ import org.stillpath.ray.Train;
  * variation is counted twice ({@link SecondVariation}).
  */
 public final class PathSearch {
+    /** Most rays of a search. */
+    static final int MOST_SHOTS = 20_000;
+
     private static final int FAN = 16;
     private static final double NULL_DIRECTION = 1e-6;
     /** The fan crowds toward its axis down to this angle, rad. */
-    private static final double INNERMOST = 1e-6;
+    private static final double INNERMOST = 1e-5;
 
     private final Query query;
     private final double chord;
@@ -106,6 +109,7 @@ public final class PathSearch {
                 search.roots.add(new Root(p.direction(), p.which()));
             }
         }
+        boolean exhausted = search.gun.shots() > MOST_SHOTS;
         List<StationaryPath> paths = search.polished();
         return new Outcome(
                 paths,
@@ -115,7 +119,8 @@ public final class PathSearch {
                 search.samples,
                 search.gun.ended(),
                 search.gun.shots(),
-                search.gun.evaluations());
+                search.gun.evaluations(),
+                exhausted);
     }
 
     /**
@@ -129,6 +134,7 @@ public final class PathSearch {
      * @param ended how many rays ended before they passed the target, by the way they did
      * @param shots number of rays traced
      * @param evaluations number of points at which fields were sampled
+     * @param exhausted whether it stopped at its limit of rays
      */
     public record Outcome(
             List<StationaryPath> paths,
@@ -138,11 +144,17 @@ public final class PathSearch {
             List<Sample> samples,
             Map<Status, Integer> ended,
             int shots,
-            long evaluations) {
+            long evaluations,
+            boolean exhausted) {
         public Outcome {
             paths = List.copyOf(paths);
             samples = List.copyOf(samples);
             ended = Map.copyOf(ended);
+        }
+
+        /** The same with other paths. */
+        public Outcome withPaths(List<StationaryPath> others) {
+            return new Outcome(others, planar, normal, axis, samples, ended, shots, evaluations, exhausted);
         }
     }
 
@@ -217,32 +229,35 @@ public final class PathSearch {
     }
 
     private @Nullable StationaryPath polish(Root root) {
-        Columns how = query.confined() ? columns : Columns.RAY;
-        Passage best = passage(root.direction, root.passage, how);
-        for (int i = 0; i < 8 && best != null && best.miss() > 0.01 * query.accuracy * chord; i++) {
+        Columns how = (query.confined() ? columns : Columns.RAY).withConjugates();
+        Traced ray = gun.trace(root.direction, root.passage, query.accuracy, true, how);
+        if (ray.status() != Status.ARRIVED) {
+            return null;
+        }
+        Passage best = Passage.of(root.direction, root.passage, ray, query.to, how);
+        for (int i = 0; i < 8 && best.miss() > 0.1 * query.accuracy * chord; i++) {
             Vector turn = query.confined() || bound
                     ? best.turnInPlane(normal.orElseThrow().cross(best.direction()))
                     : best.turn();
             if (!(turn.norm() < 1e-2)) {
                 break;
             }
-            Passage next = passage(best.direction().plus(turn).unit(), root.passage, how);
-            if (next == null || next.miss() >= best.miss()) {
+            Vector direction = best.direction().plus(turn).unit();
+            Traced again = gun.trace(direction, root.passage, query.accuracy, true, how);
+            if (again.status() != Status.ARRIVED) {
+                break;
+            }
+            Passage next = Passage.of(direction, root.passage, again, query.to, how);
+            if (next.miss() >= best.miss()) {
                 break;
             }
             best = next;
+            ray = again;
         }
-        if (best == null
-                || best.miss() > Math.max(1e-9, 10 * query.accuracy) * chord
-                || passedBefore(best.direction(), root.passage)) {
+        if (best.miss() > Math.max(1e-9, 10 * query.accuracy) * chord || passedBefore(best.direction(), root.passage)) {
             return null;
         }
-        return described(best, how);
-    }
-
-    private @Nullable Passage passage(Vector direction, int which, Columns how) {
-        Traced t = gun.trace(direction, which, query.accuracy, false, how);
-        return t.status() == Status.ARRIVED ? Passage.of(direction, which, t, query.to, how) : null;
+        return described(best, ray);
     }
 
     /** Whether a ray reaches the target at an earlier passage, where its path has ended. */
@@ -251,8 +266,7 @@ public final class PathSearch {
                 && gun.shoot(direction, 1e-9).stream().anyMatch(p -> p.which() < passage && p.miss() < 1e-6 * chord);
     }
 
-    private StationaryPath described(Passage best, Columns how) {
-        Traced t = gun.trace(best.direction(), best.which(), query.accuracy, true, how.withConjugates());
+    private StationaryPath described(Passage best, Traced t) {
         double[] sizes = best.singular();
         if (query.confined()) {
             double inPlane = Math.abs(best.slope()[0]);
@@ -270,6 +284,8 @@ public final class PathSearch {
             }
         }
         int index = before.size();
+        Optional<SecondVariation.Counts> counts = SecondVariation.of(
+                query.train, query.from, best.direction(), t.length(), query.confined() ? normal : Optional.empty());
         StationaryPath.Kind kind = degenerate
                 ? StationaryPath.Kind.DEGENERATE
                 : index == 0 ? StationaryPath.Kind.MINIMUM : StationaryPath.Kind.SADDLE;
@@ -280,9 +296,10 @@ public final class PathSearch {
                 t.direction(),
                 kind,
                 index,
+                counts.map(SecondVariation.Counts::negative).orElse(index),
                 nullDirections,
                 before.stream().mapToDouble(Double::doubleValue).toArray(),
-                MeetingPoints.kind(query.train, t.trail(), query.confined() ? normal : Optional.empty()),
+                counts.map(SecondVariation.Counts::overInterfaces).orElse(StationaryPath.Kind.NONE),
                 best.miss(),
                 t.trail(),
                 new double[] {

@@ -12,11 +12,13 @@ import org.stillpath.geometry.Vector;
  * @param kind for the optical length among all nearby paths
  * @param morseIndex number of independent ways of bending the path that shorten it (in its plane alone, where the search was
  *     confined to one)
+ * @param reducedIndex the same number, counted by the inertia of the reduced second variation instead of conjugate points;
+ *     the same where it cannot be counted so, behind an ideal thin lens
  * @param nullDirections number of independent ways of bending it that leave it equally long to second order: 0 unless it is
  *     degenerate
  * @param conjugates geometric lengths from the start to the points conjugate to it before the target, metres
  * @param overInterfaces the same question asked of the meeting points with surfaces alone; {@link Kind#NONE} where the path
- *     meets none, or is curved
+ *     meets none, or an ideal thin lens
  * @param residual distance at which it misses the target, metres
  * @param points places passed, x, y, z triples, metres
  * @param errors estimated errors of optical length, length (metres) and of the directions (rad)
@@ -28,6 +30,7 @@ public record StationaryPath(
         Vector arrival,
         Kind kind,
         int morseIndex,
+        int reducedIndex,
         int nullDirections,
         double[] conjugates,
         Kind overInterfaces,

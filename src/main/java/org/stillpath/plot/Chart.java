@@ -2,21 +2,22 @@ package org.stillpath.plot;
 
 import java.awt.BasicStroke;
 import java.awt.Color;
+import java.awt.Graphics2D;
 import java.awt.Stroke;
 import java.awt.geom.Rectangle2D;
-import java.math.BigDecimal;
-import java.text.FieldPosition;
-import java.text.NumberFormat;
-import java.text.ParsePosition;
+import java.util.ArrayList;
 import java.util.List;
 import org.jfree.chart.JFreeChart;
 import org.jfree.chart.axis.AxisSpace;
+import org.jfree.chart.axis.AxisState;
 import org.jfree.chart.axis.NumberAxis;
-import org.jfree.chart.axis.NumberTickUnit;
+import org.jfree.chart.axis.NumberTick;
 import org.jfree.chart.plot.SeriesRenderingOrder;
 import org.jfree.chart.plot.XYPlot;
 import org.jfree.chart.renderer.xy.XYLineAndShapeRenderer;
+import org.jfree.chart.ui.RectangleEdge;
 import org.jfree.chart.ui.RectangleInsets;
+import org.jfree.chart.ui.TextAnchor;
 import org.jfree.data.xy.XYSeries;
 import org.jfree.data.xy.XYSeriesCollection;
 
@@ -87,10 +88,9 @@ final class Chart {
     }
 
     private static NumberAxis axis(Scale scale, double low, double high) {
-        NumberAxis axis = new NumberAxis();
+        NumberAxis axis = new Ruled(scale);
         axis.setAutoRangeIncludesZero(false);
         axis.setRange(low / scale.unitSize(), high / scale.unitSize());
-        axis.setTickUnit(new NumberTickUnit(scale.step().doubleValue(), new House(scale.step())), false, true);
         axis.setTickLabelFont(Sheet.face());
         axis.setLabelFont(Sheet.face());
         Color ink = new Color(Ink.INK.rgb());
@@ -116,28 +116,27 @@ final class Chart {
                 : new BasicStroke((float) pen.width(), BasicStroke.CAP_BUTT, BasicStroke.JOIN_ROUND, 10, dashes, 0);
     }
 
-    /** Writes tick labels as the house writes numbers. */
-    private static final class House extends NumberFormat {
+    /** An axis with the ticks of a scale, wherever they stand, and their words. */
+    private static final class Ruled extends NumberAxis {
         private static final long serialVersionUID = 1L;
-        private final BigDecimal step;
+        private final transient Scale scale;
 
-        House(BigDecimal step) {
-            this.step = step;
+        Ruled(Scale scale) {
+            this.scale = scale;
         }
 
         @Override
-        public StringBuffer format(double number, StringBuffer to, FieldPosition position) {
-            return to.append(Scale.plain(BigDecimal.valueOf(number), Math.max(step.scale(), 0)));
-        }
-
-        @Override
-        public StringBuffer format(long number, StringBuffer to, FieldPosition position) {
-            return format((double) number, to, position);
-        }
-
-        @Override
-        public Number parse(String text, ParsePosition position) {
-            throw new UnsupportedOperationException("tick labels are only written");
+        @SuppressWarnings("rawtypes")
+        public List refreshTicks(Graphics2D g2, AxisState state, Rectangle2D area, RectangleEdge edge) {
+            TextAnchor anchor = RectangleEdge.isTopOrBottom(edge) ? TextAnchor.TOP_CENTER : TextAnchor.CENTER_RIGHT;
+            List<NumberTick> ticks = new ArrayList<>();
+            for (Scale.Tick t : scale.ticks()) {
+                double at = t.at() / scale.unitSize();
+                if (getRange().contains(at)) {
+                    ticks.add(new NumberTick(at, t.text(), anchor, anchor, 0));
+                }
+            }
+            return ticks;
         }
     }
 }

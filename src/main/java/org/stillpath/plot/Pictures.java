@@ -1,5 +1,6 @@
 package org.stillpath.plot;
 
+import org.stillpath.task.CurveFigure;
 import org.stillpath.task.Figure;
 import org.stillpath.task.SectionFigure;
 
@@ -17,6 +18,9 @@ public final class Pictures {
     public static Picture of(Figure figure, Width width) {
         if (figure instanceof SectionFigure section) {
             return new SectionDrawing(section, width).picture();
+        }
+        if (figure instanceof CurveFigure curves) {
+            return new CurveDrawing(curves, width).picture();
         }
         throw new IllegalArgumentException("figure " + figure.name() + " is of a kind that nothing draws: "
                 + figure.getClass().getSimpleName());

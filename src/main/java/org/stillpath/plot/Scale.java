@@ -6,18 +6,22 @@ import java.util.ArrayList;
 import java.util.List;
 
 /**
- * A length scale: a readable unit and ticks at round values.
+ * A scale of an axis: a readable unit and ticks with their words. Ticks stand at round values.
  *
- * @param unitIndex place of the unit in the table of units
- * @param step from tick to tick, in that unit
+ * @param in the unit
  * @param ticks from below
  */
-record Scale(int unitIndex, BigDecimal step, List<Tick> ticks) {
-    private static final String[] UNITS = {"km", "m", "mm", "µm", "nm"};
-    private static final double[] SIZES = {1e3, 1, 1e-3, 1e-6, 1e-9};
+record Scale(Unit in, List<Tick> ticks) {
+    /** With the least number in each unit for which it is taken: people say 900 m, but 0.4 mm. */
+    private static final List<Unit> LENGTHS = List.of(
+            new Unit("km", 1e3, 3),
+            new Unit("m", 1, 1),
+            new Unit("mm", 1e-3, 0.3),
+            new Unit("µm", 1e-6, 0.3),
+            new Unit("nm", 1e-9, 0));
 
-    /** The least number in each unit for which it is taken: people say 900 m, but 0.4 mm. */
-    private static final double[] LEAST = {3, 1, 0.3, 0.3, 0};
+    private static final List<Unit> ANGLES =
+            List.of(new Unit("deg", Math.PI / 180, 1), new Unit("mrad", 1e-3, 0.3), new Unit("µrad", 1e-6, 0));
 
     private static final int[] ROUND = {1, 2, 5};
 
@@ -26,38 +30,50 @@ record Scale(int unitIndex, BigDecimal step, List<Tick> ticks) {
     }
 
     /**
-     * @param at place in metres
+     * A unit in which an axis is written.
+     *
+     * @param symbol as written
+     * @param size in SI
+     * @param least number for which it is taken
+     */
+    record Unit(String symbol, double size, double least) {}
+
+    /**
+     * @param at place in SI
      * @param text number in the scale's unit
      */
     record Tick(double at, String text) {}
 
     /** Unit symbol. */
     String unit() {
-        return UNITS[unitIndex];
+        return in.symbol();
     }
 
-    /** The unit in metres. */
+    /** The unit in SI. */
     double unitSize() {
-        return SIZES[unitIndex];
+        return in.size();
     }
 
-    /** Place of the unit for a magnitude in the tables above. */
-    static int unitFor(double metres) {
-        for (int i = 0; i < UNITS.length; i++) {
-            if (metres / SIZES[i] >= LEAST[i]) {
-                return i;
-            }
-        }
-        return UNITS.length - 1;
+    /** The unit of length for a magnitude in metres. */
+    static Unit unitFor(double metres) {
+        return unitFor(metres, LENGTHS);
     }
 
-    static double size(int unit) {
-        return SIZES[unit];
+    /** The unit of angle for a magnitude in rad. */
+    static Unit angleUnitFor(double rad) {
+        return unitFor(rad, ANGLES);
     }
 
-    /** Ticks over a range in metres, at most {@code most} of them. */
-    static Scale of(double low, double high, int unit, int most) {
-        double size = SIZES[unit];
+    private static Unit unitFor(double size, List<Unit> units) {
+        return units.stream()
+                .filter(u -> size / u.size() >= u.least())
+                .findFirst()
+                .orElse(units.get(units.size() - 1));
+    }
+
+    /** Ticks over a range in SI, at most {@code most} of them. */
+    static Scale of(double low, double high, Unit unit, int most) {
+        double size = unit.size();
         double span = (high - low) / size;
         BigDecimal step = step(span / Math.max(most, 1));
         double s = step.doubleValue();
@@ -68,7 +84,7 @@ record Scale(int unitIndex, BigDecimal step, List<Tick> ticks) {
             BigDecimal value = step.multiply(BigDecimal.valueOf(k));
             ticks.add(new Tick(value.doubleValue() * size, plain(value, Math.max(step.scale(), 0))));
         }
-        return new Scale(unit, step, ticks);
+        return new Scale(unit, ticks);
     }
 
     /** The least of 1, 2, 5 times a power of ten that is not below {@code least}. */
@@ -85,16 +101,16 @@ record Scale(int unitIndex, BigDecimal step, List<Tick> ticks) {
     }
 
     /** The greatest length of 1, 2, 5 times a power of ten that is not above {@code most}, in metres. */
-    static Tick roundLength(double most, int unit) {
-        BigDecimal best = step(most / SIZES[unit] / 10);
+    static Tick roundLength(double most, Unit unit) {
+        BigDecimal best = step(most / unit.size() / 10);
         for (int i = 0; i < 4; i++) {
             BigDecimal next = step(best.doubleValue() * 1.01);
-            if (next.doubleValue() * SIZES[unit] > most) {
+            if (next.doubleValue() * unit.size() > most) {
                 break;
             }
             best = next;
         }
-        return new Tick(best.doubleValue() * SIZES[unit], plain(best, Math.max(best.scale(), 0)) + " " + UNITS[unit]);
+        return new Tick(best.doubleValue() * unit.size(), plain(best, Math.max(best.scale(), 0)) + " " + unit.symbol());
     }
 
     /** A number with a true minus sign, without exponent, and with thin spaces from five digits on. */

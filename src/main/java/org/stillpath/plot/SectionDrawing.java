@@ -2,6 +2,7 @@ package org.stillpath.plot;
 
 import java.math.BigDecimal;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.Collections;
 import java.util.EnumMap;
 import java.util.EnumSet;
@@ -37,9 +38,14 @@ final class SectionDrawing {
     /** How far rays that go astray may widen the view, in parts of the rest. */
     private static final double STRAY = 0.2;
 
+    private static final Set<Role> LIGHT =
+            EnumSet.of(Role.RAY, Role.MINIMUM, Role.SADDLE, Role.DEGENERATE, Role.PRINCIPAL_RAY, Role.LOST_RAY);
+
     private static final double HATCH = 4.5;
     private static final double THINNING = 0.03;
     private static final Pen CONTOUR = Pen.firm(Ink.GREY, 0.4);
+    private static final Pen FRONT = Pen.firm(Ink.GREEN, 0.5);
+    private static final int MOST_FRONTS = 10;
 
     /** Back to front. */
     private static final List<Role> ORDER = List.of(
@@ -48,6 +54,9 @@ final class SectionDrawing {
             Role.GROUND,
             Role.EXTENSION,
             Role.RAY,
+            Role.DEGENERATE,
+            Role.SADDLE,
+            Role.MINIMUM,
             Role.LOST_RAY,
             Role.PRINCIPAL_RAY,
             Role.SURFACE,
@@ -81,7 +90,7 @@ final class SectionDrawing {
         Bounds bounds = bounds();
         // the height of the strip depends only on whether heights are exaggerated, which no shift of the plot changes
         Layout trial = layout(bounds, top);
-        double below = strip(top, trial);
+        double below = strip(legend(top), trial);
         Layout layout = layout(bounds, below);
         draw(layout);
         double bottom = layout.plot().bottom() + Axes.BELOW;
@@ -89,7 +98,7 @@ final class SectionDrawing {
     }
 
     /** Plain text's hyphen before a number as the minus sign that it means. */
-    private static String typeset(String plain) {
+    static String typeset(String plain) {
         return plain.replaceAll("(?<![\\w.])-(?=\\d)", "−");
     }
 
@@ -111,8 +120,8 @@ final class SectionDrawing {
             }
         }
         figure.marks().forEach(m -> sure.add(new double[] {m.u()}, new double[] {m.v()}));
-        shade.map(Shade::shading)
-                .ifPresent(s -> sure.add(new double[] {s.u0(), s.u1()}, new double[] {s.v0(), s.v1()}));
+        shade.map(Shade::shading).ifPresent(s -> add(sure, s));
+        figure.fronts().ifPresent(s -> add(sure, s));
         if (!sure.isComplete()) {
             sure.add(astray);
         } else {
@@ -122,6 +131,10 @@ final class SectionDrawing {
             sure.add(guides);
         }
         return sure.isComplete() ? sure : new Bounds(0, 1, 0, 1);
+    }
+
+    private static void add(Bounds bounds, SectionFigure.Shading s) {
+        bounds.add(new double[] {s.u0(), s.u1()}, new double[] {s.v0(), s.v1()});
     }
 
     private Layout layout(Bounds b, double stripBottom) {
@@ -186,9 +199,9 @@ final class SectionDrawing {
         double v0 = view.v(plot.bottom());
         double v1 = view.v(plot.top());
         double tall = Math.max(Math.abs(v0), Math.abs(v1));
-        int acrossUnit = Scale.unitFor(Math.max(Math.abs(u0), Math.abs(u1)));
-        int upUnit = Scale.unitFor(tall);
-        if (exaggeration == 1 && tall / Scale.size(acrossUnit) > 0.05) {
+        Scale.Unit acrossUnit = Scale.unitFor(Math.max(Math.abs(u0), Math.abs(u1)));
+        Scale.Unit upUnit = Scale.unitFor(tall);
+        if (exaggeration == 1 && tall / acrossUnit.size() > 0.05) {
             upUnit = acrossUnit;
         }
         int count = (int) Math.max(2, plot.width() / 36);
@@ -202,6 +215,19 @@ final class SectionDrawing {
     }
 
     // ---- the strip between title and plot: what the shading means, and how scales differ
+
+    /** Which kinds of paths there are, and how many of each; returns the y below. */
+    private double legend(double top) {
+        Legend legend = new Legend(width.points());
+        for (Role role : List.of(Role.MINIMUM, Role.SADDLE, Role.DEGENERATE)) {
+            long count = figure.lines().stream().filter(l -> l.role() == role).count();
+            if (count > 0) {
+                legend.line(Legend.pen(role), Legend.words(role, count));
+            }
+        }
+        figure.fronts().ifPresent(f -> legend.line(FRONT, Canvas.clean(f.quantity())));
+        return legend.draw(canvas, top);
+    }
 
     private double strip(double top, Layout layout) {
         if (shade.isEmpty() && layout.exaggeration() == 1) {
@@ -272,12 +298,12 @@ final class SectionDrawing {
 
     private static Scale.Tick barAcross(Layout layout) {
         return Scale.roundLength(
-                56 / layout.view().across(), layout.axes().across().unitIndex());
+                56 / layout.view().across(), layout.axes().across().in());
     }
 
     private static Scale.Tick barUp(Layout layout) {
         return Scale.roundLength(
-                (BARS_HEIGHT - 7) / layout.view().up(), layout.axes().up().unitIndex());
+                (BARS_HEIGHT - 7) / layout.view().up(), layout.axes().up().in());
     }
 
     private static double barsWidth(Layout layout) {
@@ -315,6 +341,7 @@ final class SectionDrawing {
         int above = canvas.count();
         Chart chart = new Chart(plot, view, layout.axes());
         Map<String, List<Polyline>> contours = contours(plot, view, labels);
+        Map<String, List<Polyline>> fronts = fronts(plot, view, labels);
         List<Drawn> drawn = new ArrayList<>();
         int principal = 0;
         Polyline light = light(view);
@@ -351,7 +378,9 @@ final class SectionDrawing {
         }
         layout.axes().name(canvas, plot, Canvas.clean(figure.across()), Canvas.clean(figure.up()));
         place(drawn, plot, view, labels);
-        contours.forEach((text, lines) -> contour(text, lines, above, shaded(view), labels));
+        Box inner = new Box(plot.left() + 2, plot.top(), plot.right() - 2, plot.bottom());
+        fronts.forEach((text, lines) -> contour(text, lines, FRONT, above, inner, labels));
+        contours.forEach((text, lines) -> contour(text, lines, CONTOUR, above, shaded(view), labels));
     }
 
     private Map<String, List<Polyline>> contours(Box plot, View view, Labels labels) {
@@ -360,22 +389,59 @@ final class SectionDrawing {
             return all;
         }
         for (BigDecimal level : shade.get().levels()) {
-            List<Polyline> lines = shade.get().contours(level.doubleValue(), view).stream()
-                    .flatMap(l -> l.inside(plot).stream())
-                    .map(l -> l.thinned(THINNING))
-                    .filter(l -> l.length() > 2)
-                    .toList();
-            for (Polyline line : lines) {
-                labels.line(line, Labels.FAINT, level);
-            }
-            all.put(Scale.plain(level, Math.max(level.scale(), 0)), lines);
+            String text = Scale.plain(level, Math.max(level.scale(), 0));
+            all.put(text, faint(shade.get().contours(level.doubleValue(), view), text, plot, labels));
         }
         return all;
+    }
+
+    /** Wavefronts at round optical lengths. */
+    private Map<String, List<Polyline>> fronts(Box plot, View view, Labels labels) {
+        Map<String, List<Polyline>> all = new LinkedHashMap<>();
+        if (figure.fronts().isEmpty()) {
+            return all;
+        }
+        SectionFigure.Shading f = figure.fronts().get();
+        double[] values = f.values();
+        double low = Arrays.stream(values).filter(Double::isFinite).min().orElse(0);
+        double high = Arrays.stream(values).filter(Double::isFinite).max().orElse(0);
+        if (high > low) {
+            // between cell centres only: beyond them the lines would have to be guessed
+            double[] x = new double[f.columns()];
+            double[] y = new double[f.rows()];
+            for (int c = 0; c < x.length; c++) {
+                x[c] = view.x(f.u0() + (c + 0.5) * (f.u1() - f.u0()) / x.length);
+            }
+            for (int r = 0; r < y.length; r++) {
+                y[r] = view.y(f.v0() + (r + 0.5) * (f.v1() - f.v0()) / y.length);
+            }
+            Contours contours = new Contours(x, y, values);
+            for (Scale.Tick t :
+                    Scale.of(low, high, Scale.unitFor(high), MOST_FRONTS).ticks()) {
+                String text = t.text() + " " + Scale.unitFor(high).symbol();
+                all.put(text, faint(contours.at(t.at()), text, plot, labels));
+            }
+        }
+        return all;
+    }
+
+    /** Level lines as far as they lie in the plot, made known to the labels. */
+    private static List<Polyline> faint(List<Polyline> level, Object owner, Box plot, Labels labels) {
+        List<Polyline> lines = level.stream()
+                .flatMap(l -> l.inside(plot).stream())
+                .map(l -> l.thinned(THINNING))
+                .filter(l -> l.length() > 2)
+                .toList();
+        for (Polyline line : lines) {
+            labels.line(line, Labels.FAINT, owner);
+        }
+        return lines;
     }
 
     private static Pen pen(Role role, int rays, int number) {
         return switch (role) {
             case RAY -> Pen.firm(Ink.INK, rays <= 15 ? 0.8 : rays <= 40 ? 0.6 : 0.4);
+            case MINIMUM, SADDLE, DEGENERATE -> Legend.pen(role);
             case LOST_RAY -> Pen.dashed(Ink.VERMILLION, 0.9, 4.0, 2.5);
             case PRINCIPAL_RAY ->
                 switch (number % 3) {
@@ -399,7 +465,7 @@ final class SectionDrawing {
     private static double price(Role role) {
         return switch (role) {
             case AXIS, EXTENSION, PLANE -> 0.5;
-            case RAY, LOST_RAY, PRINCIPAL_RAY -> 0.9;
+            case RAY, MINIMUM, SADDLE, DEGENERATE, LOST_RAY, PRINCIPAL_RAY -> 0.9;
             case SURFACE, MIRROR, GROUND, THIN_LENS, STOP, OBJECT, IMAGE, VIRTUAL_IMAGE -> 2;
         };
     }
@@ -428,7 +494,7 @@ final class SectionDrawing {
     private Polyline light(View view) {
         List<double[]> points = new ArrayList<>();
         for (Line line : figure.lines()) {
-            if (line.role() == Role.RAY || line.role() == Role.PRINCIPAL_RAY || line.role() == Role.LOST_RAY) {
+            if (LIGHT.contains(line.role())) {
                 Polyline p = view.line(line.u(), line.v());
                 for (int i = 0; i < p.size(); i++) {
                     points.add(new double[] {p.x()[i], p.y()[i]});
@@ -598,8 +664,15 @@ final class SectionDrawing {
     }
 
     /** Lines along which a label may stand anywhere: where no other line is near. */
-    private static final Set<Role> SLIDING =
-            EnumSet.of(Role.RAY, Role.LOST_RAY, Role.PRINCIPAL_RAY, Role.EXTENSION, Role.AXIS);
+    private static final Set<Role> SLIDING = EnumSet.of(
+            Role.RAY,
+            Role.MINIMUM,
+            Role.SADDLE,
+            Role.DEGENERATE,
+            Role.LOST_RAY,
+            Role.PRINCIPAL_RAY,
+            Role.EXTENSION,
+            Role.AXIS);
 
     private static final List<Side> END_UP = List.of(
             Side.ABOVE, Side.RIGHT, Side.LEFT, Side.ABOVE_RIGHT, Side.ABOVE_LEFT, Side.BELOW_RIGHT, Side.BELOW_LEFT);
@@ -692,7 +765,7 @@ final class SectionDrawing {
                     anchors.add(new Anchor(at[0], at[1], ALONG));
                 }
             }
-            case RAY, LOST_RAY, PRINCIPAL_RAY, EXTENSION, AXIS -> {
+            case RAY, MINIMUM, SADDLE, DEGENERATE, LOST_RAY, PRINCIPAL_RAY, EXTENSION, AXIS -> {
                 for (double part : new double[] {0.97, 0.03, 0.85, 0.15, 0.7, 0.3, 0.6, 0.45}) {
                     double[] at = longest.at(part);
                     anchors.add(new Anchor(at[0], at[1], ALONG));
@@ -742,7 +815,7 @@ final class SectionDrawing {
     }
 
     /** Draws the lines of one level, below everything but the shading, with a gap for their label. */
-    private void contour(String text, List<Polyline> lines, int above, Box within, Labels labels) {
+    private void contour(String text, List<Polyline> lines, Pen pen, int above, Box within, Labels labels) {
         double w = Canvas.width(text) / 2;
         double h = Canvas.height() / 2;
         List<Labels.Place> places = new ArrayList<>();
@@ -759,11 +832,11 @@ final class SectionDrawing {
         for (Polyline line : lines) {
             List<Polyline> parts =
                     place.map(p -> line.outside(p.box().grown(0.5))).orElse(List.of(line));
-            parts.forEach(p -> canvas.addAt(above, new Item.Stroke(p.x(), p.y(), CONTOUR)));
+            parts.forEach(p -> canvas.addAt(above, new Item.Stroke(p.x(), p.y(), pen)));
         }
         if (place.isPresent()) {
             Box box = place.get().box();
-            canvas.words(text, box, Ink.GREY, labels.isCrossed(box));
+            canvas.words(text, box, pen.ink(), labels.isCrossed(box));
         } else if (!lines.isEmpty()) {
             canvas.miss(text);
         }
@@ -796,6 +869,9 @@ final class SectionDrawing {
                 .append(" to ")
                 .append(s.highText())
                 .append('.'));
+        figure.fronts()
+                .ifPresent(
+                        f -> out.append(" Level lines: ").append(f.quantity()).append('.'));
         if (!canvas.unplaced().isEmpty()) {
             out.append(" Labels without room: ")
                     .append(String.join(", ", canvas.unplaced()))

@@ -3,21 +3,28 @@ package org.stillpath.ray;
 import org.stillpath.geometry.Vector;
 
 /**
- * How a ray's four Jacobi columns start: two unit places, two unit momenta.
+ * How a ray's Jacobi columns start: two unit places, two unit momenta.
  *
  * @param acrossRay whether across the ray; otherwise on the plane of constant z, as the ray-transfer matrix needs them
+ * @param places whether all four are carried; otherwise the momenta alone, at two thirds of the cost
  * @param conjugates whether points conjugate to the start are located
  * @param normal normal of a plane of symmetry that the ray stays in: the first of each two columns lies in it, and conjugate
  *     points count for directions in it alone; zero where there is none
  */
-public record Columns(boolean acrossRay, boolean conjugates, Vector normal) {
+public record Columns(boolean acrossRay, boolean places, boolean conjugates, Vector normal) {
     /** Those of the ray-transfer matrix between planes of constant z. */
-    public static final Columns PLANES = new Columns(false, false, Vector.ZERO);
+    public static final Columns PLANES = new Columns(false, true, false, Vector.ZERO);
 
-    /** Across the ray. */
-    public static final Columns RAY = new Columns(true, false, Vector.ZERO);
+    /** Across the ray, the momenta alone: what rays that leave a point in other directions do. */
+    public static final Columns RAY = new Columns(true, false, false, Vector.ZERO);
+
+    /** Across the ray, all four. */
+    public static final Columns ACROSS = new Columns(true, true, false, Vector.ZERO);
 
     public Columns {
+        if (!acrossRay && !places) {
+            throw new IllegalArgumentException("columns on planes are all four");
+        }
         if (conjugates && !acrossRay) {
             throw new IllegalArgumentException("conjugate points need columns across the ray");
         }
@@ -25,12 +32,17 @@ public record Columns(boolean acrossRay, boolean conjugates, Vector normal) {
 
     /** The same with conjugate points. */
     public Columns withConjugates() {
-        return new Columns(acrossRay, true, normal);
+        return new Columns(acrossRay, places, true, normal);
     }
 
     /** The same in a plane of symmetry. */
     public Columns in(Vector planeNormal) {
-        return new Columns(acrossRay, conjugates, planeNormal.unit());
+        return new Columns(acrossRay, places, conjugates, planeNormal.unit());
+    }
+
+    /** Number of columns carried. */
+    int count() {
+        return places ? State.TRANSFER_COLUMNS : State.TRANSFER_COLUMNS / 2;
     }
 
     /** Whether a plane of symmetry is given. */

@@ -37,6 +37,8 @@ public final class Tracer {
     private static final double INTEGRATED = 16 * EPSILON;
 
     private static final int PIECES = 1_000_000;
+    /** How far a ray that has passed a point is followed for the next passage, in lengths of the scene. */
+    private static final double BACK = 3;
 
     private final Train train;
     private final Ending ending;
@@ -140,22 +142,31 @@ public final class Tracer {
     }
 
     /**
+     * A ray that may pass a point several times.
+     *
+     * @param passages the ray at each minimum of its distance from the point, in order
+     * @param end the ray as it ended: at the last passage that was asked for, or early
+     */
+    public record Passing(List<Traced> passages, Traced end) {
+        public Passing {
+            passages = List.copyOf(passages);
+        }
+    }
+
+    /**
      * Traces one ray once, as {@link #glance} does, to an ending {@link Ending.Nearest}, and tells of every passage on the way.
      *
-     * @return the ray at each minimum of its distance from the point, at most as many as the ending says, in order; where it met
-     *     none, the one ray as it ended early
      * @throws IllegalStateException if the ending is another
      */
-    public List<Traced> passages(RayStart start, double tolerance) {
+    public Passing passages(RayStart start, double tolerance) {
         if (!(ending instanceof Ending.Nearest)) {
             throw new IllegalStateException("passages need an ending nearest to a point");
         }
         Run run = new Run(start, tolerance, 1);
-        run.passed = new ArrayList<>();
+        List<Traced> passed = new ArrayList<>();
+        run.passed = passed;
         run.go();
-        return run.passed.isEmpty()
-                ? List.of(run.traced(run.errors(run), run.propagator.evaluations()))
-                : List.copyOf(run.passed);
+        return new Passing(passed, run.traced(run.errors(run), run.propagator.evaluations()));
     }
 
     /** Length of the scene that a ray from this start sees, metres: what positions and steps are judged against. */
@@ -195,7 +206,7 @@ public final class Tracer {
     private final class Run {
         private final RayStart start;
         private final double scale;
-        private final double limit;
+        private double limit;
         private final Propagator propagator;
         private final Crossing crossing = new Crossing();
         private final Flow flow = new Flow();
@@ -221,7 +232,8 @@ public final class Tracer {
             this.propagator = engine.make(tolerance, scale, stride);
             this.trail = Trail.of(settings.trail, settings.columns);
             boolean lens = train.elements().stream().anyMatch(e -> e.action() instanceof Action.ThinLens);
-            this.y = new double[State.size(settings.transfer || lens ? State.TRANSFER_COLUMNS : 0)];
+            int count = lens ? State.TRANSFER_COLUMNS : settings.transfer ? settings.columns.count() : 0;
+            this.y = new double[State.size(count)];
             this.rate = new double[y.length];
             this.field = train.from();
         }
@@ -315,12 +327,15 @@ public final class Tracer {
             double[][] axes = settings.columns.axes(y[3], y[4], y[5]);
             double n2 = y[3] * y[3] + y[4] * y[4] + y[5] * y[5];
             Samples s = flow.samples();
+            int momenta = State.columns(y) - 2;
             for (int c = 0; c < 2; c++) {
                 double push = (axes[c][0] * s.gx[0] + axes[c][1] * s.gy[0] + axes[c][2] * s.gz[0]) / n2;
                 for (int i = 0; i < 3; i++) {
-                    y[State.COLUMNS + State.COLUMN * c + i] = axes[c][i];
-                    y[State.COLUMNS + State.COLUMN * c + 3 + i] = push * y[3 + i];
-                    y[State.COLUMNS + State.COLUMN * (2 + c) + 3 + i] = axes[c][i];
+                    if (momenta > 0) {
+                        y[State.COLUMNS + State.COLUMN * c + i] = axes[c][i];
+                        y[State.COLUMNS + State.COLUMN * c + 3 + i] = push * y[3 + i];
+                    }
+                    y[State.COLUMNS + State.COLUMN * (momenta + c) + 3 + i] = axes[c][i];
                 }
             }
         }
@@ -569,6 +584,7 @@ public final class Tracer {
                     arrive();
                     return;
                 }
+                limit = Math.min(limit, BACK * scale);
             }
         }
 

@@ -51,12 +51,21 @@ final class BetweenTask implements Task {
         Search search = job.find("search")
                 .map(v -> search(v.section(), scene))
                 .orElse(new Search(USUAL_HALF_ANGLE, Vector.ZERO, Vector.ZERO, false));
-        job.find("fronts").filter(Value::flag).ifPresent(v -> v.fault("`fronts` is not in this version yet"));
+        boolean fronts = job.find("fronts").map(v -> fronts(v, scene)).orElse(false);
         if (scene.wavelengths().length > 1) {
             job.fault("wavelength", "the task \"between\" takes one wavelength");
         }
-        Figures figures = Figures.read(job, scene, List.of("paths"), List.of("paths"));
-        return options -> run(scene, from, to, search, options.figures() ? figures.names() : List.of());
+        Figures figures = Figures.read(job, scene, List.of("paths", "arrival"), List.of("paths"));
+        return options -> new Run(scene, from, to, search, fronts).result(figures.names(), options.figures());
+    }
+
+    private static boolean fronts(Value value, Scene scene) {
+        boolean wanted = value.flag();
+        if (wanted && scene.train().isPresent()) {
+            value.fault("wavefronts are followed through one medium alone, and this job has a train of surfaces; leave "
+                    + "\"fronts\" out, or give one medium with \"through\" in place of the train");
+        }
+        return wanted;
     }
 
     private static Vector point(Value value) {
@@ -96,52 +105,96 @@ final class BetweenTask implements Task {
         return new Search(half > 0 ? Math.min(half, Math.PI) : USUAL_HALF_ANGLE, around, plane, both);
     }
 
-    private static Result run(Scene scene, Vector from, Vector to, Search search, List<String> figures) {
-        Train train = scene.trainAt(scene.wavelength());
-        PathSearch.Outcome through = PathSearch.run(query(train, from, to, search, scene.accuracy()));
-        List<StationaryPath> found = new ArrayList<>(through.paths());
-        int shots = through.shots();
-        if (search.direct) {
-            PathSearch.Outcome past =
-                    PathSearch.run(query(Train.through(train.from()), from, to, search, scene.accuracy()));
-            shots += past.shots();
-            past.paths().stream().filter(p -> isFree(train, from, p)).forEach(found::add);
+    /** What a run needs to know. */
+    private record Run(Scene scene, Vector from, Vector to, Search search, boolean fronts) {
+        Result result(List<String> figures, boolean drawn) {
+            Train train = scene.trainAt(scene.wavelength());
+            PathSearch.Outcome through = PathSearch.run(query(train, from, to, search, scene.accuracy()));
+            List<StationaryPath> found = new ArrayList<>(through.paths());
+            String around = search.around.norm() > 0 ? "the given direction" : "the chord";
+            List<String> warnings = new ArrayList<>(scene.warnings());
+            String what = search.direct ? "through the train" : "";
+            warnings.addAll(SearchNotes.of(through, search.halfAngle, what, around));
+            Optional<PathSearch.Outcome> past = Optional.empty();
+            if (search.direct) {
+                PathSearch.Outcome all =
+                        PathSearch.run(query(Train.through(train.from()), from, to, search, scene.accuracy()));
+                PathSearch.Outcome free = all.withPaths(
+                        all.paths().stream().filter(p -> isFree(train, from, p)).toList());
+                warnings.addAll(SearchNotes.of(free, search.halfAngle, "past the train", around));
+                found.addAll(free.paths());
+                past = Optional.of(free);
+            }
+            found.sort(Comparator.comparingDouble(StationaryPath::opticalLength));
+            List<PathRow> rows = new ArrayList<>();
+            for (StationaryPath p : found) {
+                rows.add(row(p, found.get(0).opticalLength()));
+            }
+            boolean accurate = found.stream().allMatch(p -> p.errors()[0] <= scene.accuracy() * p.opticalLength());
+            if (!accurate) {
+                warnings.add(Words.notReached(scene.accuracy()));
+            }
+            Map<String, Quantity> quantities = quantities(rows, train, from, to);
+            Optional<FirstArrival> grid =
+                    fronts ? Optional.of(FirstArrival.of(train.from(), from, to, through)) : Optional.empty();
+            grid.flatMap(FirstArrival::quantity).ifPresent(q -> quantities.put("first-arrival-grid", q));
+            grid.ifPresent(g -> warnings.addAll(g.warnings(found)));
+            String headline = headline(rows);
+            List<Figure> pictures = new ArrayList<>();
+            if (figures.contains("paths") && drawn) {
+                pictures.add(new PathSection(from, to, found)
+                        .figure(train, through.normal(), grid.flatMap(FirstArrival::fronts), headline));
+            }
+            if (figures.contains("arrival")) {
+                Optional<CurveFigure> arrival = arrival(through, past, warnings);
+                arrival.filter(f -> drawn).ifPresent(pictures::add);
+            }
+            return new Result(
+                    "between",
+                    scene.title(),
+                    headline,
+                    quantities,
+                    List.of(),
+                    rows,
+                    List.of(table(rows)),
+                    pictures,
+                    warnings,
+                    Words.CAUTIONS,
+                    accurate);
         }
-        found.sort(Comparator.comparingDouble(StationaryPath::opticalLength));
-        List<PathRow> rows = new ArrayList<>();
-        for (StationaryPath p : found) {
-            rows.add(row(p, found.get(0).opticalLength()));
+
+        /** The figure {@code arrival}, or a warning why there is none. */
+        private Optional<CurveFigure> arrival(
+                PathSearch.Outcome through, Optional<PathSearch.Outcome> past, List<String> warnings) {
+            if (through.normal().isEmpty()) {
+                warnings.add(
+                        "the figure \"arrival\" exists only for searches in a plane, and this one went over a cone of "
+                                + "directions; `search: {in: ..}` keeps to a plane where medium and train are symmetric about it");
+                return Optional.empty();
+            }
+            Vector axis = search.around.norm() > 0
+                    ? search.around.unit()
+                    : to.minus(from).unit();
+            String axisName = search.around.norm() > 0 ? "the given direction" : "the chord";
+            Vector normal = through.normal().get();
+            ArrivalCurves curves = new ArrivalCurves(search.halfAngle, axis, axisName, normal);
+            curves.add(past.isPresent() ? "through the train" : "", through.samples(), through.paths(), normal);
+            past.filter(p -> p.normal().isPresent()).ifPresent(p -> {
+                boolean same = Math.abs(p.normal().get().dot(normal)) > 1 - 1e-9;
+                curves.add(
+                        same ? "past the train" : "past the train, in another plane",
+                        p.samples(),
+                        p.paths(),
+                        p.normal().get());
+            });
+            Optional<CurveFigure> figure = curves.figure();
+            if (figure.isEmpty()) {
+                warnings.add(
+                        "no ray of the search came to where it is nearest to the target, so that there is nothing to "
+                                + "draw as the figure \"arrival\"");
+            }
+            return figure;
         }
-        List<String> warnings = new ArrayList<>(scene.warnings());
-        warnings.add(String.format(
-                Locale.ROOT,
-                "searched were %s within %.4g deg of %s, with %d rays; paths outside it are not known, and nearer to each "
-                        + "other than its resolution may be missed",
-                through.planar() ? "directions in one plane" : "directions",
-                Math.toDegrees(search.halfAngle),
-                search.around.norm() > 0 ? "the given direction" : "the chord",
-                shots));
-        boolean accurate = found.stream().allMatch(p -> p.errors()[0] <= scene.accuracy() * p.opticalLength());
-        if (!accurate) {
-            warnings.add(Words.notReached(scene.accuracy()));
-        }
-        String headline = headline(rows);
-        List<Figure> drawn = new ArrayList<>();
-        if (figures.contains("paths") && !found.isEmpty()) {
-            drawn.add(RayFigure.paths(train, traced(train, from, found, scene.accuracy()), headline));
-        }
-        return new Result(
-                "between",
-                scene.title(),
-                headline,
-                quantities(rows, train, from, to),
-                List.of(),
-                rows,
-                List.of(table(rows)),
-                drawn,
-                warnings,
-                Words.CAUTIONS,
-                accurate);
     }
 
     private static PathSearch.Query query(Train train, Vector from, Vector to, Search s, double accuracy) {
@@ -159,21 +212,6 @@ final class BetweenTask implements Task {
             }
         }
         return true;
-    }
-
-    /** The paths again as rays, for the figure. */
-    private static List<Traced> traced(Train train, Vector from, List<StationaryPath> found, double accuracy) {
-        List<Traced> rays = new ArrayList<>();
-        for (StationaryPath p : found) {
-            Ending ending = new Ending.AtLength(p.length());
-            Train through = p.overInterfaces() == StationaryPath.Kind.NONE
-                            && !train.elements().isEmpty()
-                    ? Train.through(train.from())
-                    : train;
-            rays.add(new Tracer(through, ending, new Tracer.Settings(Math.max(accuracy, 1e-9), false, true))
-                    .trace(RayStart.of(from, p.launch())));
-        }
-        return rays;
     }
 
     private static PathRow row(StationaryPath p, double least) {
@@ -201,6 +239,7 @@ final class BetweenTask implements Task {
                 p.arrival(),
                 p.kind().word(),
                 p.morseIndex(),
+                p.nullDirections(),
                 p.conjugates(),
                 p.overInterfaces() == StationaryPath.Kind.NONE
                         ? ""
@@ -267,7 +306,10 @@ final class BetweenTask implements Task {
                 .toString();
         String what = first.kind().equals("minimum")
                 ? "a minimum"
-                : first.kind().equals("saddle") ? "a saddle" : "degenerate";
+                : first.kind().equals("saddle")
+                        ? "a saddle"
+                        : "degenerate with " + first.nullDirections() + " null direction"
+                                + (first.nullDirections() == 1 ? "" : "s");
         return rows.size() == 1
                 ? "One stationary path, optical length " + length + ", " + what
                 : rows.size() + " stationary paths; the first, " + what + ", has the optical length " + length;

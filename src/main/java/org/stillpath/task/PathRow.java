@@ -15,6 +15,8 @@ import org.stillpath.geometry.Vector;
  * @param arrival unit direction at the target
  * @param kind minimum, saddle or degenerate
  * @param morseIndex number of independent ways of bending the path that shorten it
+ * @param nullDirections number of independent ways of bending it that leave it equally long to second order; 0 unless it is
+ *     degenerate
  * @param conjugatePoints lengths from the start to the points conjugate to it, metres
  * @param overInterfaces the same question asked of its meeting points alone; empty where it meets no surface
  * @param residual miss at the target, metres
@@ -30,6 +32,7 @@ public record PathRow(
         Vector arrival,
         String kind,
         int morseIndex,
+        int nullDirections,
         double[] conjugatePoints,
         String overInterfaces,
         double residual,

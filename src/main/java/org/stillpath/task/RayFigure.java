@@ -28,7 +28,7 @@ final class RayFigure {
     /** More rays than this only blacken a picture. */
     private static final int MOST_RAYS = 60;
 
-    private static final String[] NAMES = {"x", "y", "z"};
+    static final String[] NAMES = {"x", "y", "z"};
 
     private RayFigure() {}
 
@@ -43,23 +43,7 @@ final class RayFigure {
             String answer,
             List<SectionFigure.Line> furtherLines,
             List<SectionFigure.Mark> marks) {
-        return figure("rays", "Where do the rays go?", train, rays, answer, furtherLines, marks);
-    }
-
-    /** Paths between two points, given as rays. */
-    static SectionFigure paths(Train train, List<Traced> paths, String answer) {
-        return figure("paths", "Which ways can light take?", train, paths, answer, List.of(), List.of());
-    }
-
-    private static SectionFigure figure(
-            String name,
-            String question,
-            Train train,
-            List<Traced> rays,
-            String answer,
-            List<SectionFigure.Line> furtherLines,
-            List<SectionFigure.Mark> marks) {
-        Extent extent = Extent.of(rays, train);
+        Extent extent = Extent.of(rays.stream().map(Traced::trail).toList(), train);
         List<SectionFigure.Line> lines = new ArrayList<>(outlines(train, extent));
         int every = Math.max(1, (rays.size() + MOST_RAYS - 1) / MOST_RAYS);
         for (int i = 0; i < rays.size(); i += every) {
@@ -67,7 +51,14 @@ final class RayFigure {
         }
         lines.addAll(furtherLines);
         return new SectionFigure(
-                name, question, answer, NAMES[extent.across], NAMES[extent.up], shading(train, extent), lines, marks);
+                "rays",
+                "Where do the rays go?",
+                answer,
+                NAMES[extent.across],
+                NAMES[extent.up],
+                shading(train, extent),
+                lines,
+                marks);
     }
 
     private static Optional<SectionFigure.Line> line(Traced ray, Extent extent) {
@@ -298,7 +289,7 @@ final class RayFigure {
         return Math.sqrt(1 + s.value[0]);
     }
 
-    private static double component(Vector v, int axis) {
+    static double component(Vector v, int axis) {
         return axis == 0 ? v.x() : axis == 1 ? v.y() : v.z();
     }
 
@@ -310,9 +301,8 @@ final class RayFigure {
         final double[] most = {Double.NEGATIVE_INFINITY, Double.NEGATIVE_INFINITY, Double.NEGATIVE_INFINITY};
         final double[] middle = new double[3];
 
-        private Extent(List<Traced> rays, Train train) {
-            for (Traced t : rays) {
-                double[] trail = t.trail();
+        private Extent(List<double[]> trails, Train train) {
+            for (double[] trail : trails) {
                 for (int i = 0; i < trail.length; i++) {
                     least[i % 3] = Math.min(least[i % 3], trail[i]);
                     most[i % 3] = Math.max(most[i % 3], trail[i]);
@@ -351,8 +341,13 @@ final class RayFigure {
             }
         }
 
-        static Extent of(List<Traced> rays, Train train) {
-            return new Extent(rays, train);
+        /**
+         * The extent of what light passes and of a train.
+         *
+         * @param trails places passed, x, y, z triples
+         */
+        static Extent of(List<double[]> trails, Train train) {
+            return new Extent(trails, train);
         }
 
         /** The extent of a train alone, in the yz section, that also holds two heights (metres). */

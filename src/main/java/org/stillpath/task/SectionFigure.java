@@ -14,6 +14,7 @@ import java.util.Optional;
  * @param across what u is: {@code z}, {@code distance along the sight}
  * @param up what v is: {@code y}, {@code height above ground}
  * @param shading the index over the section, if it varies
+ * @param fronts optical length from the start, drawn as its level lines, if it was computed
  * @param lines everything drawn as a line, in drawing order
  * @param marks named points
  */
@@ -24,6 +25,7 @@ public record SectionFigure(
         String across,
         String up,
         Optional<Shading> shading,
+        Optional<Shading> fronts,
         List<Line> lines,
         List<Mark> marks)
         implements Figure {
@@ -33,10 +35,29 @@ public record SectionFigure(
         marks = List.copyOf(marks);
     }
 
+    /** A section without wavefronts. */
+    public SectionFigure(
+            String name,
+            String question,
+            String answer,
+            String across,
+            String up,
+            Optional<Shading> shading,
+            List<Line> lines,
+            List<Mark> marks) {
+        this(name, question, answer, across, up, shading, Optional.empty(), lines, marks);
+    }
+
     /** What a line is, which decides how it is drawn. */
     public enum Role {
         /** A ray of light. */
         RAY,
+        /** A stationary path that no neighbour is shorter than. */
+        MINIMUM,
+        /** A stationary path with shorter and longer neighbours. */
+        SADDLE,
+        /** A stationary path with neighbours that are equally long to second order. */
+        DEGENERATE,
         /** A ray that ended early: clipped, missed, outside, totally reflected or lost. */
         LOST_RAY,
         /** One of the principal rays of the construction of an image. */

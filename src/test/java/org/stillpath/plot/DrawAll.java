@@ -4,7 +4,7 @@ import java.io.IOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import org.stillpath.task.SectionFigure;
+import org.stillpath.task.Figure;
 
 /** Draws every scene into a folder: run as a process of its own by a test, and by hand to look at the pictures. */
 final class DrawAll {
@@ -14,7 +14,7 @@ final class DrawAll {
         Path folder = Path.of(args[0]);
         Files.createDirectories(folder);
         int number = 0;
-        for (SectionFigure figure : Scenes.all()) {
+        for (Figure figure : Scenes.figures()) {
             for (Width width : Width.values()) {
                 Picture picture = Pictures.of(figure, width);
                 String stem = number + "-" + figure.name() + "-" + (int) width.millimetres();

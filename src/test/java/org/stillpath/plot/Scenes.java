@@ -5,6 +5,8 @@ import java.util.Arrays;
 import java.util.List;
 import java.util.Optional;
 import java.util.function.DoubleBinaryOperator;
+import org.stillpath.task.CurveFigure;
+import org.stillpath.task.Figure;
 import org.stillpath.task.SectionFigure;
 import org.stillpath.task.SectionFigure.Line;
 import org.stillpath.task.SectionFigure.Mark;
@@ -16,7 +18,79 @@ final class Scenes {
     private Scenes() {}
 
     static List<SectionFigure> all() {
-        return List.of(rod(), realImage(), virtualImage(), mirage(), lost(), mirrorAndLens(), tall(), awkward());
+        return List.of(
+                rod(), realImage(), virtualImage(), mirage(), lost(), mirrorAndLens(), tall(), paths(), awkward());
+    }
+
+    static List<CurveFigure> curves() {
+        return List.of(arrival(1), arrival(2), arrival(3));
+    }
+
+    static List<Figure> figures() {
+        List<Figure> list = new ArrayList<>(all());
+        list.addAll(curves());
+        return list;
+    }
+
+    /** Paths of all three kinds with wavefronts: circles about the start. */
+    static SectionFigure paths() {
+        double[] box = {-2, 2, -0.6, 0.6};
+        Shading index =
+                shading("refractive index", box, 200, 60, (z, y) -> 1 + 0.3 * Math.exp(-(y * y + z * z) / 0.25));
+        Shading lengths = shading(
+                "wavefronts, by optical length from the start", box, 200, 60, (z, y) -> 1.1 * Math.hypot(z + 2, y));
+        Shading fronts = new Shading(lengths.quantity(), "m", -2, 2, -0.6, 0.6, 200, 60, lengths.values());
+        return new SectionFigure(
+                "paths",
+                "Which ways can light take?",
+                "4 stationary paths; the first, a minimum, has the optical length 4.2271869 m",
+                "z",
+                "y",
+                Optional.of(index),
+                Optional.of(fronts),
+                List.of(
+                        line(Role.MINIMUM, "path 0", -2, 0, 0, 0.45, 2, 0.1),
+                        line(Role.MINIMUM, "path 1", -2, 0, 0, -0.4, 2, 0.1),
+                        line(Role.SADDLE, "path 2", -2, 0, 0, -0.03, 2, 0.1),
+                        line(Role.DEGENERATE, "path 3", -2, 0, 0, 0.25, 2, 0.1)),
+                List.of(new Mark("from", -2, 0), new Mark("to", 2, 0.1)));
+    }
+
+    /** A cubic with three zeros, two of them close, and a second branch with a gap; in up to three panels. */
+    static CurveFigure arrival(int panels) {
+        double[] x = new double[801];
+        double[] y = new double[801];
+        double[] other = new double[801];
+        for (int i = 0; i <= 800; i++) {
+            double s = i / 400.0 - 1;
+            // crowded toward the zeros
+            x[i] = 1.05 * s * s * s;
+            y[i] = 900 * Math.sin(x[i]) * (x[i] - 2.0e-3) * (x[i] + 5e-5);
+            other[i] = Math.abs(x[i]) < 0.2 ? Double.NaN : 300 * x[i];
+        }
+        double[][] ranges = {{-1.05, 1.05, 900, 1e-6}, {-8e-4, 2.75e-3, 1e-6, 0}, {-7e-5, 2e-5, 1e-9, 0}};
+        String[] titles = {"all angles searched", "near all paths", "near the closest paths"};
+        List<CurveFigure.Panel> list = new ArrayList<>();
+        for (int i = 0; i < panels; i++) {
+            double[] r = ranges[i];
+            list.add(new CurveFigure.Panel(
+                    panels == 1 ? "" : titles[i],
+                    new CurveFigure.Axis("launch angle toward +y", CurveFigure.Measure.ANGLE, r[0], r[1], 0),
+                    new CurveFigure.Axis("miss", CurveFigure.Measure.LENGTH, -r[2], r[2], r[3]),
+                    List.of(
+                            new CurveFigure.Curve("1st passage of the target", x, y),
+                            new CurveFigure.Curve("2nd passage of the target", x, other)),
+                    List.of(
+                            new CurveFigure.Point(Role.MINIMUM, 0, 0),
+                            new CurveFigure.Point(Role.DEGENERATE, -5e-5, 0),
+                            new CurveFigure.Point(Role.SADDLE, 2e-3, 0))));
+        }
+        return new CurveFigure(
+                "arrival",
+                "Which launch angles reach the target?",
+                "3 launch angles reach the target: −0.05, 0.00 and 2.00 mrad from the chord toward +y"
+                        + " ".repeat(panels),
+                list);
     }
 
     static Line line(Role role, String label, double... uv) {
