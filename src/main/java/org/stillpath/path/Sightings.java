@@ -59,6 +59,9 @@ public final class Sightings {
     /** The table of the search; made when first asked for, by several threads perhaps, each as good as the other. */
     private volatile Optional<LayerTable> table = Optional.empty();
 
+    /** The last horizon found: a search behind it needs the same ray. */
+    private volatile Optional<Touch> touch = Optional.empty();
+
     private volatile double[] tabulated = {Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY};
 
     private Sightings(IndexField field, EarthChart chart, double accuracy) {
@@ -313,7 +316,7 @@ public final class Sightings {
         double[] f = ray.force();
         double[] t = turn(y);
         double n1 = Math.sqrt(first[3] * first[3] + first[4] * first[4] + first[5] * first[5]);
-        int at = State.COLUMNS + 2 * State.COLUMN;
+        int at = State.COLUMNS + (State.columns(y) - 2) * State.COLUMN;
         double forward = y[3] * t[1] - y[5] * t[0];
         double upward = y[3] * t[0] + y[5] * t[1];
         double ahead = y[at] * t[1] - y[at + 2] * t[0];
@@ -351,12 +354,16 @@ public final class Sightings {
             return Optional.of(new Horizon(dip, 1e-12, Double.NaN, Double.NaN));
         }
         Optional<Tangent> t = tangent(from, -dip, 1e-9);
+        t.ifPresent(g -> touch = Optional.of(new Touch(from, g)));
         return t.map(g -> new Horizon(
                 -g.elevation,
                 g.error + 0.1 * Math.abs(dip + g.elevation),
                 g.contact,
                 g.contactError + 2 * Math.abs(dip + g.elevation) * g.spread));
     }
+
+    /** The ray that touches the ground from an eye. */
+    private record Touch(double from, Tangent tangent) {}
 
     private record Lowest(double height, double lift) {}
 
@@ -457,9 +464,10 @@ public final class Sightings {
             double[] y = t.state();
             double[] c = clearance(y, t);
             step = (1e-10 - c[0]) / c[1];
-            if (Math.abs(step) <= 1e-16 + 1e-13 * Math.abs(e) || Math.abs(step) >= 0.5 * Math.abs(before)) {
+            if (Math.abs(step) <= Math.max(1e-16 + 1e-13 * Math.abs(e), 0.01 * accuracy * Math.abs(e)) || Math.abs(step) >= 0.5 * Math.abs(before)) {
                 double error = 2e-16 + Math.abs(step) + (2e-10 + scale * accuracy * 0.1) / Math.abs(c[1]);
                 double bend = Math.abs(c[2]);
+                e += Math.abs(step) < 1e-9 ? step : 0;
                 return Math.abs(e - guess) > within
                         ? Optional.empty()
                         : Optional.of(new Tangent(e, error, place(y)[0], (0.1 * accuracy + error) / bend, 1 / bend));
@@ -485,7 +493,7 @@ public final class Sightings {
         if (State.columns(y) > 0) {
             double[] first = t.start();
             double n1 = Math.sqrt(first[3] * first[3] + first[4] * first[4] + first[5] * first[5]);
-            int at = State.COLUMNS + 2 * State.COLUMN;
+            int at = State.COLUMNS + (State.columns(y) - 2) * State.COLUMN;
             slope = n1 * (s.gx[0] * y[at] + s.gy[0] * y[at + 1] + s.gz[0] * y[at + 2]);
         }
         double pp = y[3] * y[3] + y[4] * y[4] + y[5] * y[5];
@@ -1120,12 +1128,15 @@ public final class Sightings {
             if (in.height - ground < doubt) {
                 return new Limb(ground, 0, in.angle, Bound.NONE, Double.NaN, Double.NaN);
             }
-            Optional<Tangent> touch =
-                    tangent(chord.fromHeight(), in.angle, 1e-5).filter(t -> t.contact < chord.distance());
-            if (touch.isEmpty()) {
+            Optional<Tangent> found = touch.filter(t -> t.from == chord.fromHeight())
+                    .map(Touch::tangent)
+                    .filter(t -> Math.abs(t.elevation - in.angle) < 1e-5)
+                    .or(() -> tangent(chord.fromHeight(), in.angle, 1e-5))
+                    .filter(t -> t.contact < chord.distance());
+            if (found.isEmpty()) {
                 return new Limb(in.height, doubt, in.angle, Bound.GROUND, Double.NaN, Double.NaN);
             }
-            Tangent t = touch.get();
+            Tangent t = found.get();
             Traced ray = quick.glance(start(chord.fromHeight(), t.elevation), Math.max(1e-15, 0.1 * accuracy));
             shots += 4;
             if (ray.status() != Status.ARRIVED) {

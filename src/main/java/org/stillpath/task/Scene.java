@@ -28,6 +28,7 @@ import org.stillpath.unit.Kind;
  * @param through the medium that is everywhere; absent where there is a train
  * @param figures names of the figures asked for; absent: the task's usual ones
  * @param sources files that the job may name
+ * @param kept what has been worked out for it
  */
 public record Scene(
         String title,
@@ -37,7 +38,8 @@ public record Scene(
         Optional<TrainPlan> train,
         Optional<Medium> through,
         Optional<List<Value>> figures,
-        Sources sources) {
+        Sources sources,
+        Kept kept) {
     /** The helium d line, the usual reference of catalogues, for jobs that name no wavelength. */
     private static final double D_LINE = 587.5618e-9;
 
@@ -123,7 +125,8 @@ public record Scene(
                 train,
                 through,
                 job.find("figures").map(Value::items),
-                sources);
+                sources,
+                new Kept());
     }
 
     private static double[] wavelengths(Value value) {

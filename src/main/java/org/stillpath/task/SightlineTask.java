@@ -71,11 +71,17 @@ final class SightlineTask implements Task {
                 earthGiven);
     }
 
+    /** What a setting depends on, besides the scene. */
+    private record Over(double radius, Ground ground) {}
+
     private static Setting setting(Scene scene, Earth earth, Ground ground) {
-        EarthChart chart = earth.flat() ? EarthChart.flat(ground) : EarthChart.sphere(earth.radius(), ground);
-        Medium m = scene.through().orElseThrow();
-        IndexField field = m.field(scene.wavelength(), m.frame(Vector.ZERO), chart);
-        return new Setting(earth, chart, field, Sightings.through(field, chart, scene.accuracy()), scene.accuracy());
+        return scene.kept().once(new Over(earth.radius(), ground), Setting.class, () -> {
+            EarthChart chart = earth.flat() ? EarthChart.flat(ground) : EarthChart.sphere(earth.radius(), ground);
+            Medium m = scene.through().orElseThrow();
+            IndexField field = m.field(scene.wavelength(), m.frame(Vector.ZERO), chart);
+            return new Setting(
+                    earth, chart, field, Sightings.through(field, chart, scene.accuracy()), scene.accuracy());
+        });
     }
 
     /** Faults of heights and distances against the ground. */
@@ -139,6 +145,8 @@ final class SightlineTask implements Task {
         double distance = point.distance().orElseThrow();
         double height = point.height().orElseThrow();
         Chord chord = new Chord(setting.chart().radius(), eye, distance, height);
+        // before the search, which needs the ray that touches the ground too
+        Optional<Sightings.Horizon> horizon = setting.sightings().horizon(eye);
         Sightings.Outcome seen = setting.sightings().find(eye, distance, height);
         List<ImageRow> rows = new ArrayList<>();
         for (Sighting s : seen.images()) {
@@ -157,7 +165,7 @@ final class SightlineTask implements Task {
                 q.put("hidden-from", new Quantity.Amount(l.contact(), "m", l.contactError()));
             }
         });
-        setting.sightings().horizon(eye).ifPresent(h -> {
+        horizon.ifPresent(h -> {
             q.put("horizon-dip", new Quantity.Amount(h.dip(), "rad", h.dipError()));
             if (!Double.isNaN(h.distance())) {
                 q.put("horizon-distance", new Quantity.Amount(h.distance(), "m", h.distanceError()));

@@ -56,11 +56,17 @@ public final class Tasks {
     }
 
     private static Task.Plan read(Node.Mapping job, Sources sources) {
+        return read(job, sources, Optional.empty());
+    }
+
+    /** Reads a job; with a scene that has been read from the same nodes before, if there is one. */
+    static Task.Plan read(Node.Mapping job, Sources sources, Optional<Scene> known) {
         Problems problems = new Problems();
         Section top = Section.of(job, "", problems);
         Value name = top.need("task", "lens");
         Optional<Task> task = find(name);
-        Scene scene = Scene.read(top, sources);
+        Scene scene = known.orElseGet(() -> Scene.read(top, sources));
+        Series.know(top);
         Optional<Task.Plan> plan = task.map(t -> t.read(top, scene));
         if (plan.isPresent()) {
             top.finish();
