@@ -12,12 +12,12 @@ import picocli.CommandLine.Parameters;
 /** {@code stillpath new TASK}: prints a commented starter job. */
 @Command(name = "new", mixinStandardHelpOptions = true, description = "Prints a commented starter job of a task.")
 final class NewCommand implements Callable<Integer> {
-    static final List<String> STARTERS = List.of("trace", "between", "lens");
-    private static final List<String> LATER = List.of("sightline", "window");
+    static final List<String> STARTERS = List.of("trace", "between", "lens", "sightline");
+    private static final List<String> LATER = List.of("window");
 
     private final Console console;
 
-    @Parameters(paramLabel = "TASK", description = "trace, between or lens")
+    @Parameters(paramLabel = "TASK", description = "trace, between, lens or sightline")
     private String task = "";
 
     NewCommand(Console console) {

@@ -15,10 +15,12 @@ import org.stillpath.geometry.Vector;
 import org.stillpath.problem.Problem;
 import org.stillpath.study.Doc;
 import org.stillpath.study.Outcome;
+import org.stillpath.task.ImageRow;
 import org.stillpath.task.PathRow;
 import org.stillpath.task.Quantity;
 import org.stillpath.task.RayRow;
 import org.stillpath.task.Result;
+import org.stillpath.task.StarRow;
 
 /**
  * Writes a result document as JSON (RFC 8259), in UTF-8.
@@ -144,10 +146,16 @@ public final class ResultJson {
             path(path);
         }
         json.writeEndArray();
-        for (String key : List.of("images", "stars")) {
-            json.writeArrayFieldStart(key);
-            json.writeEndArray();
+        json.writeArrayFieldStart("images");
+        for (ImageRow image : result.images()) {
+            image(image);
         }
+        json.writeEndArray();
+        json.writeArrayFieldStart("stars");
+        for (StarRow star : result.stars()) {
+            star(star);
+        }
+        json.writeEndArray();
         json.writeFieldName("study");
         doc(outcome.doc());
         texts("tables", tables);
@@ -249,6 +257,50 @@ public final class ResultJson {
         }
         json.writeEndArray();
         errors(path.errors());
+        json.writeEndObject();
+    }
+
+    private void image(ImageRow image) throws IOException {
+        json.writeStartObject();
+        number("launch-elevation", image.launch());
+        number("arrival-elevation", image.arrival());
+        number("back-elevation", -image.arrival());
+        number("refraction-at-from", image.refractionAtFrom());
+        number("refraction-at-to", image.refractionAtTo());
+        number("apparent-displacement", image.displacement());
+        if (image.coefficient().isPresent()) {
+            number("refraction-coefficient", image.coefficient().getAsDouble());
+        }
+        if (!image.remark().isEmpty()) {
+            json.writeStringField("refraction-coefficient-remark", image.remark());
+        }
+        number("optical-length", image.opticalLength());
+        number("optical-excess", image.excess());
+        number("length", image.length());
+        number("lowest-clearance", image.lowest());
+        number("lowest-clearance-at", image.lowestAt());
+        json.writeStringField("orientation", image.orientation());
+        number("vertical-magnification", image.magnification());
+        json.writeStringField("kind", image.kind());
+        json.writeArrayFieldStart("points");
+        for (double[] point : image.points()) {
+            array(point);
+        }
+        json.writeEndArray();
+        errors(image.errors());
+        json.writeEndObject();
+    }
+
+    private void star(StarRow star) throws IOException {
+        json.writeStartObject();
+        number("apparent-zenith", star.apparentZenith());
+        if (star.refraction().isPresent()) {
+            number("refraction", star.refraction().getAsDouble());
+        }
+        if (!star.note().isEmpty()) {
+            json.writeStringField("note", star.note());
+        }
+        errors(star.errors());
         json.writeEndObject();
     }
 

@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.Optional;
+import java.util.OptionalDouble;
 
 /** The height of the ground above the datum against the distance along the datum, both in metres. Immutable. */
 public sealed interface Ground permits Ground.Incline, Ground.Terrain {
@@ -32,6 +33,12 @@ public sealed interface Ground permits Ground.Incline, Ground.Terrain {
 
     /** Second derivative of the height, 1/m. */
     double curvature(double distance);
+
+    /** Whether it has one height everywhere. */
+    boolean isLevel();
+
+    /** The greatest distance at which it is known; empty where it goes on. */
+    OptionalDouble end();
 
     /** Distances where a derivative of the height jumps, ascending; empty for none. */
     Optional<double[]> knots();
@@ -68,6 +75,16 @@ public sealed interface Ground permits Ground.Incline, Ground.Terrain {
         }
 
         @Override
+        public boolean isLevel() {
+            return rise == 0;
+        }
+
+        @Override
+        public OptionalDouble end() {
+            return OptionalDouble.empty();
+        }
+
+        @Override
         public Optional<double[]> knots() {
             return Optional.empty();
         }
@@ -101,6 +118,16 @@ public sealed interface Ground permits Ground.Incline, Ground.Terrain {
         @Override
         public double curvature(double distance) {
             return heights.curvature(at(distance), distance);
+        }
+
+        @Override
+        public boolean isLevel() {
+            return false;
+        }
+
+        @Override
+        public OptionalDouble end() {
+            return OptionalDouble.of(heights.last());
         }
 
         @Override

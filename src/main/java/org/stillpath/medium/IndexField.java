@@ -30,6 +30,11 @@ public interface IndexField {
         return false;
     }
 
+    /** Whether the index depends on the height above the earth alone, as the chart of a sight gives it, or on nothing. */
+    default boolean ofHeightAlone() {
+        return uniform();
+    }
+
     /** Margins of the region where the field is valid: each is positive inside. Empty: valid everywhere. */
     default List<Level> limits() {
         return List.of();

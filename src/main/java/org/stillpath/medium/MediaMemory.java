@@ -3,6 +3,7 @@ package org.stillpath.medium;
 import java.util.Map;
 import java.util.Optional;
 import java.util.concurrent.ConcurrentHashMap;
+import java.util.function.Supplier;
 import org.stillpath.job.Node;
 
 /**
@@ -16,7 +17,11 @@ import org.stillpath.job.Node;
 public final class MediaMemory {
     private final FormulaCache formulas = new FormulaCache();
     private final Map<Key, Medium> media = new ConcurrentHashMap<>();
+    private final Map<Object, Object> made = new ConcurrentHashMap<>();
     private volatile boolean keeping = true;
+
+    /** Things worked out beyond this number are only worth their memory to a series that varies little. */
+    private static final int MOST_MADE = 64;
 
     /** A section by identity; its name counts, since messages carry it. */
     private record Key(Node section, String name) {
@@ -34,6 +39,26 @@ public final class MediaMemory {
     /** No further media are kept; those known are still found. */
     public void keep(boolean more) {
         keeping = more;
+    }
+
+    /**
+     * What is worked out once for all readings that agree in a key: fields and tables that follow from a medium.
+     *
+     * @param key equal where the thing would be the same
+     * @param sort what the thing is
+     * @param make makes it where it is not known; two threads may both make it, and either serves
+     */
+    public <T> T once(Object key, Class<T> sort, Supplier<T> make) {
+        Object known = made.get(key);
+        if (sort.isInstance(known)) {
+            return sort.cast(known);
+        }
+        T fresh = make.get();
+        if (made.size() >= MOST_MADE) {
+            made.clear();
+        }
+        made.put(key, fresh);
+        return fresh;
     }
 
     FormulaCache formulas() {

@@ -100,6 +100,11 @@ final class PlacedIndex implements IndexField {
     }
 
     @Override
+    public boolean ofHeightAlone() {
+        return scalar.ofHeightAlone();
+    }
+
+    @Override
     public List<Level> limits() {
         return limits;
     }

@@ -114,6 +114,20 @@ final class TableReader {
         return Optional.of(new Read(field, k.notes()));
     }
 
+    /**
+     * The heights of a ground against the distance, from a file; monotone between its rows where nothing is said, so that it has
+     * no corners and no dips of its own.
+     *
+     * @param section has {@code file} and may have {@code columns} and {@code interpolate}
+     * @return empty after a fault
+     */
+    Optional<Spline> ground(Section section) {
+        Interpolation how = section.find("interpolate")
+                .flatMap(v -> choice(v, Interpolation.values(), Interpolation::word))
+                .orElse(Interpolation.MONOTONE);
+        return fromFile(section, Kind.LENGTH).map(k -> Spline.of(k.at(), k.value(), how, Beyond.HOLD));
+    }
+
     /** The word of a coordinate: one of a place, or one that a chart gives. */
     private static Optional<String> along(Value value) {
         List<String> words = new ArrayList<>();

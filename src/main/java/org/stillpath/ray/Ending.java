@@ -1,6 +1,7 @@
 package org.stillpath.ray;
 
 import org.stillpath.geometry.Vector;
+import org.stillpath.medium.EarthChart;
 
 /** Where a ray that met all surfaces ends. */
 public sealed interface Ending {
@@ -43,6 +44,37 @@ public sealed interface Ending {
         public Nearest {
             if (which < 1) {
                 throw new IllegalArgumentException("which must be at least 1: " + which);
+            }
+        }
+    }
+
+    /**
+     * At the first crossing of an earth radius: the plane through the earth's centre, or the upright plane of a flat earth,
+     * that stands at a distance along the datum, across the sight.
+     *
+     * @param chart the earth
+     * @param distance metres along the datum, positive
+     */
+    record AtVertical(EarthChart chart, double distance) implements Ending {
+        public AtVertical {
+            if (!(distance > 0 && distance < 1.5 * chart.radius())) {
+                throw new IllegalArgumentException(
+                        "distance must be above 0 and below a quarter of the earth's girth: " + distance);
+            }
+        }
+    }
+
+    /**
+     * Where the clearance over the ground is least for the first time; a ray that comes no nearer to the ground after its
+     * start is lost.
+     *
+     * @param chart the earth and its ground
+     * @param scale about how far away that is, metres: what steps are judged against
+     */
+    record AtLowest(EarthChart chart, double scale) implements Ending {
+        public AtLowest {
+            if (!(scale > 0)) {
+                throw new IllegalArgumentException("scale must be positive: " + scale);
             }
         }
     }

@@ -1,8 +1,11 @@
 package org.stillpath.ray;
 
+import org.stillpath.formula.Coordinate;
+import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Surface;
 import org.stillpath.geometry.Vector;
+import org.stillpath.medium.EarthChart;
 import org.stillpath.medium.Level;
 
 /**
@@ -221,6 +224,103 @@ public abstract sealed class Target {
         @Override
         public double steepness(double[] y, double index) {
             return 4 * index;
+        }
+    }
+
+    /** A plane through the earth's centre at a distance along the datum: negative before it. */
+    public static final class AtVertical extends Target {
+        private final double mx;
+        private final double mz;
+        private final double offset;
+
+        AtVertical(EarthChart chart, double distance) {
+            boolean flat = Double.isInfinite(chart.radius());
+            double angle = flat ? 0 : distance / chart.radius();
+            this.mx = Math.cos(angle);
+            this.mz = -Math.sin(angle);
+            this.offset = flat ? distance : chart.radius() * Math.sin(angle);
+        }
+
+        @Override
+        public double value(double[] y) {
+            return mx * y[0] + mz * y[2] - offset;
+        }
+
+        @Override
+        public double rate(double[] y, double index) {
+            return mx * y[3] + mz * y[5];
+        }
+
+        @Override
+        public double steepness(double[] y, double index) {
+            return 1;
+        }
+    }
+
+    /** Where the clearance over the ground stays the same for a moment: ∇c·p = 0. */
+    public static final class AtLowest extends Target {
+        /** How fast a slope changes at least, 1/m: what stands for the bend of a ray in air over a flat earth. */
+        private static final double FLAT = 1e-9;
+
+        private final EarthChart chart;
+        private final double[] x = new double[1];
+        private final double[] y = new double[1];
+        private final double[] z = new double[1];
+        private final Samples c = new Samples(1);
+
+        AtLowest(EarthChart chart) {
+            this.chart = chart;
+        }
+
+        /** Whether the clearance is least there and not greatest. */
+        boolean isLowest(double[] state, Samples force) {
+            double n = Math.sqrt(state[3] * state[3] + state[4] * state[4] + state[5] * state[5]);
+            return rate(state, n, force.gx[0], force.gy[0], force.gz[0]) > 0;
+        }
+
+        private void sample(double[] state, Order order) {
+            x[0] = state[0];
+            y[0] = state[1];
+            z[0] = state[2];
+            chart.sample(Coordinate.CLEARANCE, x, y, z, 1, order, c);
+        }
+
+        @Override
+        public double value(double[] state) {
+            sample(state, Order.GRADIENT);
+            return c.gx[0] * state[3] + c.gy[0] * state[4] + c.gz[0] * state[5];
+        }
+
+        @Override
+        public boolean needsForce() {
+            return true;
+        }
+
+        /** Without the force's part. */
+        @Override
+        public double rate(double[] state, double index) {
+            return rate(state, index, 0, 0, 0);
+        }
+
+        @Override
+        public double rate(double[] state, double index, double fx, double fy, double fz) {
+            sample(state, Order.HESSIAN);
+            double px = state[3];
+            double py = state[4];
+            double pz = state[5];
+            return c.hxx[0] * px * px
+                    + c.hyy[0] * py * py
+                    + c.hzz[0] * pz * pz
+                    + 2 * (c.hxy[0] * px * py + c.hxz[0] * px * pz + c.hyz[0] * py * pz)
+                    + c.gx[0] * fx
+                    + c.gy[0] * fy
+                    + c.gz[0] * fz;
+        }
+
+        /** Without the force's part, and never 0, as it would be over a flat earth. */
+        @Override
+        public double steepness(double[] state, double index) {
+            return 4 * Math.abs(rate(state, index)) / index + FLAT;
         }
     }
 }

@@ -9,6 +9,7 @@ import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Surface;
 import org.stillpath.geometry.Vector;
+import org.stillpath.medium.GroundLevel;
 import org.stillpath.medium.IndexField;
 import org.stillpath.medium.Level;
 import org.stillpath.medium.Seam;
@@ -186,6 +187,10 @@ public final class Tracer {
             scale = Math.max(scale, at.opticalLength());
         } else if (ending instanceof Ending.Nearest at) {
             scale = Math.max(scale, at.to().minus(from).norm());
+        } else if (ending instanceof Ending.AtVertical at) {
+            scale = Math.max(scale, at.distance());
+        } else if (ending instanceof Ending.AtLowest at) {
+            scale = Math.max(scale, at.scale());
         }
         if (scale == 0) {
             for (Element e : train.elements()) {
@@ -267,7 +272,9 @@ public final class Tracer {
             double[] g = new double[3];
             for (Level l : field.limits()) {
                 if (l.value(y[0], y[1], y[2], g) < 0) {
-                    end(Status.OUTSIDE, "the ray starts outside " + l.describe());
+                    end(
+                            l instanceof GroundLevel ? Status.GROUNDED : Status.OUTSIDE,
+                            "the ray starts outside " + l.describe());
                     y[3] = start.direction().x();
                     y[4] = start.direction().y();
                     y[5] = start.direction().z();
@@ -379,7 +386,10 @@ public final class Tracer {
                 s = surface.firstCrossing(new Vector(y[0], y[1], y[2]), d, least, limit);
             } else {
                 s = -target.value(y) / (target.rate(y, n) / n);
-                boolean again = target instanceof Target.AtZ || target instanceof Target.Nearest;
+                boolean again = target instanceof Target.AtZ
+                        || target instanceof Target.Nearest
+                        || target instanceof Target.AtVertical
+                        || target instanceof Target.AtLowest;
                 if (again && !(s > Departure.ON * scale)) {
                     s = Double.NaN;
                 }
@@ -450,6 +460,10 @@ public final class Tracer {
                     return false;
                 }
                 if (met < 2 + seams.limits()) {
+                    if (field.limits().get(met - 2) instanceof GroundLevel) {
+                        end(Status.GROUNDED, "it meets the ground " + where());
+                        return false;
+                    }
                     end(Status.OUTSIDE, "it left " + ((Target.OnLevel) targets[met]).describe() + " " + where());
                     return false;
                 }
@@ -526,9 +540,15 @@ public final class Tracer {
                 approach(at);
                 return;
             }
+            if (ending instanceof Ending.AtLowest at) {
+                descend(at);
+                return;
+            }
             Target target;
             if (ending instanceof Ending.AtZ at) {
                 target = new Target.AtZ(at.z());
+            } else if (ending instanceof Ending.AtVertical at) {
+                target = new Target.AtVertical(at.chart(), at.distance());
             } else if (ending instanceof Ending.AtLength at) {
                 target = new Target.AtLength(at.length());
             } else if (ending instanceof Ending.AtOpticalLength at) {
@@ -536,7 +556,8 @@ public final class Tracer {
             } else {
                 throw new IllegalStateException("an ending at the last surface needs a surface");
             }
-            if (!(ending instanceof Ending.AtZ) && target.value(y) > 0) {
+            boolean ofLength = !(ending instanceof Ending.AtZ || ending instanceof Ending.AtVertical);
+            if (ofLength && target.value(y) > 0) {
                 end(Status.LOST, "the length at which the ray was to end was passed before its last surface");
                 return;
             }
@@ -564,6 +585,18 @@ public final class Tracer {
                     return;
                 }
                 limit = Math.min(limit, BACK * scale);
+            }
+        }
+
+        /** Goes to the first place where the clearance is least. */
+        private void descend(Ending.AtLowest at) {
+            Target.AtLowest target = new Target.AtLowest(at.chart());
+            while (reach(target, -1, null)) {
+                boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
+                if (defined && target.isLowest(y, flow.samples())) {
+                    arrive();
+                    return;
+                }
             }
         }
 

@@ -116,6 +116,12 @@ public final class HtmlReport {
         if (!result.paths().isEmpty()) {
             tables.add(table("Paths", "paths", "paths", RowTable.paths(result.paths(), 200)));
         }
+        if (!result.images().isEmpty()) {
+            tables.add(table("Images", "images", "images", RowTable.images(result.images(), 200)));
+        }
+        if (!result.stars().isEmpty()) {
+            tables.add(table("Stars", "stars", "stars", RowTable.stars(result.stars(), 200)));
+        }
         return tables;
     }
 

@@ -31,6 +31,13 @@ final class Methods {
                             + " themselves, not a fit to rays near the axis. Geometrical optics: diffraction images and transfer"
                             + " functions of contrast are not computed.");
         }
+        if (result.task().equals("sightline")) {
+            paragraphs.add(
+                    "Images are all rays from the eye that meet the target's earth radius at its height, found over the launch"
+                            + " elevation with the derivative of that height, which is integrated beside the ray. Where the air"
+                            + " depends on the height alone, Bouguer's integral by Gauss-Legendre quadrature answers a second"
+                            + " time, and the difference is part of the numerical error.");
+        }
         paragraphs.add("The numerical error beside a value is the program's own estimate of how far its digits can be"
                 + " trusted. It says nothing about how well the inputs are known: an index or a gradient known to one per"
                 + " cent leaves two or three digits of a focal length that mean something.");
@@ -79,6 +86,14 @@ final class Methods {
                     "The power is 1 over the effective focal length; front and rear focal lengths are the index before"
                             + " and behind over the power.");
             lines.add("A negative image distance is a virtual image; a negative magnification an inverted one.");
+        } else if (task.equals("sightline")) {
+            lines.add(
+                    "Heights are above the datum; distances run along it from below the eye. Elevations are above each"
+                            + " end's own horizontal; the arrival's is that of the path drawn on from the eye.");
+            lines.add(
+                    "Refraction is positive where the other end looks higher than it is; k is 2 R times the refraction at the"
+                            + " eye over the distance, positive where the ray bends towards the ground.");
+            lines.add("A negative magnification is an inverted image. The dip of the horizon is positive downward.");
         } else {
             lines.add("A ray's transfer matrix maps x, y, px, py at its start plane to those at its end plane, p being"
                     + " index times direction cosine; both planes are of constant z.");

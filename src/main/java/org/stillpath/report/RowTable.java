@@ -2,9 +2,12 @@ package org.stillpath.report;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Locale;
 import org.stillpath.study.Listing;
+import org.stillpath.task.ImageRow;
 import org.stillpath.task.PathRow;
 import org.stillpath.task.RayRow;
+import org.stillpath.task.StarRow;
 import org.stillpath.unit.Display;
 
 /**
@@ -121,6 +124,77 @@ record RowTable(List<String> headers, List<List<String>> rows, int left, List<St
                 rows,
                 all.size() - count,
                 List.of());
+    }
+
+    /**
+     * The first {@code most} images: how each is seen, its elevation and refraction, k, its vertical magnification and least
+     * clearance. Angles in arc seconds and minutes, which is how a survey speaks; files carry radians.
+     */
+    static RowTable images(List<ImageRow> all, int most) {
+        List<ImageRow> images = all.subList(0, Math.min(all.size(), most));
+        List<String> elevations = new ArrayList<>();
+        List<String> refractions = new ArrayList<>();
+        List<String> coefficients = new ArrayList<>();
+        List<String> magnifications = new ArrayList<>();
+        List<String> clearances = new ArrayList<>();
+        List<String> notes = new ArrayList<>();
+        for (int i = 0; i < images.size(); i++) {
+            ImageRow image = images.get(i);
+            elevations.add(fixed(Math.toDegrees(image.launch()) * 60, 4));
+            refractions.add(fixed(Math.toDegrees(image.refractionAtFrom()) * 3600, 2));
+            coefficients.add(
+                    image.coefficient().isPresent() ? fixed(image.coefficient().getAsDouble(), 3) : "");
+            magnifications.add(fixed(image.magnification(), 4));
+            clearances.add(fixed(image.lowest(), 3));
+            notes.add("image " + i + ": lowest over the ground at " + Display.of(image.lowestAt(), "m", 1)
+                    + (image.remark().isEmpty() ? "" : "; k: " + image.remark()));
+        }
+        List<String> e = Column.aligned(elevations);
+        List<String> r = Column.aligned(refractions);
+        List<String> k = Column.aligned(coefficients);
+        List<String> m = Column.aligned(magnifications);
+        List<String> c = Column.aligned(clearances);
+        List<List<String>> rows = new ArrayList<>();
+        for (int i = 0; i < images.size(); i++) {
+            rows.add(List.of(
+                    String.valueOf(i), images.get(i).orientation(), e.get(i), r.get(i), k.get(i), m.get(i), c.get(i)));
+        }
+        return new RowTable(
+                List.of("image", "seen", "elevation / '", "refraction / \"", "k", "magnified", "clearance / m"),
+                rows,
+                all.size() - images.size(),
+                notes);
+    }
+
+    /** The first {@code most} stars: apparent zenith distance and refraction. */
+    static RowTable stars(List<StarRow> all, int most) {
+        List<StarRow> stars = all.subList(0, Math.min(all.size(), most));
+        List<String> zeniths = new ArrayList<>();
+        List<String> refractions = new ArrayList<>();
+        List<String> notes = new ArrayList<>();
+        for (StarRow star : stars) {
+            zeniths.add(fixed(Math.toDegrees(star.apparentZenith()), 4));
+            refractions.add(
+                    star.refraction().isPresent()
+                            ? fixed(Math.toDegrees(star.refraction().getAsDouble()) * 3600, 3)
+                            : "");
+            if (!star.note().isEmpty()) {
+                notes.add("at " + fixed(Math.toDegrees(star.apparentZenith()), 4) + " deg: " + star.note());
+            }
+        }
+        List<String> z = Column.aligned(zeniths);
+        List<String> r = Column.aligned(refractions);
+        List<List<String>> rows = new ArrayList<>();
+        for (int i = 0; i < stars.size(); i++) {
+            rows.add(List.of(z.get(i), r.get(i)));
+        }
+        return new RowTable(
+                List.of("apparent zenith / deg", "refraction / \""), rows, all.size() - stars.size(), notes);
+    }
+
+    private static String fixed(double value, int decimals) {
+        String text = String.format(Locale.ROOT, "%." + decimals + "f", value);
+        return text.matches("-0(\\.0*)?") ? text.substring(1) : text;
     }
 
     /** The first {@code most} rays: number, status, where it ended, optical length. */

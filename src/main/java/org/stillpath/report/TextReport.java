@@ -52,6 +52,14 @@ public final class TextReport {
             text.append('\n');
             table(RowTable.paths(result.paths(), MOST_ROWS), "paths", text);
         }
+        if (!result.images().isEmpty()) {
+            text.append('\n');
+            table(RowTable.images(result.images(), MOST_ROWS), "images", text);
+        }
+        if (!result.stars().isEmpty()) {
+            text.append('\n');
+            table(RowTable.stars(result.stars(), MOST_ROWS), "stars", text);
+        }
         if (!result.warnings().isEmpty() || !result.cautions().isEmpty()) {
             text.append('\n');
         }

@@ -14,6 +14,8 @@ import java.util.Map;
  * @param quantities named values in the order in which they should be read
  * @param rays traced rays in the order given; empty for tasks without rays
  * @param paths stationary paths by optical length; empty for tasks without paths
+ * @param images images of a sighted target, the highest first; empty for tasks without them
+ * @param stars stars in the order given; empty for tasks without them
  * @param tables further tables, written as CSV
  * @param figures figures as data; empty where none was asked for
  * @param warnings what makes the result doubtful or was assumed, in words
@@ -27,13 +29,44 @@ public record Result(
         Map<String, Quantity> quantities,
         List<RayRow> rays,
         List<PathRow> paths,
+        List<ImageRow> images,
+        List<StarRow> stars,
         List<Table> tables,
         List<Figure> figures,
         List<String> warnings,
         List<String> cautions,
         boolean accuracyReached) {
 
-    /** A result without paths. */
+    /** A result without images and stars. */
+    public Result(
+            String task,
+            String title,
+            String headline,
+            Map<String, Quantity> quantities,
+            List<RayRow> rays,
+            List<PathRow> paths,
+            List<Table> tables,
+            List<Figure> figures,
+            List<String> warnings,
+            List<String> cautions,
+            boolean accuracyReached) {
+        this(
+                task,
+                title,
+                headline,
+                quantities,
+                rays,
+                paths,
+                List.of(),
+                List.of(),
+                tables,
+                figures,
+                warnings,
+                cautions,
+                accuracyReached);
+    }
+
+    /** A result without paths, images and stars. */
     public Result(
             String task,
             String title,
@@ -52,6 +85,8 @@ public record Result(
         quantities = Collections.unmodifiableMap(new LinkedHashMap<>(quantities));
         rays = List.copyOf(rays);
         paths = List.copyOf(paths);
+        images = List.copyOf(images);
+        stars = List.copyOf(stars);
         tables = List.copyOf(tables);
         figures = List.copyOf(figures);
         warnings = List.copyOf(warnings);
@@ -72,6 +107,8 @@ public record Result(
                 quantities,
                 rays,
                 paths,
+                images,
+                stars,
                 otherTables,
                 otherFigures,
                 otherWarnings,

@@ -13,7 +13,7 @@ import org.stillpath.geometry.Vector;
  */
 public final class ResultPath {
     /** Lists of a result that hold numbers, by the key that leads to them. */
-    private static final List<String> LISTS = List.of("quantities", "rays", "paths");
+    private static final List<String> LISTS = List.of("quantities", "rays", "paths", "images", "stars");
 
     private final String text;
     private final List<String> parts;
@@ -32,7 +32,7 @@ public final class ResultPath {
      */
     public record Found(double value, String unit, double error) {}
 
-    /** The path that a text spells; empty where it does not start at {@code quantities}, {@code rays} or {@code paths}. */
+    /** The path that a text spells; empty where it does not start at a list that holds numbers. */
     public static Optional<ResultPath> parse(String text) {
         List<String> parts = new ArrayList<>();
         for (String part : text.strip().replace("]", "").split("[.\\[]", -1)) {
@@ -73,6 +73,8 @@ public final class ResultPath {
         return switch (parts.get(0)) {
             case "quantities" -> quantity(result.quantities().get(parts.get(1)));
             case "rays" -> element(result.rays()).flatMap(this::ray);
+            case "images" -> element(result.images()).flatMap(this::image);
+            case "stars" -> element(result.stars()).flatMap(this::star);
             default -> element(result.paths()).flatMap(this::path);
         };
     }
@@ -138,6 +140,38 @@ public final class ResultPath {
             case "arrival-direction" -> component(p.arrival(), "1", error);
             case "morse-index" -> plain(p.morseIndex(), "1", 0);
             case "residual" -> plain(p.residual(), "m", 0);
+            default -> Optional.empty();
+        };
+    }
+
+    private Optional<Found> image(ImageRow r) {
+        String key = parts.get(2);
+        double error = r.errors().getOrDefault(key, 0.0);
+        return switch (key) {
+            case "launch-elevation" -> plain(r.launch(), "rad", error);
+            case "arrival-elevation" -> plain(r.arrival(), "rad", error);
+            case "back-elevation" -> plain(-r.arrival(), "rad", r.errors().getOrDefault("arrival-elevation", 0.0));
+            case "refraction-at-from" -> plain(r.refractionAtFrom(), "rad", error);
+            case "refraction-at-to" -> plain(r.refractionAtTo(), "rad", error);
+            case "apparent-displacement" -> plain(r.displacement(), "m", error);
+            case "refraction-coefficient" ->
+                r.coefficient().isPresent() ? plain(r.coefficient().getAsDouble(), "1", error) : Optional.empty();
+            case "optical-length" -> plain(r.opticalLength(), "m", error);
+            case "optical-excess" -> plain(r.excess(), "m", error);
+            case "length" -> plain(r.length(), "m", error);
+            case "lowest-clearance" -> plain(r.lowest(), "m", error);
+            case "vertical-magnification" -> plain(r.magnification(), "1", error);
+            default -> Optional.empty();
+        };
+    }
+
+    private Optional<Found> star(StarRow r) {
+        String key = parts.get(2);
+        double error = r.errors().getOrDefault(key, 0.0);
+        return switch (key) {
+            case "apparent-zenith" -> plain(r.apparentZenith(), "rad", error);
+            case "refraction" ->
+                r.refraction().isPresent() ? plain(r.refraction().getAsDouble(), "rad", error) : Optional.empty();
             default -> Optional.empty();
         };
     }

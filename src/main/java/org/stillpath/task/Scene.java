@@ -28,6 +28,8 @@ import org.stillpath.unit.Kind;
  * @param train the train; absent where one medium is everywhere
  * @param through the medium that is everywhere; absent where there is a train
  * @param figures names of the figures asked for; absent: the task's usual ones
+ * @param sources files that the job may name
+ * @param memory what it has in common with other readings
  */
 public record Scene(
         String title,
@@ -36,7 +38,9 @@ public record Scene(
         double accuracy,
         Optional<TrainPlan> train,
         Optional<Medium> through,
-        Optional<List<Value>> figures) {
+        Optional<List<Value>> figures,
+        Sources sources,
+        MediaMemory memory) {
     /** The helium d line, the usual reference of catalogues, for jobs that name no wavelength. */
     private static final double D_LINE = 587.5618e-9;
 
@@ -122,7 +126,8 @@ public record Scene(
                 .map(list -> list.stream()
                         .filter(v -> !(studied && isStudyFigure(v)))
                         .toList());
-        return new Scene(title, wavelengths, wavelength.isPresent(), accuracy, train, through, figures);
+        return new Scene(
+                title, wavelengths, wavelength.isPresent(), accuracy, train, through, figures, sources, memory);
     }
 
     private static boolean isStudyFigure(Value value) {

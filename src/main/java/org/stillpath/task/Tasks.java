@@ -11,9 +11,10 @@ import org.stillpath.problem.Problems;
 
 /** The tasks by name, and the way from a job to its result. */
 public final class Tasks {
-    private static final List<Task> ALL = List.of(new TraceTask(), new BetweenTask(), new LensTask());
+    private static final List<Task> ALL =
+            List.of(new TraceTask(), new BetweenTask(), new LensTask(), new SightlineTask());
     /** Words of the job file that a later version gives a meaning. */
-    private static final List<String> PLANNED = List.of("sightline", "window");
+    private static final List<String> PLANNED = List.of("window");
 
     private Tasks() {}
 
