@@ -351,9 +351,11 @@ class SightlineTest {
         String job = AIR + "from: {height: 30 m}\nto: {distance: 5 km, height: 20 m}\n";
         Result alone = Jobs.run(job);
         Result again = Jobs.series(job, "to.distance", "5 km");
+        // formulas that have been compiled meanwhile round the last bit otherwise
+        double bit = 2e-18;
         assertThat(again.images().get(0).launch())
-                .isEqualTo(alone.images().get(0).launch());
+                .isCloseTo(alone.images().get(0).launch(), within(bit));
         assertThat(Jobs.series(job, "to.distance", "6 km").images().get(0).launch())
-                .isEqualTo(Jobs.run(job.replace("5 km", "6 km")).images().get(0).launch());
+                .isCloseTo(Jobs.run(job.replace("5 km", "6 km")).images().get(0).launch(), within(bit));
     }
 }
