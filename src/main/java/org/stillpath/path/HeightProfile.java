@@ -1,5 +1,6 @@
 package org.stillpath.path;
 
+import java.util.Set;
 import java.util.TreeSet;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
@@ -58,7 +59,7 @@ final class HeightProfile {
     }
 
     /** Kinks of a formula: its own functions of the height, whose zeros are looked for from 10 m below the datum to 100 km. */
-    private static void kinks(Seam seam, TreeSet<Double> knots, double[] gradient) {
+    private static void kinks(Seam seam, Set<Double> knots, double[] gradient) {
         double before = Double.NaN;
         double last = -10;
         for (int i = 0; i <= 400; i++) {

@@ -9,7 +9,6 @@ import org.stillpath.ray.Status;
  * Math. 6 (1980) 19, of orders 5 and 4. Mutable, one a search.
  */
 final class LayerShot {
-    private static final double[] C = {0, 0.2, 0.3, 0.8, 8 / 9.0, 1, 1};
     private static final double[][] A = {
         {},
         {0.2},

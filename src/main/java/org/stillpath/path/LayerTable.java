@@ -174,7 +174,9 @@ final class LayerTable {
         double w = at[c + 1] - at[c];
         double t = (h - at[c]) / w;
         double u = 1 - t;
-        return u * u * (1 + 2 * t) * g[c] + t * t * (3 - 2 * t) * g[c + 1] + t * u * w * (u * slope[c] - t * slope[c + 1]);
+        return u * u * (1 + 2 * t) * g[c]
+                + t * t * (3 - 2 * t) * g[c + 1]
+                + t * u * w * (u * slope[c] - t * slope[c + 1]);
     }
 
     /** dG/dh at a height of a cell. */

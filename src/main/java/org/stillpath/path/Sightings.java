@@ -89,6 +89,7 @@ public final class Sightings {
      * @param images from the highest apparent one down
      * @param transfer launch elevation (rad, ascending), height at the target's distance (metres) and d height/d elevation
      *     (m/rad) of the rays that got there
+     * @param blocked launch elevations (rad, ascending) of the rays that did not
      * @param seen heights at the target's distance that some ray reaches: intervals from below up, the last one open above
      * @param limb the lowest of them and how it is bounded
      * @param ducts layers that can keep rays
@@ -100,6 +101,7 @@ public final class Sightings {
     public record Outcome(
             List<Sighting> images,
             double[][] transfer,
+            double[] blocked,
             double[][] seen,
             Optional<Limb> limb,
             List<Duct> ducts,
@@ -110,6 +112,7 @@ public final class Sightings {
         public Outcome {
             images = List.copyOf(images);
             transfer = Arrays.stream(transfer).map(double[]::clone).toArray(double[][]::new);
+            blocked = blocked.clone();
             seen = Arrays.stream(seen).map(double[]::clone).toArray(double[][]::new);
             ducts = List.copyOf(ducts);
         }
@@ -118,6 +121,12 @@ public final class Sightings {
         @Override
         public double[][] transfer() {
             return Arrays.stream(transfer).map(double[]::clone).toArray(double[][]::new);
+        }
+
+        /** A copy. */
+        @Override
+        public double[] blocked() {
+            return blocked.clone();
         }
 
         /** A copy. */
@@ -464,7 +473,8 @@ public final class Sightings {
             double[] y = t.state();
             double[] c = clearance(y, t);
             step = (1e-10 - c[0]) / c[1];
-            if (Math.abs(step) <= Math.max(1e-16 + 1e-13 * Math.abs(e), 0.01 * accuracy * Math.abs(e)) || Math.abs(step) >= 0.5 * Math.abs(before)) {
+            if (Math.abs(step) <= Math.max(1e-16 + 1e-13 * Math.abs(e), 0.01 * accuracy * Math.abs(e))
+                    || Math.abs(step) >= 0.5 * Math.abs(before)) {
                 double error = 2e-16 + Math.abs(step) + (2e-10 + scale * accuracy * 0.1) / Math.abs(c[1]);
                 double bend = Math.abs(c[2]);
                 e += Math.abs(step) < 1e-9 ? step : 0;
@@ -552,6 +562,10 @@ public final class Sightings {
             return new Outcome(
                     images,
                     transfer.toArray(double[][]::new),
+                    samples.stream()
+                            .filter(s -> !s.arrived())
+                            .mapToDouble(Sample::angle)
+                            .toArray(),
                     seen(),
                     limb(),
                     ducts,

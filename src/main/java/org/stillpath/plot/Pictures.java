@@ -2,6 +2,7 @@ package org.stillpath.plot;
 
 import org.stillpath.task.CurveFigure;
 import org.stillpath.task.Figure;
+import org.stillpath.task.PanelFigure;
 import org.stillpath.task.SectionFigure;
 
 /** Draws figures: the one place that knows which class draws which kind of {@link Figure}. */
@@ -21,6 +22,9 @@ public final class Pictures {
         }
         if (figure instanceof CurveFigure curves) {
             return new CurveDrawing(curves, width).picture();
+        }
+        if (figure instanceof PanelFigure panels) {
+            return new PanelDrawing(panels, width).picture();
         }
         throw new IllegalArgumentException("figure " + figure.name() + " is of a kind that nothing draws: "
                 + figure.getClass().getSimpleName());

@@ -56,10 +56,12 @@ final class Methods {
                             + " and behind over the power.");
             lines.add("A negative image distance is a virtual image; a negative magnification an inverted one.");
         } else if (task.equals("sightline")) {
-            lines.add("Heights are above the datum; distances run along it from below the eye. Elevations are above each"
-                    + " end's own horizontal; the arrival's is that of the path drawn on from the eye.");
-            lines.add("Refraction is positive where the other end looks higher than it is; k is 2 R times the refraction at the"
-                    + " eye over the distance, positive where the ray bends towards the ground.");
+            lines.add(
+                    "Heights are above the datum; distances run along it from below the eye. Elevations are above each"
+                            + " end's own horizontal; the arrival's is that of the path drawn on from the eye.");
+            lines.add(
+                    "Refraction is positive where the other end looks higher than it is; k is 2 R times the refraction at the"
+                            + " eye over the distance, positive where the ray bends towards the ground.");
             lines.add("A negative magnification is an inverted image. The dip of the horizon is positive downward.");
         } else {
             lines.add("A ray's transfer matrix maps x, y, px, py at its start plane to those at its end plane, p being"

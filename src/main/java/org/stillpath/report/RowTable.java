@@ -79,9 +79,7 @@ record RowTable(List<String> headers, List<List<String>> rows, int left, List<St
             elevations.add(fixed(Math.toDegrees(image.launch()) * 60, 4));
             refractions.add(fixed(Math.toDegrees(image.refractionAtFrom()) * 3600, 2));
             coefficients.add(
-                    image.coefficient().isPresent()
-                            ? fixed(image.coefficient().getAsDouble(), 3)
-                            : "");
+                    image.coefficient().isPresent() ? fixed(image.coefficient().getAsDouble(), 3) : "");
             magnifications.add(fixed(image.magnification(), 4));
             clearances.add(fixed(image.lowest(), 3));
             notes.add("image " + i + ": lowest over the ground at " + Display.of(image.lowestAt(), "m", 1)
@@ -95,13 +93,7 @@ record RowTable(List<String> headers, List<List<String>> rows, int left, List<St
         List<List<String>> rows = new ArrayList<>();
         for (int i = 0; i < images.size(); i++) {
             rows.add(List.of(
-                    String.valueOf(i),
-                    images.get(i).orientation(),
-                    e.get(i),
-                    r.get(i),
-                    k.get(i),
-                    m.get(i),
-                    c.get(i)));
+                    String.valueOf(i), images.get(i).orientation(), e.get(i), r.get(i), k.get(i), m.get(i), c.get(i)));
         }
         return new RowTable(
                 List.of("image", "seen", "elevation / '", "refraction / \"", "k", "magnified", "clearance / m"),

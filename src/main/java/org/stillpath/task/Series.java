@@ -45,7 +45,8 @@ public final class Series {
      * @throws org.stillpath.problem.ProblemException with all its faults, or if its train cannot give what the task asks for
      */
     public Result run(Node.Mapping variant, Tasks.Options options) {
-        return Tasks.read(variant, sources, same(variant) ? scene : Optional.empty()).run(options);
+        return Tasks.read(variant, sources, same(variant) ? scene : Optional.empty())
+                .run(options);
     }
 
     // the very same node: equal ones would have to be compared to their leaves

@@ -34,8 +34,6 @@ final class SightlineTask implements Task {
     /** Height to which rays are followed where the air does not end, metres. */
     private static final double SPACE = 100e3;
 
-    private static final List<String> FIGURES = List.of("profile", "sightline", "transfer", "view");
-
     @Override
     public String name() {
         return "sightline";
@@ -58,7 +56,7 @@ final class SightlineTask implements Task {
         if (scene.wavelengths().length > 1) {
             job.fault("wavelength", "the task \"sightline\" takes one wavelength");
         }
-        Figures figures = Figures.read(job, scene, FIGURES, List.of());
+        SightFigures.Wanted figures = SightFigures.Wanted.read(job, scene);
         if (sight.isPresent() && ground.isPresent()) {
             check(job, sight.get(), ground.get());
         }
@@ -67,7 +65,8 @@ final class SightlineTask implements Task {
                 scene,
                 setting(scene, known, ground.orElse(Ground.level(0))),
                 sight.orElseThrow(() -> new IllegalStateException("a job without a sight has faults")),
-                figures.names(),
+                figures,
+                options.figures(),
                 earthGiven);
     }
 
@@ -123,24 +122,24 @@ final class SightlineTask implements Task {
         return Display.of(metres, "m", Math.max(1e-3, 1e-9 * Math.abs(metres))).toString();
     }
 
-    private static Result run(Scene scene, Setting setting, Sight sight, List<String> figures, boolean earthGiven) {
+    private static Result run(
+            Scene scene, Setting setting, Sight sight, SightFigures.Wanted wanted, boolean drawn, boolean earthGiven) {
         List<String> warnings = new ArrayList<>(scene.warnings());
         if (!earthGiven) {
             warnings.add("no earth is given; a sphere of 6371 km is taken");
         }
-        for (String f : figures) {
-            warnings.add("the figure `" + f + "` is not in this version yet");
-        }
+        SightFigures figures = new SightFigures(wanted, drawn, scene, setting, sight.eye());
         if (sight.to() instanceof Sight.Stars stars) {
-            return stars(scene, setting, sight, stars, warnings);
+            return stars(scene, setting, sight, stars, figures, warnings);
         }
         if (sight.to() instanceof Sight.Staff staff) {
-            return staff(scene, setting, sight, staff, warnings);
+            return staff(scene, setting, sight, staff, figures, warnings);
         }
-        return target(scene, setting, sight, (Sight.Point) sight.to(), warnings);
+        return target(scene, setting, sight, (Sight.Point) sight.to(), figures, warnings);
     }
 
-    private static Result target(Scene scene, Setting setting, Sight sight, Sight.Point point, List<String> warnings) {
+    private static Result target(
+            Scene scene, Setting setting, Sight sight, Sight.Point point, SightFigures figures, List<String> warnings) {
         double eye = sight.eye();
         double distance = point.distance().orElseThrow();
         double height = point.height().orElseThrow();
@@ -178,17 +177,18 @@ final class SightlineTask implements Task {
         if (!accurate) {
             warnings.add(Words.notReached(scene.accuracy()));
         }
+        String headline = headline(rows, seen, height);
         return new Result(
                 "sightline",
                 scene.title(),
-                headline(rows, seen, height),
+                headline,
                 q,
                 List.of(),
                 List.of(),
                 rows,
                 List.of(),
                 List.of(table(rows), transfer(seen)),
-                List.of(),
+                figures.of(new SightFigures.Found(distance, height, point.span(), seen, rows, headline), warnings),
                 warnings,
                 CAUTIONS,
                 accurate);
@@ -351,7 +351,8 @@ final class SightlineTask implements Task {
                 + String.join(", ", rows.stream().map(ImageRow::orientation).toList()) + " from above";
     }
 
-    private static Result stars(Scene scene, Setting setting, Sight sight, Sight.Stars stars, List<String> warnings) {
+    private static Result stars(
+            Scene scene, Setting setting, Sight sight, Sight.Stars stars, SightFigures figures, List<String> warnings) {
         double eye = sight.eye();
         double radius = setting.chart().radius();
         Optional<Bouguer> second = Bouguer.of(setting.field(), radius);
@@ -360,7 +361,8 @@ final class SightlineTask implements Task {
         for (double z : stars.zeniths()) {
             StarRow row = star(setting, eye, z, second);
             rows.add(row);
-            accurate &= row.refraction().isEmpty() || row.errors().getOrDefault("refraction", 0.0) <= 1.01 * scene.accuracy() + 1e-15;
+            accurate &= row.refraction().isEmpty()
+                    || row.errors().getOrDefault("refraction", 0.0) <= 1.01 * scene.accuracy() + 1e-15;
         }
         if (!accurate) {
             warnings.add(Words.notReached(scene.accuracy()));
@@ -393,7 +395,7 @@ final class SightlineTask implements Task {
                 List.of(),
                 rows,
                 List.of(new Table("stars", List.of("apparent-zenith [rad]", "refraction [rad]", "note"), cells)),
-                List.of(),
+                figures.without("a sight to the stars", eye, top, 0, warnings),
                 warnings,
                 CAUTIONS,
                 accurate);
@@ -435,7 +437,8 @@ final class SightlineTask implements Task {
         return new StarRow(zenith, OptionalDouble.of(refraction), top, note, Map.of("refraction", error));
     }
 
-    private static Result staff(Scene scene, Setting setting, Sight sight, Sight.Staff staff, List<String> warnings) {
+    private static Result staff(
+            Scene scene, Setting setting, Sight sight, Sight.Staff staff, SightFigures figures, List<String> warnings) {
         double eye = sight.eye();
         double radius = setting.chart().radius();
         Sightings.Reached r = setting.sightings().reach(eye, 0, staff.distance());
@@ -471,10 +474,20 @@ final class SightlineTask implements Task {
                 List.of(),
                 List.of(),
                 List.of(),
-                List.of(),
+                figures.without(
+                        "a level sight to a staff",
+                        Math.min(ground(setting, staff), eye),
+                        eye + Math.max(0.5, 0.5 * Math.abs(eye - ground(setting, staff))),
+                        staff.distance(),
+                        warnings),
                 warnings,
                 CAUTIONS,
                 accurate);
+    }
+
+    private static double ground(Setting setting, Sight.Staff staff) {
+        Ground ground = setting.chart().ground();
+        return Math.min(ground.height(0), ground.height(staff.distance()));
     }
 
     private static Table table(List<ImageRow> rows) {
