@@ -20,7 +20,7 @@ import org.stillpath.task.SectionFigure.Role;
 
 /** Draws a {@link PanelFigure}: its panels side by side at both widths, the shared axis labelled at the left one alone. */
 final class PanelDrawing {
-    private static final double GUTTER = 14;
+    private static final double GUTTER = 24;
     private static final double THINNING = 0.03;
     private static final Pen LEVEL = Pen.dashed(Ink.GREY, 0.5, 1.0, 2.0);
     private static final double[] GAPS = {2, 5, 9, 16, 26};

@@ -44,6 +44,8 @@ final class SightFigures {
     private static final int ROWS = 90;
     /** More images than this are numbered without the word. */
     private static final int MOST_NAMED = 4;
+    /** More folds than this are marked without the word. */
+    private static final int MOST_FOLDS = 6;
     /** Ground further below the paths than this many times their range of heights is left out. */
     private static final double FAR_BELOW = 3;
     /** Least angle under which a thing is drawn, rad: three minutes of arc. */
@@ -431,10 +433,17 @@ final class SightFigures {
         }
     }
 
+    private static String where(ImageRow i, double distance) {
+        double near = 1e-6 * distance;
+        return i.lowestAt() < near
+                ? "at the instrument"
+                : i.lowestAt() > distance - near ? "at the target" : "at " + far(i.lowestAt());
+    }
+
     private static String lowest(Found f) {
         return f.images().stream()
                 .min(java.util.Comparator.comparingDouble(ImageRow::lowest))
-                .map(i -> "; the lowest ray clears the ground by " + metres(i.lowest()) + " at " + far(i.lowestAt()))
+                .map(i -> "; the lowest ray clears the ground by " + metres(i.lowest()) + " " + where(i, f.distance()))
                 .orElse("");
     }
 
@@ -524,12 +533,13 @@ final class SightFigures {
         List<Curve> curves = new ArrayList<>();
         List<Mark> marks = new ArrayList<>();
         curves.add(straight(f.distance(), up));
+        long folds = curve.pieces().stream().filter(SightCurve.Piece::fold).count();
         for (SightCurve.Piece p : curve.pieces()) {
             boolean erect = p.erect();
             curves.add(new Curve(
                     erect ? Style.ERECT : Style.INVERTED, erect ? "erect" : "inverted", p.elevation(), p.height()));
             if (p.fold()) {
-                marks.add(new Mark(Style.FOLD, "fold", p.elevation()[0], p.height()[0]));
+                marks.add(new Mark(Style.FOLD, folds <= MOST_FOLDS ? "fold" : "", p.elevation()[0], p.height()[0]));
             }
         }
         for (double[] j : curve.jumps()) {
@@ -717,6 +727,12 @@ final class SightFigures {
         return most;
     }
 
+    private static String single(Found f) {
+        ImageRow i = f.images().get(0);
+        return ", " + minutes(Math.abs(i.refractionAtFrom())) + (i.refractionAtFrom() < 0 ? " lower" : " higher")
+                + " than it is and " + three(Math.abs(i.magnification())) + " times as tall";
+    }
+
     private static String viewAnswer(Found f, SightTarget target, double[] object, int pieces) {
         String name = "The " + target.kind().word();
         double foot = object[0];
@@ -731,7 +747,9 @@ final class SightFigures {
         String how =
                 switch (f.images().size()) {
                     case 0 -> pieces > 1 ? " is seen in " + pieces + " parts" : " is seen once";
-                    case 1 -> pieces > 1 ? " is seen once at the target's height, elsewhere repeated" : " is seen once";
+                    case 1 ->
+                        " is seen once" + (pieces > 1 ? " at the target's height, other parts repeatedly" : "")
+                                + single(f);
                     default ->
                         " is seen " + f.images().size() + " times at the target's height: "
                                 + String.join(
