@@ -7,6 +7,7 @@ import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Frame;
+import org.stillpath.geometry.Vector;
 
 /**
  * Air whose state varies from place to place. Where temperature, pressure and humidity all depend on the height alone,
@@ -102,6 +103,33 @@ public final class AtmosphereMedium implements Medium {
             }
         }
         return placed;
+    }
+
+    /**
+     * The temperature at places over an earth, for a picture of the air.
+     *
+     * @param frame where the medium's own frame lies in the job, from {@link #frame}
+     * @param chart gives height, clearance and distance in the job's coordinates
+     * @param x coordinates in metres; {@code z} likewise, as many; y is 0
+     * @return kelvin, one a place; NaN where it is undefined
+     */
+    public double[] temperatures(Frame frame, Chart chart, double[] x, double[] z) {
+        ScalarField field = temperature.on(FramedChart.of(chart, frame));
+        Samples s = new Samples(1);
+        double[] kelvin = new double[x.length];
+        for (int i = 0; i < kelvin.length; i++) {
+            Vector own = frame.fromJob(new Vector(x[i], 0, z[i]));
+            field.sample(
+                    new double[] {own.x()},
+                    new double[] {own.y()},
+                    new double[] {own.z()},
+                    1,
+                    Double.NaN,
+                    Order.VALUE,
+                    s);
+            kelvin[i] = s.value[0];
+        }
+        return kelvin;
     }
 
     @Override

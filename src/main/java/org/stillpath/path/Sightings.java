@@ -89,6 +89,7 @@ public final class Sightings {
      * @param images from the highest apparent one down
      * @param transfer launch elevation (rad, ascending), height at the target's distance (metres) and d height/d elevation
      *     (m/rad) of the rays that got there
+     * @param blocked launch elevations (rad, ascending) of the rays that did not
      * @param seen heights at the target's distance that some ray reaches: intervals from below up, the last one open above
      * @param limb the lowest of them and how it is bounded
      * @param ducts layers that can keep rays
@@ -100,6 +101,7 @@ public final class Sightings {
     public record Outcome(
             List<Sighting> images,
             double[][] transfer,
+            double[] blocked,
             double[][] seen,
             Optional<Limb> limb,
             List<Duct> ducts,
@@ -110,6 +112,7 @@ public final class Sightings {
         public Outcome {
             images = List.copyOf(images);
             transfer = Arrays.stream(transfer).map(double[]::clone).toArray(double[][]::new);
+            blocked = blocked.clone();
             seen = Arrays.stream(seen).map(double[]::clone).toArray(double[][]::new);
             ducts = List.copyOf(ducts);
         }
@@ -118,6 +121,12 @@ public final class Sightings {
         @Override
         public double[][] transfer() {
             return Arrays.stream(transfer).map(double[]::clone).toArray(double[][]::new);
+        }
+
+        /** A copy. */
+        @Override
+        public double[] blocked() {
+            return blocked.clone();
         }
 
         /** A copy. */
@@ -565,6 +574,10 @@ public final class Sightings {
             return new Outcome(
                     images,
                     transfer.toArray(double[][]::new),
+                    samples.stream()
+                            .filter(s -> !s.arrived())
+                            .mapToDouble(Sample::angle)
+                            .toArray(),
                     seen(),
                     limb(),
                     ducts,

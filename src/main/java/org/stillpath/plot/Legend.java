@@ -60,8 +60,8 @@ final class Legend {
     /** How a stationary path is drawn. */
     static Pen pen(Role role) {
         return switch (role) {
-            case MINIMUM -> Pen.firm(Ink.BLUE, 1.4);
-            case SADDLE -> Pen.dashed(Ink.VERMILLION, 1.4, 6.0, 2.5);
+            case MINIMUM, ERECT -> Pen.firm(Ink.BLUE, 1.4);
+            case SADDLE, INVERTED -> Pen.dashed(Ink.VERMILLION, 1.4, 6.0, 2.5);
             case DEGENERATE -> Pen.dashed(Ink.PURPLE, 1.9, 1.7, 1.7);
             default -> Pen.firm(Ink.INK, 0.8);
         };
@@ -73,6 +73,8 @@ final class Legend {
                 switch (role) {
                     case MINIMUM -> count == 1 ? "minimum" : "minima";
                     case SADDLE -> count == 1 ? "saddle" : "saddles";
+                    case ERECT -> count == 1 ? "erect image" : "erect images";
+                    case INVERTED -> count == 1 ? "inverted image" : "inverted images";
                     case DEGENERATE -> count == 1 ? "degenerate path" : "degenerate paths";
                     default -> count == 1 ? "path" : "paths";
                 };
@@ -83,7 +85,7 @@ final class Legend {
     static void mark(Canvas canvas, Role role, double x, double y) {
         Ink ink = pen(role).ink();
         switch (role) {
-            case SADDLE -> {
+            case SADDLE, INVERTED -> {
                 area(canvas, Ink.PAPER, x, y, 4.6, 0, 1, 0, -1);
                 area(canvas, ink, x, y, 3.6, 0, 1, 0, -1);
             }

@@ -5,6 +5,7 @@ import org.stillpath.task.ChartFigure;
 import org.stillpath.task.CurveFigure;
 import org.stillpath.task.Figure;
 import org.stillpath.task.MapFigure;
+import org.stillpath.task.PanelFigure;
 import org.stillpath.task.SectionFigure;
 
 /** Draws figures: the one place that knows which class draws which kind of {@link Figure}. */
@@ -33,6 +34,9 @@ public final class Pictures {
         }
         if (figure instanceof BarFigure bars) {
             return new BarDrawing(bars, width).picture();
+        }
+        if (figure instanceof PanelFigure panels) {
+            return new PanelDrawing(panels, width).picture();
         }
         throw new IllegalArgumentException("figure " + figure.name() + " is of a kind that nothing draws: "
                 + figure.getClass().getSimpleName());

@@ -38,8 +38,15 @@ final class SectionDrawing {
     /** How far rays that go astray may widen the view, in parts of the rest. */
     private static final double STRAY = 0.2;
 
-    private static final Set<Role> LIGHT =
-            EnumSet.of(Role.RAY, Role.MINIMUM, Role.SADDLE, Role.DEGENERATE, Role.PRINCIPAL_RAY, Role.LOST_RAY);
+    private static final Set<Role> LIGHT = EnumSet.of(
+            Role.RAY,
+            Role.MINIMUM,
+            Role.SADDLE,
+            Role.DEGENERATE,
+            Role.ERECT,
+            Role.INVERTED,
+            Role.PRINCIPAL_RAY,
+            Role.LOST_RAY);
 
     private static final double HATCH = 4.5;
     private static final double THINNING = 0.03;
@@ -57,6 +64,9 @@ final class SectionDrawing {
             Role.DEGENERATE,
             Role.SADDLE,
             Role.MINIMUM,
+            Role.INVERTED,
+            Role.ERECT,
+            Role.CLEARANCE,
             Role.LOST_RAY,
             Role.PRINCIPAL_RAY,
             Role.SURFACE,
@@ -219,7 +229,7 @@ final class SectionDrawing {
     /** Which kinds of paths there are, and how many of each; returns the y below. */
     private double legend(double top) {
         Legend legend = new Legend(width.points());
-        for (Role role : List.of(Role.MINIMUM, Role.SADDLE, Role.DEGENERATE)) {
+        for (Role role : List.of(Role.ERECT, Role.INVERTED, Role.MINIMUM, Role.SADDLE, Role.DEGENERATE)) {
             long count = figure.lines().stream().filter(l -> l.role() == role).count();
             if (count > 0) {
                 legend.line(Legend.pen(role), Legend.words(role, count));
@@ -441,7 +451,8 @@ final class SectionDrawing {
     private static Pen pen(Role role, int rays, int number) {
         return switch (role) {
             case RAY -> Pen.firm(Ink.INK, rays <= 15 ? 0.8 : rays <= 40 ? 0.6 : 0.4);
-            case MINIMUM, SADDLE, DEGENERATE -> Legend.pen(role);
+            case MINIMUM, SADDLE, DEGENERATE, ERECT, INVERTED -> Legend.pen(role);
+            case CLEARANCE -> Pen.firm(Ink.GREEN, 1.3);
             case LOST_RAY -> Pen.dashed(Ink.VERMILLION, 0.9, 4.0, 2.5);
             case PRINCIPAL_RAY ->
                 switch (number % 3) {
@@ -465,7 +476,8 @@ final class SectionDrawing {
     private static double price(Role role) {
         return switch (role) {
             case AXIS, EXTENSION, PLANE -> 0.5;
-            case RAY, MINIMUM, SADDLE, DEGENERATE, LOST_RAY, PRINCIPAL_RAY -> 0.9;
+            case RAY, MINIMUM, SADDLE, DEGENERATE, ERECT, INVERTED, LOST_RAY, PRINCIPAL_RAY -> 0.9;
+            case CLEARANCE -> 1;
             case SURFACE, MIRROR, GROUND, THIN_LENS, STOP, OBJECT, IMAGE, VIRTUAL_IMAGE -> 2;
         };
     }
@@ -477,7 +489,7 @@ final class SectionDrawing {
         }
         switch (role) {
             case MIRROR -> hatch(d, behind(d.whole(), light), plot, labels);
-            case GROUND -> hatch(d, 1, plot, labels);
+            case GROUND -> ground(d, plot, labels);
             default -> {}
         }
         if (role == Role.OBJECT || role == Role.IMAGE || role == Role.VIRTUAL_IMAGE) {
@@ -488,6 +500,21 @@ final class SectionDrawing {
         if (role == Role.THIN_LENS) {
             tips(d, pen, plot, labels);
         }
+    }
+
+    /** Filled below, so that a flat profile is still seen as what hides. */
+    private void ground(Drawn d, Box plot, Labels labels) {
+        for (Polyline part : d.parts()) {
+            int n = part.size();
+            double[] x = Arrays.copyOf(part.x(), n + 2);
+            double[] y = Arrays.copyOf(part.y(), n + 2);
+            x[n] = x[n - 1];
+            x[n + 1] = x[0];
+            y[n] = plot.bottom();
+            y[n + 1] = plot.bottom();
+            canvas.add(new Item.Area(x, y, Ink.LIGHT));
+        }
+        hatch(d, 1, plot, labels);
     }
 
     /** All points of rays, as one list; not a line. */
@@ -669,6 +696,8 @@ final class SectionDrawing {
             Role.MINIMUM,
             Role.SADDLE,
             Role.DEGENERATE,
+            Role.ERECT,
+            Role.INVERTED,
             Role.LOST_RAY,
             Role.PRINCIPAL_RAY,
             Role.EXTENSION,
@@ -679,6 +708,8 @@ final class SectionDrawing {
     private static final List<Side> END_DOWN = List.of(
             Side.BELOW, Side.RIGHT, Side.LEFT, Side.BELOW_RIGHT, Side.BELOW_LEFT, Side.ABOVE_RIGHT, Side.ABOVE_LEFT);
     private static final List<Side> SIDEWAYS = List.of(Side.RIGHT, Side.LEFT);
+    private static final List<Side> BESIDE = List.of(
+            Side.RIGHT, Side.LEFT, Side.ABOVE_RIGHT, Side.ABOVE_LEFT, Side.BELOW_RIGHT, Side.BELOW_LEFT, Side.ABOVE);
     private static final List<Side> ALONG = List.of(
             Side.ABOVE,
             Side.BELOW,
@@ -759,13 +790,19 @@ final class SectionDrawing {
                 double[] middle = longest.at(0.5);
                 anchors.add(new Anchor(middle[0], middle[1], SIDEWAYS));
             }
+            case CLEARANCE -> {
+                for (double part : new double[] {0.5, 0.25, 0.75, 1, 0}) {
+                    double[] at = longest.at(part);
+                    anchors.add(new Anchor(at[0], at[1], BESIDE));
+                }
+            }
             case GROUND -> {
                 for (double part : new double[] {0.5, 0.25, 0.75, 0.1, 0.9}) {
                     double[] at = longest.at(part);
                     anchors.add(new Anchor(at[0], at[1], ALONG));
                 }
             }
-            case RAY, MINIMUM, SADDLE, DEGENERATE, LOST_RAY, PRINCIPAL_RAY, EXTENSION, AXIS -> {
+            case RAY, MINIMUM, SADDLE, DEGENERATE, ERECT, INVERTED, LOST_RAY, PRINCIPAL_RAY, EXTENSION, AXIS -> {
                 for (double part : new double[] {0.97, 0.03, 0.85, 0.15, 0.7, 0.3, 0.6, 0.45}) {
                     double[] at = longest.at(part);
                     anchors.add(new Anchor(at[0], at[1], ALONG));

@@ -58,6 +58,12 @@ public record SectionFigure(
         SADDLE,
         /** A stationary path with neighbours that are equally long to second order. */
         DEGENERATE,
+        /** A path from a sighted target that shows it erect. */
+        ERECT,
+        /** A path from a sighted target that shows it inverted. */
+        INVERTED,
+        /** The distance between a path and the ground at its lowest. */
+        CLEARANCE,
         /** A ray that ended early: clipped, missed, outside, totally reflected or lost. */
         LOST_RAY,
         /** One of the principal rays of the construction of an image. */

@@ -37,8 +37,6 @@ final class SightlineTask implements Task {
     /** Height to which rays are followed where the air does not end, metres. */
     private static final double SPACE = 100e3;
 
-    private static final List<String> FIGURES = List.of("profile", "sightline", "transfer", "view");
-
     @Override
     public String name() {
         return "sightline";
@@ -61,7 +59,7 @@ final class SightlineTask implements Task {
         if (scene.wavelengths().length > 1) {
             job.fault("wavelength", "the task \"sightline\" takes one wavelength");
         }
-        Figures figures = Figures.read(job, scene, FIGURES, List.of());
+        SightFigures.Wanted figures = SightFigures.Wanted.read(job, scene);
         if (sight.isPresent() && ground.isPresent()) {
             check(job, sight.get(), ground.get());
         }
@@ -70,7 +68,8 @@ final class SightlineTask implements Task {
                 scene,
                 setting(scene, known, ground.orElse(Ground.level(0))),
                 sight.orElseThrow(() -> new IllegalStateException("a job without a sight has faults")),
-                figures.names(),
+                figures,
+                options.figures(),
                 earthGiven);
     }
 
@@ -144,25 +143,25 @@ final class SightlineTask implements Task {
         return Display.of(metres, "m", Math.max(1e-3, 1e-9 * Math.abs(metres))).toString();
     }
 
-    private static Result run(Scene scene, Setting setting, Sight sight, List<String> figures, boolean earthGiven) {
+    private static Result run(
+            Scene scene, Setting setting, Sight sight, SightFigures.Wanted wanted, boolean drawn, boolean earthGiven) {
         List<String> warnings = new ArrayList<>(scene.warnings());
         if (!earthGiven) {
             warnings.add("no earth is given; a sphere of 6371 km is taken");
         }
-        for (String f : figures) {
-            warnings.add("the figure `" + f + "` is not in this version yet");
-        }
         warnings.addAll(Sense.of(scene, sight));
+        SightFigures figures = new SightFigures(wanted, drawn, scene, setting, sight.eye());
         if (sight.to() instanceof Sight.Stars stars) {
-            return stars(scene, setting, sight, stars, warnings);
+            return stars(scene, setting, sight, stars, figures, warnings);
         }
         if (sight.to() instanceof Sight.Staff staff) {
-            return staff(scene, setting, sight, staff, warnings);
+            return staff(scene, setting, sight, staff, figures, warnings);
         }
-        return target(scene, setting, sight, (Sight.Point) sight.to(), warnings);
+        return target(scene, setting, sight, (Sight.Point) sight.to(), figures, warnings);
     }
 
-    private static Result target(Scene scene, Setting setting, Sight sight, Sight.Point asked, List<String> warnings) {
+    private static Result target(
+            Scene scene, Setting setting, Sight sight, Sight.Point asked, SightFigures figures, List<String> warnings) {
         double eye = sight.eye();
         Observations observed = Observations.of(scene, setting, sight, asked);
         warnings.addAll(observed.warnings());
@@ -235,17 +234,18 @@ final class SightlineTask implements Task {
         if (!accurate) {
             warnings.add(Words.notReached(scene.accuracy()));
         }
+        String headline = headline(rows, seen, height);
         return new Result(
                 "sightline",
                 scene.title(),
-                headline(rows, seen, height),
+                headline,
                 q,
                 List.of(),
                 List.of(),
                 rows,
                 List.of(),
                 tables(rows, seen, observed.reduced()),
-                List.of(),
+                figures.of(new SightFigures.Found(distance, height, point.span(), seen, rows, headline), warnings),
                 warnings,
                 CAUTIONS,
                 accurate);
@@ -453,7 +453,8 @@ final class SightlineTask implements Task {
                 + String.join(", ", rows.stream().map(ImageRow::orientation).toList()) + " from above";
     }
 
-    private static Result stars(Scene scene, Setting setting, Sight sight, Sight.Stars stars, List<String> warnings) {
+    private static Result stars(
+            Scene scene, Setting setting, Sight sight, Sight.Stars stars, SightFigures figures, List<String> warnings) {
         double eye = sight.eye();
         double radius = setting.chart().radius();
         Optional<Bouguer> second = Bouguer.of(setting.field(), radius);
@@ -496,7 +497,7 @@ final class SightlineTask implements Task {
                 List.of(),
                 rows,
                 List.of(new Table("stars", List.of("apparent-zenith [rad]", "refraction [rad]", "note"), cells)),
-                List.of(),
+                figures.without("a sight to the stars", eye, top, 0, warnings),
                 warnings,
                 CAUTIONS,
                 accurate);
@@ -538,7 +539,8 @@ final class SightlineTask implements Task {
         return new StarRow(zenith, OptionalDouble.of(refraction), top, note, Map.of("refraction", error));
     }
 
-    private static Result staff(Scene scene, Setting setting, Sight sight, Sight.Staff staff, List<String> warnings) {
+    private static Result staff(
+            Scene scene, Setting setting, Sight sight, Sight.Staff staff, SightFigures figures, List<String> warnings) {
         double eye = sight.eye();
         double radius = setting.chart().radius();
         Sightings.Reached r = setting.sightings().reach(eye, 0, staff.distance());
@@ -575,7 +577,12 @@ final class SightlineTask implements Task {
                 List.of(),
                 List.of(),
                 List.of(),
-                List.of(),
+                figures.without(
+                        "a level sight to a staff",
+                        Math.min(ground(setting, staff), eye),
+                        eye + Math.max(0.5, 0.5 * Math.abs(eye - ground(setting, staff))),
+                        staff.distance(),
+                        warnings),
                 warnings,
                 CAUTIONS,
                 accurate);
@@ -603,6 +610,11 @@ final class SightlineTask implements Task {
         double classical = Classical.kukkamaki(index, c, distance, above, staff);
         q.put("staff-displacement-classical", new Quantity.Amount(classical, "m", 0));
         q.put("staff-displacement-difference", new Quantity.Amount(displacement - classical, "m", error));
+    }
+
+    private static double ground(Setting setting, Sight.Staff staff) {
+        Ground ground = setting.chart().ground();
+        return Math.min(ground.height(0), ground.height(staff.distance()));
     }
 
     private static Table table(List<ImageRow> rows) {

@@ -31,6 +31,7 @@ import org.stillpath.task.ChartFigure;
 import org.stillpath.task.CurveFigure;
 import org.stillpath.task.Figure;
 import org.stillpath.task.MapFigure;
+import org.stillpath.task.PanelFigure;
 import org.stillpath.task.SectionFigure;
 import org.stillpath.task.SectionFigure.Role;
 import org.w3c.dom.Document;
@@ -282,10 +283,15 @@ class PicturesTest {
                     List.of());
             assertThat(words(figure)).as(role.name()).contains("the thing");
         }
-        // the others are drawn by ChartsTest
+        // the others are drawn by ChartsTest and the tests of a sight's figures
         assertThat(Figure.class.getPermittedSubclasses())
                 .containsExactly(
-                        SectionFigure.class, CurveFigure.class, ChartFigure.class, MapFigure.class, BarFigure.class);
+                        SectionFigure.class,
+                        CurveFigure.class,
+                        PanelFigure.class,
+                        ChartFigure.class,
+                        MapFigure.class,
+                        BarFigure.class);
     }
 
     @Test
