@@ -44,7 +44,7 @@ public class PathBenchmark {
             new Vector(600, 0, 0.6),
             Math.toRadians(60));
     private PathSearch.Query bumps = query(
-            "1.5 + 0.08*exp(-((x - 0.1 m)^2 + (y + 0.05 m)^2 + (z - 4 m)^2)/w^2)"
+            "1.5 + 0.3*exp(-((x - 0.1 m)^2 + (y + 0.05 m)^2 + (z - 4 m)^2)/w^2)"
                     + " - 0.03*exp(-((x + 0.4 m)^2 + (y - 0.2 m)^2 + (z - 3 m)^2)/w^2)"
                     + " + 0.03*exp(-((x - 0.3 m)^2 + (y - 0.5 m)^2 + (z - 6 m)^2)/w^2)",
             Map.of("w", 0.9),

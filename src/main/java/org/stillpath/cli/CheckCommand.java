@@ -5,10 +5,12 @@ import java.util.List;
 import java.util.Set;
 import java.util.concurrent.Callable;
 import org.stillpath.job.Node;
+import org.stillpath.job.Sources;
 import org.stillpath.medium.MediumFile;
 import org.stillpath.problem.ProblemException;
 import org.stillpath.problem.Problems;
 import org.stillpath.report.PlainText;
+import org.stillpath.study.Studies;
 import org.stillpath.task.Tasks;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
@@ -63,7 +65,7 @@ final class CheckCommand implements Callable<Integer> {
                     MediumFile.of(job.name(), root, sources, problems);
                     problems.throwIfAny();
                 } else {
-                    Tasks.check(root, sources);
+                    check(root, sources);
                 }
                 return root;
             });
@@ -73,6 +75,15 @@ final class CheckCommand implements Callable<Integer> {
             return console.tell(e.problems());
         } catch (RuntimeException | StackOverflowError e) {
             return console.tell(List.of(Program.excuse(name, e)));
+        }
+    }
+
+    /** Says what is wrong with a job. */
+    static void check(Node.Mapping root, Sources sources) {
+        if (Studies.isIn(root)) {
+            Studies.check(root, sources);
+        } else {
+            Tasks.check(root, sources);
         }
     }
 

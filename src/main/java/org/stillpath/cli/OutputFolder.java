@@ -20,6 +20,7 @@ import org.stillpath.problem.Place;
 import org.stillpath.problem.Problem;
 import org.stillpath.problem.ProblemException;
 import org.stillpath.report.HtmlReport;
+import org.stillpath.study.Outcome;
 import org.stillpath.task.Figure;
 import org.stillpath.task.Result;
 import org.stillpath.task.Table;
@@ -63,7 +64,8 @@ final class OutputFolder {
      *
      * @throws ProblemException of kind FILE, if something cannot be written
      */
-    void write(Result result, JobFile job, List<String> settings) {
+    void write(Outcome outcome, JobFile job, List<String> settings) {
+        Result result = outcome.result();
         try {
             Files.createDirectories(folder);
             for (Table table : result.tables()) {
@@ -85,12 +87,12 @@ final class OutputFolder {
             WholeFile.write(
                     folder.resolve("report.html"),
                     HtmlReport.of(
-                            result,
+                            outcome,
                             pictures,
                             new HtmlReport.Origin(Version.text(), job.path().toString(), text, job.root(), settings)));
             WholeFile.write(
                     folder.resolve("result.json"),
-                    stream -> ResultJson.writeIndented(result, Version.text(), tables, figures, stream));
+                    stream -> ResultJson.writeIndented(outcome, Version.text(), tables, figures, stream));
         } catch (IOException e) {
             throw new ProblemException(Problem.file(Place.of("--out " + folder), reason(e)));
         }

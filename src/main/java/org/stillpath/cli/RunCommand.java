@@ -9,6 +9,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.concurrent.Callable;
+import org.stillpath.io.Checkpoint;
 import org.stillpath.io.ResultJson;
 import org.stillpath.problem.Place;
 import org.stillpath.problem.Problem;
@@ -16,7 +17,10 @@ import org.stillpath.problem.ProblemException;
 import org.stillpath.problem.Words;
 import org.stillpath.report.PlainText;
 import org.stillpath.report.TextReport;
-import org.stillpath.task.Result;
+import org.stillpath.study.Outcome;
+import org.stillpath.study.Progress;
+import org.stillpath.study.Store;
+import org.stillpath.study.Studies;
 import org.stillpath.task.Tasks;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
@@ -77,17 +81,26 @@ final class RunCommand implements Callable<Integer> {
         try {
             Job job = Job.read(name, settings, allowOutside);
             claimFolder(job, name);
-            Result result = job.work((root, sources) -> {
-                        if (job.isSound()) {
-                            return Optional.of(Tasks.run(root, sources, new Tasks.Options(!out.isEmpty())));
-                        }
-                        Tasks.check(root, sources);
-                        return Optional.<Result>empty();
-                    })
-                    .orElseThrow();
-            Optional<OutputFolder> folder = out.isEmpty() ? Optional.empty() : Optional.of(write(job, result));
-            tell(result, folder);
-            if (!result.accuracyReached()) {
+            Outcome outcome;
+            Optional<OutputFolder> folder = Optional.empty();
+            if (out.isEmpty()) {
+                outcome = compute(job, Store.none());
+            } else {
+                Thread stopped = new Thread(() -> console.say(
+                        "stopped; the runs that were done are kept in " + out + ", and the same command goes on"));
+                try (Checkpoint checkpoint = Checkpoint.in(folder(job))) {
+                    if (Studies.isIn(job.file().root())) {
+                        Runtime.getRuntime().addShutdownHook(stopped);
+                    }
+                    outcome = compute(job, checkpoint);
+                    folder = Optional.of(write(job, outcome));
+                    checkpoint.finish();
+                } finally {
+                    forget(stopped);
+                }
+            }
+            tell(outcome, folder);
+            if (!outcome.result().accuracyReached()) {
                 console.say(name + ": the asked accuracy was not reached; the error beside each value tells how far its"
                         + " digits can be trusted");
                 return Problem.Kind.ACCURACY.exitStatus();
@@ -100,6 +113,36 @@ final class RunCommand implements Callable<Integer> {
         }
     }
 
+    private Outcome compute(Job job, Store store) {
+        return job.work((root, sources) -> {
+                    if (!job.isSound()) {
+                        CheckCommand.check(root, sources);
+                        return Optional.<Outcome>empty();
+                    }
+                    Tasks.Options options = new Tasks.Options(!out.isEmpty());
+                    int threads = Runtime.getRuntime().availableProcessors();
+                    try (ProgressBar bar = new ProgressBar(console.err())) {
+                        Progress progress = ProgressBar.isTerminal() && !quiet ? bar : Progress.SILENT;
+                        Studies.Means means = new Studies.Means(threads, store, progress, Version.text());
+                        return Optional.of(Studies.run(root, sources, options, means));
+                    }
+                })
+                .orElseThrow();
+    }
+
+    private static void forget(Thread hook) {
+        try {
+            Runtime.getRuntime().removeShutdownHook(hook);
+        } catch (IllegalStateException e) {
+            // the program is being stopped, and the hook has its say
+        }
+    }
+
+    private Path folder(Job job) {
+        Path folder = Job.path(out);
+        return jobs.size() > 1 ? folder.resolve(job.name()) : folder;
+    }
+
     private int fail(String name, List<Problem> faults) throws IOException {
         if (json) {
             ResultJson.writeFaults(name, faults, console.out());
@@ -107,23 +150,22 @@ final class RunCommand implements Callable<Integer> {
         return console.tell(faults);
     }
 
-    private OutputFolder write(Job job, Result result) {
-        Path folder = Job.path(out);
-        OutputFolder written = new OutputFolder(jobs.size() > 1 ? folder.resolve(job.name()) : folder);
-        written.write(result, job.file(), settings);
+    private OutputFolder write(Job job, Outcome outcome) {
+        OutputFolder written = new OutputFolder(folder(job));
+        written.write(outcome, job.file(), settings);
         return written;
     }
 
-    private void tell(Result result, Optional<OutputFolder> folder) throws IOException {
+    private void tell(Outcome outcome, Optional<OutputFolder> folder) throws IOException {
         if (json) {
             ResultJson.writeLine(
-                    result,
+                    outcome,
                     Version.text(),
                     folder.map(OutputFolder::tables).orElse(List.of()),
                     folder.map(OutputFolder::figures).orElse(List.of()),
                     console.out());
         } else if (!quiet) {
-            console.out().write(TextReport.of(result).getBytes(StandardCharsets.UTF_8));
+            console.out().write(TextReport.of(outcome).getBytes(StandardCharsets.UTF_8));
             if (folder.isPresent()) {
                 console.out().print(PlainText.wrapped("\n" + folder.get().summary(), "", "  ", 80));
             }

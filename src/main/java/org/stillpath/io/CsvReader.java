@@ -6,6 +6,7 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import org.jspecify.annotations.Nullable;
+import org.stillpath.job.Cells;
 import org.stillpath.job.Lattice;
 import org.stillpath.job.Table;
 import org.stillpath.problem.Place;
@@ -92,6 +93,58 @@ final class CsvReader {
      */
     static Lattice lattice(byte[] bytes, String source, Lattice.Wanted wanted, Place asked) {
         return new CsvReader(FileText.decode(bytes, source), source).lattice(wanted, asked);
+    }
+
+    /**
+     * Reads a table without judging its rows: every cell stays a text, only decimal commas become points.
+     *
+     * @param bytes the file
+     * @param source its name, for places
+     * @throws ProblemException with what is wrong with its header, or if its commas can be read in two ways
+     */
+    static Cells cells(byte[] bytes, String source) {
+        return new CsvReader(FileText.decode(bytes, source), source).cells();
+    }
+
+    private Cells cells() {
+        Head head = head();
+        List<Cells.Header> headers = new ArrayList<>();
+        for (int c = 0; c < head.headers().size(); c++) {
+            headers.add(new Cells.Header(
+                    head.headers().get(c), head.units().get(c), head.places().get(c)));
+        }
+        Commas commas = new Commas();
+        List<Cells.Row> rows = new ArrayList<>();
+        long count = 0;
+        while (pos < text.length()) {
+            if (skipBlankLine()) {
+                continue;
+            }
+            List<String> cells = new ArrayList<>(headers.size());
+            List<Integer> columns = new ArrayList<>(headers.size());
+            int rowLine = line;
+            do {
+                cell();
+                boolean number = !Double.isNaN(cellNumber());
+                if (number) {
+                    commas.see();
+                }
+                cells.add(number ? cellText().replace(',', '.') : cellText());
+                columns.add(cellPlace().column());
+            } while (!lineEnds);
+            count += cells.size();
+            if (count > MOST_CELLS) {
+                throw fault(cellPlace(), "the limit of cells in a table, " + MOST_CELLS + ", is exceeded");
+            }
+            rows.add(new Cells.Row(rowLine, cells, columns));
+        }
+        if (rows.isEmpty()) {
+            throw fault(new Place(source, line, 1), "the table has no rows below its header");
+        }
+        List<String> notes = new ArrayList<>(head.notes());
+        commas.judge(notes);
+        problems.throwIfAny();
+        return new Cells(source, headers, rows, notes);
     }
 
     private Table table() {
@@ -345,7 +398,10 @@ final class CsvReader {
             String unit = "";
             String name = cell;
             int open = cell.lastIndexOf('[');
-            if (open >= 0 && cell.endsWith("]")) {
+            // digits in brackets are the element of a list, as in rays[0].from[2]
+            if (open >= 0
+                    && cell.endsWith("]")
+                    && !cell.substring(open + 1, cell.length() - 1).matches("[0-9]+")) {
                 unit = cell.substring(open + 1, cell.length() - 1).strip();
                 name = cell.substring(0, open).strip();
             }

@@ -16,6 +16,7 @@ import java.util.Map;
 import java.util.jar.JarFile;
 import java.util.stream.Stream;
 import org.jspecify.annotations.Nullable;
+import org.stillpath.job.Cells;
 import org.stillpath.job.Lattice;
 import org.stillpath.job.Node;
 import org.stillpath.job.Sources;
@@ -89,6 +90,12 @@ public final class FileSources implements Sources {
     public Table table(String name, Place asked) {
         Content content = content(name, CsvReader.MOST_BYTES, asked);
         return CsvReader.read(content.bytes(), content.shown());
+    }
+
+    @Override
+    public Cells cells(String name, Place asked) {
+        Content content = content(name, CsvReader.MOST_BYTES, asked);
+        return CsvReader.cells(content.bytes(), content.shown());
     }
 
     /** The format is told by how the file starts, not by its name: a VTK file named .txt is one all the same. */

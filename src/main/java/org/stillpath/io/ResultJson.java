@@ -13,6 +13,8 @@ import java.util.Map;
 import java.util.TreeMap;
 import org.stillpath.geometry.Vector;
 import org.stillpath.problem.Problem;
+import org.stillpath.study.Doc;
+import org.stillpath.study.Outcome;
 import org.stillpath.task.ImageRow;
 import org.stillpath.task.PathRow;
 import org.stillpath.task.Quantity;
@@ -52,12 +54,23 @@ public final class ResultJson {
      * @throws IOException if {@code out} fails
      */
     public static void writeLine(
-            Result result, String version, List<String> tables, List<String> figures, OutputStream out)
+            Outcome outcome, String version, List<String> tables, List<String> figures, OutputStream out)
             throws IOException {
         try (JsonGenerator json = generator(out)) {
-            new ResultJson(json).document(result, version, tables, figures);
+            new ResultJson(json).document(outcome, version, tables, figures);
             json.writeRaw('\n');
         }
+    }
+
+    /**
+     * The same for a result without a study.
+     *
+     * @throws IOException if {@code out} fails
+     */
+    public static void writeLine(
+            Result result, String version, List<String> tables, List<String> figures, OutputStream out)
+            throws IOException {
+        writeLine(Outcome.of(result), version, tables, figures, out);
     }
 
     /**
@@ -66,11 +79,11 @@ public final class ResultJson {
      * @throws IOException if {@code out} fails
      */
     public static void writeIndented(
-            Result result, String version, List<String> tables, List<String> figures, OutputStream out)
+            Outcome outcome, String version, List<String> tables, List<String> figures, OutputStream out)
             throws IOException {
         try (JsonGenerator json = generator(out)) {
             json.setPrettyPrinter(new DefaultPrettyPrinter().withObjectIndenter(new DefaultIndenter("  ", "\n")));
-            new ResultJson(json).document(result, version, tables, figures);
+            new ResultJson(json).document(outcome, version, tables, figures);
             json.writeRaw('\n');
         }
     }
@@ -110,7 +123,9 @@ public final class ResultJson {
         return JSON.createGenerator(out).disable(JsonGenerator.Feature.AUTO_CLOSE_TARGET);
     }
 
-    private void document(Result result, String version, List<String> tables, List<String> figures) throws IOException {
+    private void document(Outcome outcome, String version, List<String> tables, List<String> figures)
+            throws IOException {
+        Result result = outcome.result();
         json.writeStartObject();
         json.writeStringField("stillpath", version);
         json.writeStringField("task", result.task());
@@ -141,13 +156,44 @@ public final class ResultJson {
             star(star);
         }
         json.writeEndArray();
-        json.writeObjectFieldStart("study");
-        json.writeEndObject();
+        json.writeFieldName("study");
+        doc(outcome.doc());
         texts("tables", tables);
         texts("figures", figures);
         texts("warnings", result.warnings());
         texts("cautions", result.cautions());
         json.writeEndObject();
+    }
+
+    private void doc(Doc doc) throws IOException {
+        if (doc instanceof Doc.Fields fields) {
+            json.writeStartObject();
+            for (Map.Entry<String, Doc> entry : fields.values().entrySet()) {
+                json.writeFieldName(entry.getKey());
+                doc(entry.getValue());
+            }
+            json.writeEndObject();
+        } else if (doc instanceof Doc.Items items) {
+            json.writeStartArray();
+            for (Doc item : items.values()) {
+                doc(item);
+            }
+            json.writeEndArray();
+        } else if (doc instanceof Doc.Amounts amounts) {
+            array(amounts.values());
+        } else if (doc instanceof Doc.Amount amount) {
+            if (Double.isFinite(amount.value())) {
+                json.writeNumber(amount.value());
+            } else {
+                json.writeNull();
+            }
+        } else if (doc instanceof Doc.Count count) {
+            json.writeNumber(count.value());
+        } else if (doc instanceof Doc.Flag flag) {
+            json.writeBoolean(flag.value());
+        } else if (doc instanceof Doc.Text text) {
+            json.writeString(text.value());
+        }
     }
 
     private void quantity(Quantity quantity) throws IOException {

@@ -21,6 +21,12 @@ enum NoSources implements Sources {
     }
 
     @Override
+    public Cells cells(String name, Place asked) {
+        throw new ProblemException(
+                Problem.input(asked, "", "\"" + name + "\" cannot be read: no files are at hand here"));
+    }
+
+    @Override
     public Lattice lattice(String name, Lattice.Wanted wanted, Place asked) {
         throw new ProblemException(
                 Problem.input(asked, "", "\"" + name + "\" cannot be read: no files are at hand here"));

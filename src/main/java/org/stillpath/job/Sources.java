@@ -30,6 +30,16 @@ public interface Sources {
     Table table(String name, Place asked);
 
     /**
+     * A CSV table whose cells are left as they are.
+     *
+     * @param name path relative to the document that names it, as it stands there
+     * @param asked where it stands
+     * @return the cells with their places
+     * @throws org.stillpath.problem.ProblemException if it may not be read or has no sound header
+     */
+    Cells cells(String name, Place asked);
+
+    /**
      * Nodes of a rectilinear grid with a value each: a CSV table of x, y, z and a value, or a VTK file.
      *
      * @param name path relative to the document that names it, as it stands there

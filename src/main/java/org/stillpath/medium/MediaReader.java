@@ -63,19 +63,29 @@ public final class MediaReader {
      * @param problems collects faults
      */
     public static Media read(Optional<Section> media, Sources sources, Problems problems) {
-        return read(media, sources, problems, new FormulaCache());
+        return read(media, sources, problems, new MediaMemory());
     }
 
-    /** The same with formulas that earlier readings may have parsed already. */
-    public static Media read(Optional<Section> media, Sources sources, Problems problems, FormulaCache cache) {
+    /** The same with what earlier readings of jobs like this one left. */
+    public static Media read(Optional<Section> media, Sources sources, Problems problems, MediaMemory memory) {
         if (media.isEmpty()) {
             return Media.of(List.of());
         }
-        MediaReader reader = new MediaReader(sources, problems, cache);
+        MediaReader reader = new MediaReader(sources, problems, memory.formulas());
         List<Medium> list = new ArrayList<>();
         for (String name : media.get().names()) {
-            list.add(reader.medium(name, media.get().at(name).section(), Overrides.NONE, List.of())
-                    .medium());
+            Value value = media.get().at(name);
+            Optional<Medium> known = memory.find(name, value.node());
+            if (known.isPresent()) {
+                list.add(known.get());
+                continue;
+            }
+            Medium read = reader.medium(name, value.section(), Overrides.NONE, List.of())
+                    .medium();
+            if (problems.isEmpty()) {
+                memory.add(name, value.node(), read);
+            }
+            list.add(read);
         }
         return Media.of(list);
     }

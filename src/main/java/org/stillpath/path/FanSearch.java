@@ -24,6 +24,8 @@ public final class FanSearch {
 
     /** How well a cubic must predict the middle, as a part of how much the misses change. */
     private static final double PREDICTED = 1e-2;
+    /** The same where a change of sign with slopes of one sign at both ends is all there is to see. */
+    private static final double PLAIN = 5e-2;
     /** Tolerance at which the fan is shot, and at which zeros are narrowed. */
     private static final double LOOSE = 1e-6;
 
@@ -150,9 +152,10 @@ public final class FanSearch {
             return;
         }
         Shot m = shoot(middle, LOOSE);
-        boolean smooth = m.arrives(branch)
-                && Math.abs(m.miss[branch] - (0.5 * (ma + mb) + 0.125 * (sa - sb)))
-                        <= PREDICTED * swing + LOOSE * scale;
+        // a plain crossing needs no more than to be one: the ends hold it while it is narrowed
+        double allowed = crosses && sa > 0 == sb > 0 ? PLAIN : PREDICTED;
+        double guess = 0.5 * (ma + mb) + 0.125 * (sa - sb);
+        boolean smooth = m.arrives(branch) && Math.abs(m.miss[branch] - guess) <= allowed * swing + LOOSE * scale;
         if (smooth) {
             half(a, m, branch);
             half(m, b, branch);

@@ -26,7 +26,10 @@ public final class PathSearch {
     /** Most rays of a search. */
     static final int MOST_SHOTS = 20_000;
 
-    private static final int FAN = 16;
+    private static final int FAN = 12;
+    /** What a path may miss by, as a part of the chord, to be worth mending by multiple shooting. */
+    private static final double MENDABLE = 1e-3;
+
     private static final double NULL_DIRECTION = 1e-6;
     /** The fan crowds toward its axis down to this angle, rad. */
     private static final double INNERMOST = 1e-5;
@@ -254,10 +257,16 @@ public final class PathSearch {
             best = next;
             ray = again;
         }
-        if (best.miss() > Math.max(1e-9, 10 * query.accuracy) * chord || passedBefore(best.direction(), root.passage)) {
+        Optional<MultipleShooting.Mended> mended = Optional.empty();
+        if (best.miss() > query.accuracy * chord && best.miss() < MENDABLE * chord) {
+            mended = MultipleShooting.mend(
+                    query, best.direction(), best.length(), query.confined() ? normal : Optional.empty());
+        }
+        if ((mended.isEmpty() && best.miss() > Math.max(1e-9, 10 * query.accuracy) * chord)
+                || passedBefore(best.direction(), root.passage)) {
             return null;
         }
-        return described(best, ray);
+        return described(best, ray, mended);
     }
 
     /** Whether a ray reaches the target at an earlier passage, where its path has ended. */
@@ -266,15 +275,16 @@ public final class PathSearch {
                 && gun.shoot(direction, 1e-9).stream().anyMatch(p -> p.which() < passage && p.miss() < 1e-6 * chord);
     }
 
-    private StationaryPath described(Passage best, Traced t) {
+    private StationaryPath described(Passage best, Traced t, Optional<MultipleShooting.Mended> mended) {
         double[] sizes = best.singular();
         if (query.confined()) {
             double inPlane = Math.abs(best.slope()[0]);
             sizes = new double[] {inPlane, inPlane};
         }
-        // lengths that a unit turn of the launch would miss by in a uniform medium are the scale of the second
-        // variation
-        double scale = NULL_DIRECTION * Math.max(sizes[1], best.length());
+        // what a unit turn of the launch would miss by in a uniform medium is the scale; not the larger value, which
+        // grows
+        // without bound where rays part
+        double scale = NULL_DIRECTION * best.length();
         int nullDirections = sizes[0] >= scale ? 0 : sizes[1] >= scale || query.confined() ? 1 : 2;
         boolean degenerate = nullDirections > 0;
         List<Double> before = new ArrayList<>();
@@ -289,6 +299,23 @@ public final class PathSearch {
         StationaryPath.Kind kind = degenerate
                 ? StationaryPath.Kind.DEGENERATE
                 : index == 0 ? StationaryPath.Kind.MINIMUM : StationaryPath.Kind.SADDLE;
+        if (mended.isPresent()) {
+            MultipleShooting.Mended m = mended.get();
+            return new StationaryPath(
+                    m.opticalLength(),
+                    m.length(),
+                    m.launch(),
+                    m.arrival(),
+                    kind,
+                    index,
+                    counts.map(SecondVariation.Counts::negative).orElse(index),
+                    nullDirections,
+                    before.stream().mapToDouble(Double::doubleValue).toArray(),
+                    counts.map(SecondVariation.Counts::overInterfaces).orElse(StationaryPath.Kind.NONE),
+                    m.residual(),
+                    m.points(),
+                    m.errors());
+        }
         return new StationaryPath(
                 t.opticalLength(),
                 t.length(),

@@ -36,7 +36,7 @@ import org.stillpath.ray.Train;
  */
 final class SecondVariation {
     private static final double NULL_DIRECTION = 1e-6;
-    private static final double TOLERANCE = 1e-10;
+    private static final double TOLERANCE = 1e-8;
     /** Most that ω Δτ may be on a piece; well below π, since ω is sampled at three places. */
     private static final double LONGEST_PHASE = 1;
 
@@ -59,10 +59,10 @@ final class SecondVariation {
     record Counts(int negative, StationaryPath.Kind overInterfaces) {}
 
     /** Where pieces join: along unit vectors that span where the point may go. */
-    private record Station(Vector[] tangents, double[][] bend) {}
+    record Station(Vector[] tangents, double[][] bend) {}
 
     /** A piece: its transfer across the ray by 2×2 blocks, and places, momenta and forces at both ends. */
-    private record Piece(
+    record Piece(
             double[][] a,
             double[][] b,
             double[][] d,
@@ -74,11 +74,21 @@ final class SecondVariation {
             Vector endForce,
             double[][] c) {}
 
-    private SecondVariation(Train train, Vector from, Optional<Vector> normal) {
+    SecondVariation(Train train, Vector from, Optional<Vector> normal) {
         this.train = train;
         this.from = from;
         this.columns = normal.map(Columns.ACROSS::in).orElse(Columns.ACROSS);
         this.width = normal.isPresent() ? 1 : 2;
+    }
+
+    /** Directions in which a joint may move: two, or one in a plane. */
+    int width() {
+        return width;
+    }
+
+    /** How columns start. */
+    Columns columns() {
+        return columns;
     }
 
     /**
@@ -98,11 +108,46 @@ final class SecondVariation {
         return new SecondVariation(train, from, normal).counts(launch, length);
     }
 
+    /**
+     * A path cut to pieces.
+     *
+     * @param legs the pieces, in order
+     * @param joints what lies between them, one less
+     */
+    record Chain(List<Leg> legs, List<Joint> joints) {}
+
+    /** A piece with where it starts, in which medium, and how long it is. */
+    record Leg(Piece piece, IndexField field, RayStart start, double length) {}
+
+    /** Where two pieces join: at a surface, or within a medium. */
+    record Joint(Station station, Optional<Surface> surface) {}
+
     private Optional<Counts> counts(Vector launch, double length) {
-        List<Piece> pieces = new ArrayList<>();
-        List<Station> stations = new ArrayList<>();
-        List<Piece> segments = new ArrayList<>();
-        List<Station> surfaces = new ArrayList<>();
+        return chain(launch, length).flatMap(chain -> {
+            List<Piece> pieces = chain.legs.stream().map(Leg::piece).toList();
+            List<Station> stations = chain.joints.stream().map(Joint::station).toList();
+            int negative = negative(pieces, stations);
+            List<Piece> segments = new ArrayList<>();
+            List<Station> surfaces = new ArrayList<>();
+            int first = 0;
+            for (int i = 0; i <= stations.size(); i++) {
+                if (i == stations.size() || chain.joints.get(i).surface().isPresent()) {
+                    segments.add(joined(pieces.subList(first, i + 1)));
+                    first = i + 1;
+                    if (i < stations.size()) {
+                        surfaces.add(stations.get(i));
+                    }
+                }
+            }
+            StationaryPath.Kind over = surfaces.isEmpty() ? StationaryPath.Kind.NONE : kind(dense(segments, surfaces));
+            return negative < 0 ? Optional.empty() : Optional.of(new Counts(negative, over));
+        });
+    }
+
+    /** Cuts the path with this launch and length; nothing where it does not get that far. */
+    Optional<Chain> chain(Vector launch, double length) {
+        List<Leg> legs = new ArrayList<>();
+        List<Joint> joints = new ArrayList<>();
         IndexField field = train.from();
         RayStart start = RayStart.of(from, launch);
         double done = 0;
@@ -128,54 +173,47 @@ final class SecondVariation {
                 behind = momentum(past.state());
                 next = RayStart.of(past.position(), past.direction());
             }
-            List<Piece> own = new ArrayList<>();
+            List<Leg> own = new ArrayList<>();
             if (!cut(field, start, to - done, own)) {
                 return Optional.empty();
             }
-            for (int k = 0; k < own.size(); k++) {
-                if (k > 0) {
-                    stations.add(new Station(own.get(k).startAxes, new double[2][2]));
-                }
-                pieces.add(own.get(k));
+            for (int k = 1; k < own.size(); k++) {
+                joints.add(new Joint(new Station(own.get(k).piece.startAxes, new double[2][2]), Optional.empty()));
             }
-            segments.add(joined(own));
+            legs.addAll(own);
             if (last) {
                 break;
             }
             Element e = elements.get(i);
-            Station met = station(e.surface(), next.position(), before, behind);
-            stations.add(met);
-            surfaces.add(met);
+            joints.add(new Joint(station(e.surface(), next.position(), before, behind), Optional.of(e.surface())));
             if (e.action() instanceof Action.Refract && !reflected(e.surface(), next.position(), before, behind)) {
                 field = e.into();
             }
             start = next;
             done = to;
         }
-        int negative = negative(pieces, stations);
-        StationaryPath.Kind over = surfaces.isEmpty() ? StationaryPath.Kind.NONE : kind(dense(segments, surfaces));
-        return negative < 0 ? Optional.empty() : Optional.of(new Counts(negative, over));
+        return Optional.of(new Chain(legs, joints));
     }
 
-    private Traced glance(Train through, Ending ending, RayStart start) {
+    Traced glance(Train through, Ending ending, RayStart start) {
         return new Tracer(through, ending, new Tracer.Settings(10 * TOLERANCE, true, false, columns, 100))
                 .glance(start, TOLERANCE);
     }
 
-    private static Vector momentum(double[] y) {
+    static Vector momentum(double[] y) {
         return new Vector(y[3], y[4], y[5]);
     }
 
     // ---- pieces
 
-    private boolean cut(IndexField field, RayStart start, double length, List<Piece> pieces) {
+    private boolean cut(IndexField field, RayStart start, double length, List<Leg> legs) {
         if (!(length > 0)) {
             return false;
         }
         int parts = field.uniform() ? 1 : PIECES;
         RayStart at = start;
         for (int i = 0; i < parts; i++) {
-            Optional<RayStart> next = cut(field, at, length / parts, pieces, field.uniform() ? DEEPEST : 0);
+            Optional<RayStart> next = cut(field, at, length / parts, legs, field.uniform() ? DEEPEST : 0);
             if (next.isEmpty()) {
                 return false;
             }
@@ -185,7 +223,7 @@ final class SecondVariation {
     }
 
     /** Cuts on until no piece can hold a conjugate point; returns where the next one starts. */
-    private Optional<RayStart> cut(IndexField field, RayStart start, double length, List<Piece> pieces, int depth) {
+    private Optional<RayStart> cut(IndexField field, RayStart start, double length, List<Leg> legs, int depth) {
         Traced ray = glance(Train.through(field), new Ending.AtLength(length), start);
         if (ray.status() != Status.ARRIVED) {
             return Optional.empty();
@@ -196,11 +234,11 @@ final class SecondVariation {
             double rate =
                     Math.max(rate(field, middle), Math.max(rate(field, start.position()), rate(field, end.position())));
             if (rate * length / ray.index() > LONGEST_PHASE) {
-                return cut(field, start, 0.5 * length, pieces, depth + 1)
-                        .flatMap(half -> cut(field, half, 0.5 * length, pieces, depth + 1));
+                return cut(field, start, 0.5 * length, legs, depth + 1)
+                        .flatMap(half -> cut(field, half, 0.5 * length, legs, depth + 1));
             }
         }
-        pieces.add(piece(ray, field));
+        legs.add(new Leg(piece(ray, field), field, start, length));
         return Optional.of(end);
     }
 
@@ -214,7 +252,7 @@ final class SecondVariation {
         return Math.sqrt(Math.sqrt(square));
     }
 
-    private Piece piece(Traced ray, IndexField field) {
+    Piece piece(Traced ray, IndexField field) {
         double[] y = ray.state();
         double[] first = ray.start();
         double[] g = ray.force();
@@ -267,7 +305,7 @@ final class SecondVariation {
 
     // ---- stations
 
-    private Station station(Surface surface, Vector at, Vector before, Vector behind) {
+    Station station(Surface surface, Vector at, Vector before, Vector behind) {
         surface.evaluate(at.x(), at.y(), at.z(), f);
         Vector gradient = new Vector(f[1], f[2], f[3]);
         Vector up = gradient.unit();
@@ -305,7 +343,7 @@ final class SecondVariation {
     // ---- the matrix
 
     /** The block of one station: both pieces that meet there, and the surface's bend. */
-    private double[][] diagonal(Piece in, Station s, Piece out) {
+    double[][] diagonal(Piece in, Station s, Piece out) {
         double[][] atEnd = times(in.d, inverse(in.b));
         double[][] atStart = times(inverse(out.b), out.a);
         double[][] h = new double[width][width];
@@ -344,7 +382,7 @@ final class SecondVariation {
     }
 
     /** The block between the station where a piece starts and that where it ends. */
-    private double[][] between(Station a, Piece piece, Station b) {
+    double[][] between(Station a, Piece piece, Station b) {
         double[][] inverse = inverse(piece.b);
         double[][] h = new double[width][width];
         for (int i = 0; i < width; i++) {
@@ -452,7 +490,7 @@ final class SecondVariation {
         return Math.sqrt(sum);
     }
 
-    private double[][] inverse(double[][] m) {
+    double[][] inverse(double[][] m) {
         if (width == 1) {
             return new double[][] {{1 / m[0][0], 0}, {0, 0}};
         }
@@ -460,7 +498,7 @@ final class SecondVariation {
         return new double[][] {{m[1][1] / det, -m[0][1] / det}, {-m[1][0] / det, m[0][0] / det}};
     }
 
-    private static double[][] times(double[][] a, double[][] b) {
+    static double[][] times(double[][] a, double[][] b) {
         int n = Math.min(a.length, b.length);
         double[][] m = new double[n][n];
         for (int r = 0; r < n; r++) {
@@ -483,7 +521,7 @@ final class SecondVariation {
         return m;
     }
 
-    private static double[][] transposed(double[][] m) {
+    static double[][] transposed(double[][] m) {
         double[][] t = new double[m.length][m.length];
         for (int r = 0; r < m.length; r++) {
             for (int c = 0; c < m.length; c++) {

@@ -1,7 +1,10 @@
 package org.stillpath.plot;
 
+import org.stillpath.task.BarFigure;
+import org.stillpath.task.ChartFigure;
 import org.stillpath.task.CurveFigure;
 import org.stillpath.task.Figure;
+import org.stillpath.task.MapFigure;
 import org.stillpath.task.SectionFigure;
 
 /** Draws figures: the one place that knows which class draws which kind of {@link Figure}. */
@@ -21,6 +24,15 @@ public final class Pictures {
         }
         if (figure instanceof CurveFigure curves) {
             return new CurveDrawing(curves, width).picture();
+        }
+        if (figure instanceof ChartFigure chart) {
+            return new ChartDrawing(chart, width).picture();
+        }
+        if (figure instanceof MapFigure map) {
+            return new MapDrawing(map, width).picture();
+        }
+        if (figure instanceof BarFigure bars) {
+            return new BarDrawing(bars, width).picture();
         }
         throw new IllegalArgumentException("figure " + figure.name() + " is of a kind that nothing draws: "
                 + figure.getClass().getSimpleName());

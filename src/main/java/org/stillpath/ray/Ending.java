@@ -34,7 +34,7 @@ public sealed interface Ending {
     record BehindLastSurface() implements Ending {}
 
     /**
-     * Behind the last surface, where the distance to a point is at a minimum. After one minimum a ray is followed for three
+     * Behind the last surface, where the distance to a point is at a minimum. After one minimum a ray is followed for two
      * lengths of the scene to the place where the distance turns again, and so on.
      *
      * @param to the point, metres, job's coordinates

@@ -38,7 +38,7 @@ public final class Tracer {
 
     private static final int PIECES = 1_000_000;
     /** How far a ray that has passed a point is followed for the next passage, in lengths of the scene. */
-    private static final double BACK = 3;
+    private static final double BACK = 2;
 
     private final Train train;
     private final Ending ending;

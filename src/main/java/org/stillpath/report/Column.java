@@ -28,8 +28,17 @@ final class Column {
                 .filter(Double::isFinite)
                 .max()
                 .orElse(0);
-        String shown = Display.of(largest, unit, 0).unit();
+        return in(values, errors, Display.of(largest, unit, 0).unit());
+    }
+
+    /** The same in a unit of one's own choice; empty for pure numbers. */
+    static Cells in(double[] values, double[] errors, String shown) {
         Unit readable = Units.parse(shown.isEmpty() ? "1" : shown).orElseThrow();
+        double largest = Arrays.stream(values)
+                .map(Math::abs)
+                .filter(Double::isFinite)
+                .max()
+                .orElse(0);
         int decimals = 0;
         for (double error : errors) {
             decimals = Math.max(decimals, decimals(readable.fromSi(largest), readable.fromSi(error)));

@@ -11,6 +11,8 @@ import java.util.List;
 import java.util.Map;
 import org.stillpath.job.Node;
 import org.stillpath.plot.Picture;
+import org.stillpath.study.Listing;
+import org.stillpath.study.Outcome;
 import org.stillpath.task.Result;
 
 /**
@@ -44,11 +46,12 @@ public final class HtmlReport {
     /**
      * The page as text, to be written in UTF-8.
      *
-     * @param result what was found
+     * @param outcome what was found
      * @param pictures its figures, drawn
      * @param origin where it came from
      */
-    public static String of(Result result, List<Picture> pictures, Origin origin) {
+    public static String of(Outcome outcome, List<Picture> pictures, Origin origin) {
+        Result result = outcome.result();
         Template template = Mustache.compiler().emptyStringIsFalse(true).compile(resource("page.mustache"));
         List<Row> rows = Row.of(result);
         return template.execute(Map.ofEntries(
@@ -70,8 +73,13 @@ public final class HtmlReport {
                                 .toList()),
                 Map.entry("hasQuantities", !rows.isEmpty()),
                 Map.entry("quantities", quantities(rows)),
-                Map.entry("tables", tables(result)),
-                Map.entry("methods", Methods.of(result)),
+                Map.entry(
+                        "nominal",
+                        outcome.findings().isEmpty()
+                                ? ""
+                                : tidy(outcome.nominal().headline())),
+                Map.entry("tables", tables(outcome)),
+                Map.entry("methods", Methods.of(outcome)),
                 Map.entry("conventions", Methods.conventions(result.task())),
                 Map.entry("inputs", inputs(origin.tree())),
                 Map.entry(
@@ -96,24 +104,28 @@ public final class HtmlReport {
         return shown;
     }
 
-    private static List<Map<String, Object>> tables(Result result) {
+    private static List<Map<String, Object>> tables(Outcome outcome) {
+        Result result = outcome.result();
         List<Map<String, Object>> tables = new ArrayList<>();
+        for (Listing listing : outcome.listings()) {
+            tables.add(table(tidy(listing.heading()), "rows", listing.name(), RowTable.listing(listing, 200)));
+        }
         if (!result.rays().isEmpty()) {
-            tables.add(table("Rays", "rays", RowTable.rays(result.rays(), 200)));
+            tables.add(table("Rays", "rays", "rays", RowTable.rays(result.rays(), 200)));
         }
         if (!result.paths().isEmpty()) {
-            tables.add(table("Paths", "paths", RowTable.paths(result.paths(), 200)));
+            tables.add(table("Paths", "paths", "paths", RowTable.paths(result.paths(), 200)));
         }
         if (!result.images().isEmpty()) {
-            tables.add(table("Images", "images", RowTable.images(result.images(), 200)));
+            tables.add(table("Images", "images", "images", RowTable.images(result.images(), 200)));
         }
         if (!result.stars().isEmpty()) {
-            tables.add(table("Stars", "stars", RowTable.stars(result.stars(), 200)));
+            tables.add(table("Stars", "stars", "stars", RowTable.stars(result.stars(), 200)));
         }
         return tables;
     }
 
-    private static Map<String, Object> table(String heading, String what, RowTable table) {
+    private static Map<String, Object> table(String heading, String what, String file, RowTable table) {
         List<Map<String, Object>> rows = table.rows().stream()
                 .map(cells -> Map.<String, Object>of(
                         "cells", cells.stream().map(HtmlReport::typeset).toList()))
@@ -128,7 +140,7 @@ public final class HtmlReport {
                 "more",
                 table.left() == 0
                         ? ""
-                        : "And " + table.left() + " more " + what + ": see " + what + ".csv or result.json.",
+                        : "And " + table.left() + " more " + what + ": see " + file + ".csv or result.json.",
                 "notes",
                 table.notes().stream().map(HtmlReport::tidy).toList());
     }

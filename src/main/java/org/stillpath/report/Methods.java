@@ -2,6 +2,8 @@ package org.stillpath.report;
 
 import java.util.ArrayList;
 import java.util.List;
+import org.stillpath.study.Finding;
+import org.stillpath.study.Outcome;
 import org.stillpath.task.Result;
 
 /** How results are got and what their signs mean, in words for people; printed in every report. */
@@ -9,8 +11,15 @@ final class Methods {
     private Methods() {}
 
     /** Paragraphs on the method and the accuracy of a result. */
-    static List<String> of(Result result) {
+    static List<String> of(Outcome outcome) {
+        Result result = outcome.result();
         List<String> paragraphs = new ArrayList<>();
+        outcome.findings().stream()
+                .map(Finding::key)
+                .distinct()
+                .map(Methods::study)
+                .filter(text -> !text.isEmpty())
+                .forEach(paragraphs::add);
         paragraphs.add("Rays follow from Fermat's principle: the ray equation is integrated in the parameter dτ = ds/n"
                 + " (Luneburg, Mathematical Theory of Optics; Sharma, Kumar and Ghatak, Applied Optics 21 (1982) 984),"
                 + " with the index and its derivatives taken exactly from the medium as given, never from differences."
@@ -36,6 +45,28 @@ final class Methods {
             paragraphs.add("The asked accuracy was not reached: see the numerical errors above.");
         }
         return paragraphs;
+    }
+
+    /** How a study's figures are got. */
+    private static String study(String key) {
+        return switch (key) {
+            case "budget" ->
+                "Uncertainties: the law of propagation of uncertainty (JCGM 100:2008, 5), with sensitivities from"
+                        + " extrapolated differences about the job's values, effective degrees of freedom after Welch and"
+                        + " Satterthwaite (G.4) and Student's quantile as coverage factor; and the propagation of distributions by"
+                        + " adaptive Monte Carlo (JCGM 101:2008, 7.9), whose shortest coverage interval is stated. Where their"
+                        + " intervals differ by more than the tolerance of JCGM 101, 8.1, the linear budget is not valid. What"
+                        + " is not among the inputs is not in the budget.";
+            case "fit" ->
+                "The fit minimises the sum of the squares of wanted less fitted values over their standard uncertainties"
+                        + " within the bounds (Levenberg and Marquardt), from several starts where the bounds allow; the"
+                        + " uncertainties of the unknowns follow from the derivatives at the minimum. They hold if the model is"
+                        + " that of the thing measured.";
+            case "sweep", "batch" ->
+                "Each run is the whole job with other values, computed as a job of its own; the runs know nothing of each"
+                        + " other.";
+            default -> "";
+        };
     }
 
     /** What signs, units and words mean. */

@@ -3,6 +3,7 @@ package org.stillpath.report;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
+import org.stillpath.study.Listing;
 import org.stillpath.task.ImageRow;
 import org.stillpath.task.PathRow;
 import org.stillpath.task.RayRow;
@@ -18,6 +19,69 @@ import org.stillpath.unit.Display;
  * @param notes why rays ended early, one line a ray
  */
 record RowTable(List<String> headers, List<List<String>> rows, int left, List<String> notes) {
+
+    /** The first {@code most} rows of a study's table. */
+    static RowTable listing(Listing all, int most) {
+        int count = Math.min(all.rows(), most);
+        List<String> headers = new ArrayList<>();
+        List<List<String>> columns = new ArrayList<>();
+        for (Listing.Column c : all.columns()) {
+            if (c instanceof Listing.Numbers n) {
+                double[] errors = new double[count];
+                java.util.Arrays.fill(errors, n.error());
+                double[] values = java.util.Arrays.copyOf(n.values(), count);
+                Column.Cells cells = n.shown().isEmpty()
+                        ? Column.of(values, errors, n.unit())
+                        : Column.in(values, errors, n.shown());
+                headers.add(name(c.name()) + (cells.unit().isEmpty() ? "" : " / " + cells.unit()));
+                columns.add(Column.aligned(cells.texts()));
+            } else if (c instanceof Listing.Mixed m) {
+                double[] values = m.values();
+                double[] errors = m.errors();
+                List<String> numbers = new ArrayList<>();
+                List<String> units = new ArrayList<>();
+                for (int i = 0; i < count; i++) {
+                    if (Double.isNaN(values[i])) {
+                        numbers.add("");
+                        units.add("");
+                        continue;
+                    }
+                    // what lies within its own error of zero is zero to a reader
+                    double value = Math.abs(values[i]) <= errors[i] ? 0 : values[i];
+                    String shown = m.shown().get(i);
+                    Display.Reading r = shown.isEmpty()
+                            ? Display.of(value, m.units().get(i), errors[i])
+                            : Display.in(value, shown, errors[i]);
+                    numbers.add(r.number());
+                    units.add(r.unit());
+                }
+                List<String> aligned = Column.aligned(numbers);
+                List<String> cells = new ArrayList<>();
+                int width = aligned.stream().mapToInt(PlainText::columns).max().orElse(0);
+                for (int i = 0; i < count; i++) {
+                    String gap = " ".repeat(width - PlainText.columns(aligned.get(i)));
+                    cells.add((aligned.get(i) + gap + " " + units.get(i)).stripTrailing());
+                }
+                headers.add(name(c.name()));
+                columns.add(cells);
+            } else if (c instanceof Listing.Texts t) {
+                headers.add(name(c.name()));
+                columns.add(
+                        t.cells().subList(0, count).stream().map(PlainText::of).toList());
+            }
+        }
+        List<List<String>> rows = new ArrayList<>();
+        for (int i = 0; i < count; i++) {
+            int row = i;
+            rows.add(columns.stream().map(c -> c.get(row)).toList());
+        }
+        return new RowTable(headers, rows, all.rows() - count, List.of());
+    }
+
+    /** A path of an input or a result, as short as it is still plain. */
+    private static String name(String path) {
+        return path.startsWith("quantities.") ? Labels.of(path.substring("quantities.".length())) : path;
+    }
 
     /** The first {@code most} paths: number, kind, optical length, excess over the first, direction at the start. */
     static RowTable paths(List<PathRow> all, int most) {

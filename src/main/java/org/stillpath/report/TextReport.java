@@ -2,6 +2,8 @@ package org.stillpath.report;
 
 import java.util.ArrayList;
 import java.util.List;
+import org.stillpath.study.Listing;
+import org.stillpath.study.Outcome;
 import org.stillpath.task.Result;
 
 /**
@@ -14,10 +16,29 @@ public final class TextReport {
 
     private TextReport() {}
 
-    /** The text, ending with a line feed. */
+    /** The text of a result without a study, ending with a line feed. */
     public static String of(Result result) {
+        return of(Outcome.of(result));
+    }
+
+    /** The text, ending with a line feed: the studies' answers and tables, then the result at the job's own values. */
+    public static String of(Outcome outcome) {
+        Result result = outcome.result();
         StringBuilder text = new StringBuilder();
-        text.append(PlainText.wrapped(result.headline(), "", "", WIDTH));
+        for (String headline : outcome.headlines()) {
+            text.append(PlainText.wrapped(headline, "", "", WIDTH));
+        }
+        for (Listing listing : outcome.listings()) {
+            text.append('\n')
+                    .append(PlainText.wrapped(listing.heading(), "", "", WIDTH))
+                    .append('\n');
+            table(RowTable.listing(listing.brief(), MOST_ROWS), "rows", text);
+        }
+        if (!outcome.findings().isEmpty()) {
+            text.append('\n')
+                    .append(PlainText.wrapped(
+                            "At the job's own values: " + outcome.nominal().headline(), "", "", WIDTH));
+        }
         List<Row> rows = Row.of(result);
         if (!rows.isEmpty()) {
             text.append('\n');

@@ -114,14 +114,15 @@ final class BetweenTask implements Task {
             String around = search.around.norm() > 0 ? "the given direction" : "the chord";
             List<String> warnings = new ArrayList<>(scene.warnings());
             String what = search.direct ? "through the train" : "";
-            warnings.addAll(SearchNotes.of(through, search.halfAngle, what, around));
+            warnings.addAll(SearchNotes.of(
+                    through, search.halfAngle, what, train.elements().isEmpty(), around));
             Optional<PathSearch.Outcome> past = Optional.empty();
             if (search.direct) {
                 PathSearch.Outcome all =
                         PathSearch.run(query(Train.through(train.from()), from, to, search, scene.accuracy()));
                 PathSearch.Outcome free = all.withPaths(
                         all.paths().stream().filter(p -> isFree(train, from, p)).toList());
-                warnings.addAll(SearchNotes.of(free, search.halfAngle, "past the train", around));
+                warnings.addAll(SearchNotes.of(free, search.halfAngle, "past the train", false, around));
                 found.addAll(free.paths());
                 past = Optional.of(free);
             }

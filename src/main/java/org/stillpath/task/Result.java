@@ -92,4 +92,25 @@ public record Result(
         warnings = List.copyOf(warnings);
         cautions = List.copyOf(cautions);
     }
+
+    /** The same result under another headline, with other tables, figures and warnings: what a study makes of it. */
+    public Result with(
+            String otherHeadline,
+            List<Table> otherTables,
+            List<Figure> otherFigures,
+            List<String> otherWarnings,
+            boolean accurate) {
+        return new Result(
+                task,
+                title,
+                otherHeadline,
+                quantities,
+                rays,
+                paths,
+                otherTables,
+                otherFigures,
+                otherWarnings,
+                cautions,
+                accurate);
+    }
 }

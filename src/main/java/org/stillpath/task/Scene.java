@@ -9,6 +9,7 @@ import org.stillpath.job.Section;
 import org.stillpath.job.Sources;
 import org.stillpath.job.Value;
 import org.stillpath.medium.Media;
+import org.stillpath.medium.MediaMemory;
 import org.stillpath.medium.MediaReader;
 import org.stillpath.medium.Medium;
 import org.stillpath.ray.Train;
@@ -28,7 +29,7 @@ import org.stillpath.unit.Kind;
  * @param through the medium that is everywhere; absent where there is a train
  * @param figures names of the figures asked for; absent: the task's usual ones
  * @param sources files that the job may name
- * @param kept what has been worked out for it
+ * @param memory what it has in common with jobs that differ in some values only
  */
 public record Scene(
         String title,
@@ -39,7 +40,7 @@ public record Scene(
         Optional<Medium> through,
         Optional<List<Value>> figures,
         Sources sources,
-        Kept kept) {
+        MediaMemory memory) {
     /** The helium d line, the usual reference of catalogues, for jobs that name no wavelength. */
     private static final double D_LINE = 587.5618e-9;
 
@@ -47,6 +48,9 @@ public record Scene(
     private static final double LEAST_ACCURACY = 1e-13;
     private static final double MOST_ACCURACY = 1e-2;
     private static final int MOST_WAVELENGTHS = 100;
+    /** Figures that belong to a study of the job. */
+    private static final List<String> STUDY_FIGURES = List.of("sweep", "batch", "budget", "fit");
+
     private static final int LONGEST_TITLE = 500;
 
     public Scene {
@@ -93,7 +97,7 @@ public record Scene(
         return List.copyOf(list);
     }
 
-    static Scene read(Section job, Sources sources) {
+    static Scene read(Section job, Sources sources, MediaMemory memory) {
         String title = job.find("title").map(Value::text).orElse("");
         if (title.length() > LONGEST_TITLE) {
             job.fault("title", "a title may have " + LONGEST_TITLE + " characters; this one has " + title.length());
@@ -102,7 +106,7 @@ public record Scene(
         Optional<Value> wavelength = job.find("wavelength");
         double[] wavelengths = wavelength.map(Scene::wavelengths).orElse(new double[] {D_LINE});
         double accuracy = job.find("accuracy").map(Scene::accuracy).orElse(DEFAULT_ACCURACY);
-        Media media = MediaReader.read(job.find("media").map(Value::section), sources, job.problems());
+        Media media = MediaReader.read(job.find("media").map(Value::section), sources, job.problems(), memory);
         Optional<Value> trainValue = job.find("train");
         Optional<Value> throughValue = job.find("through");
         if (trainValue.isPresent() && throughValue.isPresent()) {
@@ -115,18 +119,19 @@ public record Scene(
         if (train.isEmpty() && through.isEmpty()) {
             job.fault("light needs something to go through: add \"train\", with its surfaces, or \"through: MEDIUM\"");
         }
-        Optional<Value> study = job.find("study");
-        study.ifPresent(v -> v.fault("studies are not in this version yet; leave \"study\" out"));
+        // read by the floor above; what it draws is none of the task's figures
+        boolean studied = job.has("study");
+        Optional<List<Value>> figures = job.find("figures")
+                .map(Value::items)
+                .map(list -> list.stream()
+                        .filter(v -> !(studied && isStudyFigure(v)))
+                        .toList());
         return new Scene(
-                title,
-                wavelengths,
-                wavelength.isPresent(),
-                accuracy,
-                train,
-                through,
-                job.find("figures").map(Value::items),
-                sources,
-                new Kept());
+                title, wavelengths, wavelength.isPresent(), accuracy, train, through, figures, sources, memory);
+    }
+
+    private static boolean isStudyFigure(Value value) {
+        return value.isText() && STUDY_FIGURES.contains(value.text());
     }
 
     private static double[] wavelengths(Value value) {

@@ -18,9 +18,10 @@ final class SearchNotes {
      * In words for the warnings of a result.
      *
      * @param what which rays were searched, such as "through the train"; may be empty
+     * @param open whether one medium is everywhere: then images come in odd numbers unless something is cut off
      * @param around what stands in the middle of the searched directions
      */
-    static List<String> of(PathSearch.Outcome outcome, double halfAngle, String what, String around) {
+    static List<String> of(PathSearch.Outcome outcome, double halfAngle, String what, boolean open, String around) {
         List<String> notes = new ArrayList<>();
         notes.add(String.format(
                 Locale.ROOT,
@@ -33,7 +34,7 @@ final class SearchNotes {
                 what.isEmpty() ? "" : ", " + what,
                 outcome.shots(),
                 String.format(Locale.ROOT, "%,d", outcome.evaluations()).replace(',', ' ')));
-        edges(outcome, what).ifPresent(notes::add);
+        edges(outcome, open).ifPresent(notes::add);
         if (outcome.exhausted()) {
             notes.add(
                     "the search stopped at its limit of rays before every part of the cone was looked through to the end: paths "
@@ -63,16 +64,16 @@ final class SearchNotes {
     }
 
     /** What rays ran into, and whether images are missing for it. */
-    private static Optional<String> edges(PathSearch.Outcome outcome, String what) {
+    private static Optional<String> edges(PathSearch.Outcome outcome, boolean open) {
         Map<Status, Integer> ended = outcome.ended();
         int sum = outcome.paths().stream()
                 .filter(p -> p.kind() != StationaryPath.Kind.DEGENERATE)
                 .mapToInt(p -> p.morseIndex() % 2 == 0 ? 1 : -1)
                 .sum();
         boolean complete =
-                outcome.paths().stream().anyMatch(p -> p.kind() == StationaryPath.Kind.DEGENERATE) || sum == 1;
+                !open || outcome.paths().stream().anyMatch(p -> p.kind() == StationaryPath.Kind.DEGENERATE) || sum == 1;
         if (ended.isEmpty()) {
-            return complete || !what.isEmpty()
+            return complete
                     ? Optional.empty()
                     : Optional.of(
                             "paths come in odd numbers where nothing stops light (Burke 1981), and these do not add up to one: at "

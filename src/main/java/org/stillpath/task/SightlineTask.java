@@ -71,16 +71,18 @@ final class SightlineTask implements Task {
                 setting(scene, known, ground.orElse(Ground.level(0))),
                 sight.orElseThrow(() -> new IllegalStateException("a job without a sight has faults")),
                 figures.names(),
-                earthGiven);
+                earthGiven,
+                options.figures());
     }
 
     /** What a setting depends on, besides the scene. */
-    private record Over(double radius, Ground ground) {}
+    private record Over(Medium medium, double wavelength, double accuracy, double radius, Ground ground) {}
 
     private static Setting setting(Scene scene, Earth earth, Ground ground) {
-        return scene.kept().once(new Over(earth.radius(), ground), Setting.class, () -> {
+        Medium m = scene.through().orElseThrow();
+        Over over = new Over(m, scene.wavelength(), scene.accuracy(), earth.radius(), ground);
+        return scene.memory().once(over, Setting.class, () -> {
             EarthChart chart = earth.flat() ? EarthChart.flat(ground) : EarthChart.sphere(earth.radius(), ground);
-            Medium m = scene.through().orElseThrow();
             IndexField field = m.field(scene.wavelength(), m.frame(Vector.ZERO), chart);
             return new Setting(
                     earth, chart, field, Sightings.through(field, chart, scene.accuracy()), scene.accuracy());
@@ -126,7 +128,8 @@ final class SightlineTask implements Task {
         return Display.of(metres, "m", Math.max(1e-3, 1e-9 * Math.abs(metres))).toString();
     }
 
-    private static Result run(Scene scene, Setting setting, Sight sight, List<String> figures, boolean earthGiven) {
+    private static Result run(
+            Scene scene, Setting setting, Sight sight, List<String> figures, boolean earthGiven, boolean drawn) {
         List<String> warnings = new ArrayList<>(scene.warnings());
         if (!earthGiven) {
             warnings.add("no earth is given; a sphere of 6371 km is taken");
@@ -141,10 +144,11 @@ final class SightlineTask implements Task {
         if (sight.to() instanceof Sight.Staff staff) {
             return staff(scene, setting, sight, staff, warnings);
         }
-        return target(scene, setting, sight, (Sight.Point) sight.to(), warnings);
+        return target(scene, setting, sight, (Sight.Point) sight.to(), drawn, warnings);
     }
 
-    private static Result target(Scene scene, Setting setting, Sight sight, Sight.Point asked, List<String> warnings) {
+    private static Result target(
+            Scene scene, Setting setting, Sight sight, Sight.Point asked, boolean drawn, List<String> warnings) {
         double eye = sight.eye();
         Observations observed = Observations.of(scene, setting, sight, asked);
         warnings.addAll(observed.warnings());
@@ -157,7 +161,7 @@ final class SightlineTask implements Task {
         Chord chord = new Chord(setting.chart().radius(), eye, distance, height);
         // before the search, which needs the ray that touches the ground too
         Optional<Sightings.Horizon> horizon = setting.sightings().horizon(eye);
-        Sightings.Outcome seen = setting.sightings().find(eye, distance, height);
+        Sightings.Outcome seen = setting.sightings().find(eye, distance, height, horizon);
         List<ImageRow> rows = new ArrayList<>();
         for (Sighting s : seen.images()) {
             rows.add(row(s, chord, setting, seen.images().size()));
@@ -212,6 +216,8 @@ final class SightlineTask implements Task {
                 q.put(r.key() + "-difference", new Quantity.Amount(r.difference(), r.unit(), r.error()));
             }
         }
+        q.put("searched-lowest", new Quantity.Amount(seen.lowest(), "rad", 0));
+        q.put("searched-highest", new Quantity.Amount(seen.highest(), "rad", 0));
         tell(warnings, seen, rows.size());
         boolean accurate = seen.images().stream().allMatch(s -> accurate(s, setting, chord));
         if (!accurate) {
@@ -226,7 +232,7 @@ final class SightlineTask implements Task {
                 List.of(),
                 rows,
                 List.of(),
-                tables(rows, seen, observed.reduced()),
+                tables(rows, seen, observed.reduced(), drawn),
                 List.of(),
                 warnings,
                 CAUTIONS,
@@ -257,8 +263,13 @@ final class SightlineTask implements Task {
                 true);
     }
 
-    private static List<Table> tables(List<ImageRow> rows, Sightings.Outcome seen, List<Reduced> reduced) {
-        List<Table> tables = new ArrayList<>(List.of(table(rows), transfer(seen)));
+    private static List<Table> tables(
+            List<ImageRow> rows, Sightings.Outcome seen, List<Reduced> reduced, boolean drawn) {
+        List<Table> tables = new ArrayList<>(List.of(table(rows)));
+        if (drawn) {
+            // a hundred numbers as text cost a tenth of a sight
+            tables.add(transfer(seen));
+        }
         if (!reduced.isEmpty()) {
             List<List<String>> cells = new ArrayList<>();
             for (Reduced r : reduced) {
@@ -328,13 +339,8 @@ final class SightlineTask implements Task {
                             : "; rays that leave the eye within " + angle(d.kept())
                                     + " of the horizontal are trapped below it"));
         }
-        warnings.add(String.format(
-                Locale.ROOT,
-                "searched were launch elevations from %s to %s, with %d rays; images nearer to each other than the search "
-                        + "resolves may be missed",
-                angle(seen.lowest()),
-                angle(seen.highest()),
-                seen.shots()));
+        warnings.add("images nearer to each other than the search resolves may be missed; `searched-lowest` and "
+                + "`searched-highest` bound the launch elevations looked at");
     }
 
     private static String angle(double rad) {

@@ -6,6 +6,7 @@ import org.stillpath.job.Node;
 import org.stillpath.job.Section;
 import org.stillpath.job.Sources;
 import org.stillpath.job.Value;
+import org.stillpath.medium.MediaMemory;
 import org.stillpath.problem.Problems;
 
 /** The tasks by name, and the way from a job to its result. */
@@ -42,7 +43,7 @@ public final class Tasks {
      * @throws org.stillpath.problem.ProblemException with all faults, if there are any
      */
     public static void check(Node.Mapping job, Sources sources) {
-        read(job, sources);
+        read(job, sources, new MediaMemory());
     }
 
     /**
@@ -52,21 +53,22 @@ public final class Tasks {
      *     asks for
      */
     public static Result run(Node.Mapping job, Sources sources, Options options) {
-        return read(job, sources).run(options);
+        return read(job, sources, new MediaMemory()).run(options);
     }
 
-    private static Task.Plan read(Node.Mapping job, Sources sources) {
-        return read(job, sources, Optional.empty());
-    }
-
-    /** Reads a job; with a scene that has been read from the same nodes before, if there is one. */
-    static Task.Plan read(Node.Mapping job, Sources sources, Optional<Scene> known) {
+    /**
+     * Reads a job that differs from earlier ones in some values only: media that did not change are not read again, and
+     * formulas never are.
+     *
+     * @param memory what the readings have in common; may be shared between threads
+     * @throws org.stillpath.problem.ProblemException with all faults of the job
+     */
+    public static Task.Plan read(Node.Mapping job, Sources sources, MediaMemory memory) {
         Problems problems = new Problems();
         Section top = Section.of(job, "", problems);
         Value name = top.need("task", "lens");
         Optional<Task> task = find(name);
-        Scene scene = known.orElseGet(() -> Scene.read(top, sources));
-        Series.know(top);
+        Scene scene = Scene.read(top, sources, memory);
         Optional<Task.Plan> plan = task.map(t -> t.read(top, scene));
         if (plan.isPresent()) {
             top.finish();

@@ -58,6 +58,16 @@ class ReadmeIT {
     }
 
     @Test
+    void theBudgetPrintsWhatIsShown() throws Exception {
+        Files.writeString(folder.resolve("budget.yaml"), blocks("yaml").get(1));
+        // fewer samples than the standard asks for, for the time's sake; the yield then has other digits
+        Packaged.Ended end = Packaged.run(folder, "run", "budget.yaml", "--set", "study.budget.samples=20000");
+        assertThat(end.status()).isZero();
+        String shown = blocks("text").get(2);
+        assertThat(end.out()).startsWith(shown.substring(0, shown.indexOf("yield")));
+    }
+
+    @Test
     void theFurtherWaysInWork() throws Exception {
         for (String task : List.of("lens", "trace", "between")) {
             Packaged.Ended starter = Packaged.run(folder, "new", task);

@@ -138,6 +138,66 @@ class PathSearchTest {
 
     private static final int PROBLEMS = 4;
 
+    /**
+     * n² = n₀² + k²y²: rays part as e^{kτ}, here by 2e8, so that the last bit of the launch moves the end by 1e-8 of the way. y =
+     * y₀ cosh kτ + (p/k) sinh kτ, z = p_z τ, S = ∫n² dτ (closed form of the repelling oscillator; p_z by bisection).
+     */
+    @Test
+    void mendsWhatIsTooUnstableForOneShot() {
+        double n0 = 1.5;
+        double k = 1;
+        double y0 = 0.5;
+        double y1 = 0.4;
+        double z = 30;
+        IndexField repelling = (x, y, zz, count, order, out) -> {
+            for (int i = 0; i < count; i++) {
+                out.value[i] = n0 * n0 - 1 + k * k * y[i] * y[i];
+                out.gx[i] = 0;
+                out.gy[i] = k * k * y[i];
+                out.gz[i] = 0;
+                out.hxx[i] = 0;
+                out.hxy[i] = 0;
+                out.hxz[i] = 0;
+                out.hyy[i] = k * k;
+                out.hyz[i] = 0;
+                out.hzz[i] = 0;
+            }
+        };
+        double low = 0.5;
+        double high = 2;
+        double tau = 0;
+        double p = 0;
+        for (int i = 0; i < 200; i++) {
+            double pz = 0.5 * (low + high);
+            tau = z / pz;
+            p = k * (y1 - y0 * Math.cosh(k * tau)) / Math.sinh(k * tau);
+            if (p * p + pz * pz > n0 * n0 + k * k * y0 * y0) {
+                high = pz;
+            } else {
+                low = pz;
+            }
+        }
+        // ∫y² dτ with y = a e^{kτ} + b e^{−kτ}; a = (y₁ − y₀e^{−kτ})/(e^{kτ} − e^{−kτ}) keeps its digits
+        double a = (y1 - y0 * Math.exp(-k * tau)) / (2 * Math.sinh(k * tau));
+        double b = y0 - a;
+        double e = Math.exp(k * tau);
+        double squares = (a * a * (e * e - 1) + b * b * (1 - 1 / (e * e))) / (2 * k) + 2 * a * b * tau;
+        double wanted = n0 * n0 * tau + k * k * squares;
+        List<StationaryPath> paths = PathSearch.run(new PathSearch.Query(
+                        Train.through(repelling),
+                        new Vector(0, y0, 0),
+                        new Vector(0, y1, z),
+                        Vector.ZERO,
+                        Math.toRadians(60),
+                        FREE,
+                        1e-12))
+                .paths();
+        assertThat(paths).hasSize(1);
+        assertThat(paths.get(0).opticalLength()).isCloseTo(wanted, within(1e-11 * wanted));
+        assertThat(paths.get(0).residual()).isLessThan(1e-11);
+        assertThat(paths.get(0).kind()).isEqualTo(StationaryPath.Kind.MINIMUM);
+    }
+
     /** A symmetric plane is seen where there is one and not where there is none. */
     @Test
     void seesSymmetry() {

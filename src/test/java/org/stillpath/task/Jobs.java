@@ -6,6 +6,7 @@ import org.stillpath.io.YamlReader;
 import org.stillpath.job.Node;
 import org.stillpath.job.Paths;
 import org.stillpath.job.Sources;
+import org.stillpath.medium.MediaMemory;
 import org.stillpath.problem.Problem;
 import org.stillpath.problem.ProblemException;
 import org.stillpath.problem.Problems;
@@ -29,7 +30,9 @@ final class Jobs {
         Problems problems = new Problems();
         Node.Mapping variant = Paths.with(job, path, new Node.Scalar(job.place(), value, false), job.place(), problems);
         problems.throwIfAny();
-        return Series.of(job, Sources.none()).run(variant, new Tasks.Options(false));
+        MediaMemory memory = new MediaMemory();
+        Tasks.read(job, Sources.none(), memory).run(new Tasks.Options(false));
+        return Tasks.read(variant, Sources.none(), memory).run(new Tasks.Options(false));
     }
 
     /** What is wrong with a job, as the user would read it; empty if nothing is. */
