@@ -15,13 +15,14 @@ import org.stillpath.job.Node;
  * first reading: a hundred thousand variations of a medium are worth nothing to each other. May be shared between threads.
  */
 public final class MediaMemory {
+    private static final int MOST = 64;
+
     private final FormulaCache formulas = new FormulaCache();
     private final Map<Key, Medium> media = new ConcurrentHashMap<>();
+    /** What follows from a medium, such as the table of a search, by what it depends on. */
     private final Map<Object, Object> made = new ConcurrentHashMap<>();
-    private volatile boolean keeping = true;
 
-    /** Things worked out beyond this number are only worth their memory to a series that varies little. */
-    private static final int MOST_MADE = 64;
+    private volatile boolean keeping = true;
 
     /** A section by identity; its name counts, since messages carry it. */
     private record Key(Node section, String name) {
@@ -36,17 +37,13 @@ public final class MediaMemory {
         }
     }
 
-    /** No further media are kept; those known are still found. */
-    public void keep(boolean more) {
-        keeping = more;
-    }
-
     /**
-     * What is worked out once for all readings that agree in a key: fields and tables that follow from a medium.
+     * What has been worked out before for the same key; made where it is not known. Two threads may make the same thing, and
+     * either serves.
      *
      * @param key equal where the thing would be the same
      * @param sort what the thing is
-     * @param make makes it where it is not known; two threads may both make it, and either serves
+     * @param make makes it
      */
     public <T> T once(Object key, Class<T> sort, Supplier<T> make) {
         Object known = made.get(key);
@@ -54,11 +51,17 @@ public final class MediaMemory {
             return sort.cast(known);
         }
         T fresh = make.get();
-        if (made.size() >= MOST_MADE) {
+        if (made.size() >= MOST) {
+            // variations of everything are worth nothing to each other
             made.clear();
         }
         made.put(key, fresh);
         return fresh;
+    }
+
+    /** No further media are kept; those known are still found. */
+    public void keep(boolean more) {
+        keeping = more;
     }
 
     FormulaCache formulas() {

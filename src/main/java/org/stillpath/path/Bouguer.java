@@ -20,7 +20,7 @@ import org.stillpath.medium.IndexField;
  * Costs some hundred field samples a ray.
  */
 public final class Bouguer {
-    private static final int POINTS = 20;
+    private static final int POINTS = 14;
     private static final int PARTS = 2;
     /** √0.6, the outer node of Gauss' rule of three points. */
     private static final double ROOT = Math.sqrt(0.6);

@@ -4,9 +4,11 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.Comparator;
 import java.util.List;
+import java.util.Map;
 import java.util.Optional;
 import java.util.OptionalDouble;
 import java.util.TreeSet;
+import java.util.concurrent.ConcurrentHashMap;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
@@ -46,6 +48,9 @@ public final class Sightings {
     /** Part of the distance that the air above both ends is looked at. */
     private static final double UP = 0.02;
 
+    /** Least height that a table covers, metres. */
+    private static final double STEP = 128;
+
     private static final int POLISHES = 12;
     private static final Vector PLANE = new Vector(0, -1, 0);
     /** Of the slope of a straight line: below it the target is on a caustic. */
@@ -56,13 +61,8 @@ public final class Sightings {
     private final double accuracy;
     private final Train train;
     private final double[] knots;
-    /** The table of the search; made when first asked for, by several threads perhaps, each as good as the other. */
-    private volatile Optional<LayerTable> table = Optional.empty();
-
-    /** The last horizon found: a search behind it needs the same ray. */
-    private volatile Optional<Touch> touch = Optional.empty();
-
-    private volatile double[] tabulated = {Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY};
+    /** The tables of the search, by the heights that they cover; made when first asked for. */
+    private final Map<Range, Optional<LayerTable>> tables = new ConcurrentHashMap<>();
 
     private Sightings(IndexField field, EarthChart chart, double accuracy) {
         this.field = field;
@@ -207,27 +207,34 @@ public final class Sightings {
         }
     }
 
-    /** The table of the air from one height to another; empty where the air depends on more. */
+    /**
+     * The table of the air from one height to another; empty where the air depends on more. Its range comes in steps that depend
+     * on the heights alone, so that a sight's last digits do not depend on the sights before it.
+     */
     private Optional<LayerTable> table(double low, double high) {
         if (!field.ofHeightAlone() || field.uniform()) {
             return Optional.empty();
         }
-        Optional<LayerTable> known = table;
-        double[] covered = tabulated;
-        if (known.isPresent() && covered[0] <= low && covered[1] >= high) {
-            return known;
-        }
-        double from = Math.min(covered[0], low - 1);
-        double until = Math.max(covered[1], Math.max(2 * high, 100));
-        Optional<LayerTable> made = LayerTable.of(field, chart.radius(), knots, from, until);
-        tabulated = new double[] {from, until};
-        table = made;
-        return made;
+        double from = STEP * Math.floor((low - 1) / STEP);
+        double until = from + STEP * Math.scalb(1.0, Math.max(0, Math.getExponent((high - from) / STEP) + 1));
+        return tables.computeIfAbsent(
+                new Range(from, until), r -> LayerTable.of(field, chart.radius(), knots, r.low, r.high));
     }
+
+    private record Range(double low, double high) {}
 
     /** Finds the images of a target and what else is seen where it stands. */
     public Outcome find(double from, double distance, double to) {
-        return new Search(new Chord(chart.radius(), from, distance, to)).run();
+        return find(from, distance, to, horizon(from));
+    }
+
+    /**
+     * The same where the horizon of the eye is known: its ray bounds what is seen behind it.
+     *
+     * @param horizon from {@link #horizon}
+     */
+    public Outcome find(double from, double distance, double to, Optional<Horizon> horizon) {
+        return new Search(new Chord(chart.radius(), from, distance, to), horizon).run();
     }
 
     /**
@@ -375,16 +382,12 @@ public final class Sightings {
             return Optional.of(new Horizon(dip, 1e-12, Double.NaN, Double.NaN));
         }
         Optional<Tangent> t = tangent(from, -dip, 1e-9);
-        t.ifPresent(g -> touch = Optional.of(new Touch(from, g)));
         return t.map(g -> new Horizon(
                 -g.elevation,
                 g.error + 0.1 * Math.abs(dip + g.elevation),
                 g.contact,
                 g.contactError + 2 * Math.abs(dip + g.elevation) * g.spread));
     }
-
-    /** The ray that touches the ground from an eye. */
-    private record Touch(double from, Tangent tangent) {}
 
     private record Lowest(double height, double lift) {}
 
@@ -530,6 +533,7 @@ public final class Sightings {
     /** One search for one target. */
     private final class Search {
         private final Chord chord;
+        private final Optional<Horizon> horizon;
         private final Tracer quick;
         private final List<Sample> samples = new ArrayList<>();
         private final List<Duct> ducts = new ArrayList<>();
@@ -537,8 +541,9 @@ public final class Sightings {
         private int shots;
         private String note = "";
 
-        Search(Chord chord) {
+        Search(Chord chord, Optional<Horizon> horizon) {
             this.chord = chord;
+            this.horizon = horizon;
             double top = Math.max(chord.fromHeight(), chord.toHeight()) + 2 * UP * chord.distance();
             double bottom = Math.min(lowestGround(chord.distance()), Math.min(chord.fromHeight(), chord.toHeight()));
             this.layered = table(bottom - SUNK, top)
@@ -1168,9 +1173,9 @@ public final class Sightings {
             if (in.height - ground < doubt) {
                 return new Limb(ground, 0, in.angle, Bound.NONE, Double.NaN, Double.NaN);
             }
-            Optional<Tangent> found = touch.filter(t -> t.from == chord.fromHeight())
-                    .map(Touch::tangent)
-                    .filter(t -> Math.abs(t.elevation - in.angle) < 1e-5)
+            Optional<Tangent> found = horizon.filter(h -> Math.abs(h.dip() + in.angle) < 1e-5)
+                    .filter(h -> !Double.isNaN(h.distance()))
+                    .map(h -> new Tangent(-h.dip(), h.dipError(), h.distance(), h.distanceError(), 0))
                     .or(() -> tangent(chord.fromHeight(), in.angle, 1e-5))
                     .filter(t -> t.contact < chord.distance());
             if (found.isEmpty()) {

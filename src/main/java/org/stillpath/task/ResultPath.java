@@ -32,7 +32,7 @@ public final class ResultPath {
      */
     public record Found(double value, String unit, double error) {}
 
-    /** The path that a text spells; empty where it does not start at a list that holds numbers. */
+    /** The path that a text spells; empty where it does not start at one of {@link #starts}. */
     public static Optional<ResultPath> parse(String text) {
         List<String> parts = new ArrayList<>();
         for (String part : text.strip().replace("]", "").split("[.\\[]", -1)) {
@@ -128,6 +128,37 @@ public final class ResultPath {
         };
     }
 
+    private Optional<Found> image(ImageRow i) {
+        String key = parts.get(2);
+        double error = i.errors().getOrDefault(key, 0.0);
+        return switch (key) {
+            case "launch-elevation" -> plain(i.launch(), "rad", error);
+            case "arrival-elevation" -> plain(i.arrival(), "rad", error);
+            case "back-elevation" -> plain(-i.arrival(), "rad", error);
+            case "refraction-at-from" -> plain(i.refractionAtFrom(), "rad", error);
+            case "refraction-at-to" -> plain(i.refractionAtTo(), "rad", error);
+            case "apparent-displacement" -> plain(i.displacement(), "m", error);
+            case "refraction-coefficient" -> plain(i.coefficient().orElse(Double.NaN), "1", error);
+            case "optical-length" -> plain(i.opticalLength(), "m", error);
+            case "optical-excess" -> plain(i.excess(), "m", error);
+            case "length" -> plain(i.length(), "m", error);
+            case "lowest-clearance" -> plain(i.lowest(), "m", error);
+            case "lowest-clearance-at" -> plain(i.lowestAt(), "m", error);
+            case "vertical-magnification" -> plain(i.magnification(), "1", error);
+            default -> Optional.empty();
+        };
+    }
+
+    private Optional<Found> star(StarRow s) {
+        String key = parts.get(2);
+        return switch (key) {
+            case "apparent-zenith" -> plain(s.apparentZenith(), "rad", 0);
+            case "refraction" ->
+                plain(s.refraction().orElse(Double.NaN), "rad", s.errors().getOrDefault(key, 0.0));
+            default -> Optional.empty();
+        };
+    }
+
     private Optional<Found> path(PathRow p) {
         String key = parts.get(2);
         double error = p.errors().getOrDefault(key, 0.0);
@@ -140,38 +171,6 @@ public final class ResultPath {
             case "arrival-direction" -> component(p.arrival(), "1", error);
             case "morse-index" -> plain(p.morseIndex(), "1", 0);
             case "residual" -> plain(p.residual(), "m", 0);
-            default -> Optional.empty();
-        };
-    }
-
-    private Optional<Found> image(ImageRow r) {
-        String key = parts.get(2);
-        double error = r.errors().getOrDefault(key, 0.0);
-        return switch (key) {
-            case "launch-elevation" -> plain(r.launch(), "rad", error);
-            case "arrival-elevation" -> plain(r.arrival(), "rad", error);
-            case "back-elevation" -> plain(-r.arrival(), "rad", r.errors().getOrDefault("arrival-elevation", 0.0));
-            case "refraction-at-from" -> plain(r.refractionAtFrom(), "rad", error);
-            case "refraction-at-to" -> plain(r.refractionAtTo(), "rad", error);
-            case "apparent-displacement" -> plain(r.displacement(), "m", error);
-            case "refraction-coefficient" ->
-                r.coefficient().isPresent() ? plain(r.coefficient().getAsDouble(), "1", error) : Optional.empty();
-            case "optical-length" -> plain(r.opticalLength(), "m", error);
-            case "optical-excess" -> plain(r.excess(), "m", error);
-            case "length" -> plain(r.length(), "m", error);
-            case "lowest-clearance" -> plain(r.lowest(), "m", error);
-            case "vertical-magnification" -> plain(r.magnification(), "1", error);
-            default -> Optional.empty();
-        };
-    }
-
-    private Optional<Found> star(StarRow r) {
-        String key = parts.get(2);
-        double error = r.errors().getOrDefault(key, 0.0);
-        return switch (key) {
-            case "apparent-zenith" -> plain(r.apparentZenith(), "rad", error);
-            case "refraction" ->
-                r.refraction().isPresent() ? plain(r.refraction().getAsDouble(), "rad", error) : Optional.empty();
             default -> Optional.empty();
         };
     }

@@ -29,7 +29,7 @@ import org.stillpath.unit.Kind;
  * @param through the medium that is everywhere; absent where there is a train
  * @param figures names of the figures asked for; absent: the task's usual ones
  * @param sources files that the job may name
- * @param memory what it has in common with other readings
+ * @param memory what it has in common with jobs that differ in some values only
  */
 public record Scene(
         String title,

@@ -101,6 +101,11 @@ final class SightFigures {
         this.ground = setting.chart().ground();
     }
 
+    /** Whether figures are wanted at all. */
+    boolean drawn() {
+        return drawn;
+    }
+
     /** Figures of a sighted target; what cannot be drawn is told in the warnings. */
     List<Figure> of(Found found, List<String> warnings) {
         List<Figure> list = new ArrayList<>();

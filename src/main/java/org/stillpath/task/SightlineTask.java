@@ -174,7 +174,7 @@ final class SightlineTask implements Task {
         Chord chord = new Chord(setting.chart().radius(), eye, distance, height);
         // before the search, which needs the ray that touches the ground too
         Optional<Sightings.Horizon> horizon = setting.sightings().horizon(eye);
-        Sightings.Outcome seen = setting.sightings().find(eye, distance, height);
+        Sightings.Outcome seen = setting.sightings().find(eye, distance, height, horizon);
         List<ImageRow> rows = new ArrayList<>();
         for (Sighting s : seen.images()) {
             rows.add(row(s, chord, setting, seen.images().size()));
@@ -229,6 +229,8 @@ final class SightlineTask implements Task {
                 q.put(r.key() + "-difference", new Quantity.Amount(r.difference(), r.unit(), r.error()));
             }
         }
+        q.put("searched-lowest", new Quantity.Amount(seen.lowest(), "rad", 0));
+        q.put("searched-highest", new Quantity.Amount(seen.highest(), "rad", 0));
         tell(warnings, seen, rows.size());
         boolean accurate = seen.images().stream().allMatch(s -> accurate(s, setting, chord));
         if (!accurate) {
@@ -244,7 +246,7 @@ final class SightlineTask implements Task {
                 List.of(),
                 rows,
                 List.of(),
-                tables(rows, seen, observed.reduced()),
+                tables(rows, seen, observed.reduced(), figures.drawn()),
                 figures.of(new SightFigures.Found(distance, height, point.span(), seen, rows, headline), warnings),
                 warnings,
                 CAUTIONS,
@@ -275,8 +277,13 @@ final class SightlineTask implements Task {
                 true);
     }
 
-    private static List<Table> tables(List<ImageRow> rows, Sightings.Outcome seen, List<Reduced> reduced) {
-        List<Table> tables = new ArrayList<>(List.of(table(rows), transfer(seen)));
+    private static List<Table> tables(
+            List<ImageRow> rows, Sightings.Outcome seen, List<Reduced> reduced, boolean drawn) {
+        List<Table> tables = new ArrayList<>(List.of(table(rows)));
+        if (drawn) {
+            // a hundred numbers as text cost a tenth of a sight
+            tables.add(transfer(seen));
+        }
         if (!reduced.isEmpty()) {
             List<List<String>> cells = new ArrayList<>();
             for (Reduced r : reduced) {
@@ -346,13 +353,8 @@ final class SightlineTask implements Task {
                             : "; rays that leave the eye within " + angle(d.kept())
                                     + " of the horizontal are trapped below it"));
         }
-        warnings.add(String.format(
-                Locale.ROOT,
-                "searched were launch elevations from %s to %s, with %d rays; images nearer to each other than the search "
-                        + "resolves may be missed",
-                angle(seen.lowest()),
-                angle(seen.highest()),
-                seen.shots()));
+        warnings.add("images nearer to each other than the search resolves may be missed; `searched-lowest` and "
+                + "`searched-highest` bound the launch elevations looked at");
     }
 
     private static String angle(double rad) {
