@@ -229,6 +229,24 @@ class ImagesTest {
         }
     }
 
+    /** Heron's mirror: the way over a plane is as long as the straight line to the target's mirror image, and no other is shorter. */
+    @Test
+    void findsHeronsWayOverAPlaneMirror() {
+        Surface plane =
+                new Surface(Frame.at(new Vector(0, 0, 2)), new Quadric(0, 0, 0), false, Double.POSITIVE_INFINITY);
+        Train mirror = new Train(AIR, List.of(new Element(plane, new Action.Reflect(), AIR)));
+        Vector from = new Vector(0.3, 0.1, 0.5);
+        Vector to = new Vector(-0.4, 1.3, -1);
+        List<StationaryPath> paths = PathSearch.run(new PathSearch.Query(
+                        mirror, from, to, new Vector(0, 0, 1), Math.toRadians(60), Vector.ZERO, 1e-12))
+                .paths();
+        double wanted = from.minus(new Vector(to.x(), to.y(), 4 - to.z())).norm();
+        assertThat(paths).hasSize(1);
+        assertThat(paths.get(0).opticalLength()).isCloseTo(wanted, within(1e-13));
+        assertThat(paths.get(0).overInterfaces()).isEqualTo(StationaryPath.Kind.MINIMUM);
+        assertThat(paths.get(0).kind()).isEqualTo(StationaryPath.Kind.MINIMUM);
+    }
+
     private static Surface ball() {
         return new Surface(Frame.at(new Vector(0, 0, -1)), new Quadric(1, 1, 1), true, Double.POSITIVE_INFINITY);
     }
