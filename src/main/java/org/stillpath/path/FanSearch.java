@@ -255,7 +255,9 @@ public final class FanSearch {
                 high = t;
             }
             double step = -miss / m.slope[branch];
-            if (Math.abs(step) < 1e-9 * Math.min(1, b.angle - a.angle) || high - low < NARROWEST) {
+            // where the miss is steep a small step is not yet a small miss
+            boolean met = Math.abs(step) < 1e-9 * Math.min(1, b.angle - a.angle) && Math.abs(miss) < 10 * TIGHT * scale;
+            if (met || high - low < NARROWEST) {
                 break;
             }
             t += step;
