@@ -39,6 +39,27 @@ public final class AtmosphereMedium implements Medium {
         return law;
     }
 
+    /** Whether the pressure is the same everywhere, which no column of air has. */
+    public boolean pressureIsConstant() {
+        return pressure instanceof Pressure.Given g && g.quantity().isConstant();
+    }
+
+    /** The pressure in pascal at a height above the foot of the eye, metres, over flat ground; NaN where it is undefined. */
+    public double pressureAt(double height) {
+        Scratch s = new Scratch().point(0, 0, height);
+        Samples t = new Samples(1);
+        Samples w = new Samples(1);
+        temperature.on(Chart.FLAT).sample(s.x, s.y, s.z, 1, Double.NaN, Order.VALUE, t);
+        humidity.quantity().on(Chart.FLAT).sample(s.x, s.y, s.z, 1, Double.NaN, Order.VALUE, w);
+        pressure.on(Chart.FLAT).sample(s.x, s.y, s.z, 1, t, w, Order.VALUE, s.samples);
+        return s.samples.value[0];
+    }
+
+    /** The pressure of the standard atmosphere at a height, pascal; metres, from -5 km to 86 km. */
+    public static double standardPressure(double height) {
+        return Us1976.pressureAt(Us1976.geopotential(height));
+    }
+
     @Override
     public IndexField placed(double wavelength, Frame frame, Chart chart) {
         return placed(dispersion(wavelength, false), frame, chart);

@@ -1,7 +1,9 @@
 package org.stillpath.medium;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
+import java.util.Optional;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 
@@ -9,6 +11,10 @@ import org.stillpath.formula.Samples;
 public final class OverGround implements IndexField {
     private final IndexField field;
     private final List<Level> limits;
+    /** The field's seams, and the knots of the ground, so that no hill between two of them is stepped over. */
+    private final List<Seam> seams;
+
+    private final boolean knotted;
 
     /**
      * A field above the ground of a chart.
@@ -21,6 +27,13 @@ public final class OverGround implements IndexField {
         all.add(new GroundLevel(chart, sunk));
         all.addAll(field.limits());
         this.limits = List.copyOf(all);
+        List<Seam> also = new ArrayList<>(field.seams());
+        Optional<Seam> ground = chart.groundSeam();
+        this.knotted = ground.isPresent() && !also.contains(ground.get());
+        if (knotted) {
+            also.add(ground.get());
+        }
+        this.seams = List.copyOf(also);
     }
 
     @Override
@@ -45,12 +58,12 @@ public final class OverGround implements IndexField {
 
     @Override
     public List<Seam> seams() {
-        return field.seams();
+        return seams;
     }
 
     @Override
     public IndexField piece(int[] cells) {
-        return field.piece(cells);
+        return field.piece(knotted ? Arrays.copyOf(cells, cells.length - 1) : cells);
     }
 
     @Override

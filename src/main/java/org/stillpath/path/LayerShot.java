@@ -1,5 +1,6 @@
 package org.stillpath.path;
 
+import java.util.Arrays;
 import org.stillpath.medium.Ground;
 import org.stillpath.ray.Status;
 
@@ -21,6 +22,9 @@ final class LayerShot {
     private static final double[] E = {
         71 / 57600.0, 0, -71 / 16695.0, 71 / 1920.0, -17253 / 339200.0, 22 / 525.0, -1 / 40.0
     };
+    /** How much finer a step is taken than the search asks: where a layer only just keeps a ray, errors grow a thousandfold. */
+    private static final double FINER = 1e-3;
+
     private static final int MOST_STEPS = 20_000;
     private static final int LOOKS = 4;
 
@@ -29,6 +33,7 @@ final class LayerShot {
     private final double sunk;
     private final double distance;
     private final boolean level;
+    private final double[] knots;
     private final double[][] k = new double[7][4];
     private final double[] y = new double[4];
     private final double[] z = new double[4];
@@ -40,6 +45,7 @@ final class LayerShot {
         this.sunk = sunk;
         this.distance = distance;
         this.level = ground.isLevel();
+        this.knots = ground.knots().orElse(new double[0]);
     }
 
     /** Height at the end of the last shot that arrived, metres. */
@@ -54,7 +60,7 @@ final class LayerShot {
 
     /** Follows a ray to the distance. */
     Status to(double from, double elevation, double tolerance) {
-        double allowed = Math.max(tolerance, 1e-12) * distance;
+        double allowed = Math.max(FINER * tolerance, 1e-13) * distance;
         y[0] = from;
         y[1] = elevation;
         y[2] = 0;
@@ -65,6 +71,7 @@ final class LayerShot {
         }
         double h = 0.05 * distance;
         for (int i = 0; i < MOST_STEPS; i++) {
+            h = Math.min(h, piece(x));
             boolean last = x + h >= distance * (1 - 1e-15);
             if (last) {
                 h = distance - x;
@@ -94,6 +101,16 @@ final class LayerShot {
             h *= Math.min(5, 0.9 * Math.pow(Math.max(error, 1e-10), -0.2));
         }
         return Status.LOST;
+    }
+
+    /** How far it is to the next knot of the ground: between knots a look at a few places finds what stands there. */
+    private double piece(double x) {
+        if (knots.length == 0) {
+            return Double.POSITIVE_INFINITY;
+        }
+        int i = Arrays.binarySearch(knots, x + 1e-9 * distance);
+        int next = i >= 0 ? i + 1 : -i - 1;
+        return next < knots.length ? knots[next] - x : Double.POSITIVE_INFINITY;
     }
 
     /** Whether the edge that was met lies at the ground: a table that starts there. */

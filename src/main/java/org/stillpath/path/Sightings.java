@@ -256,6 +256,18 @@ public final class Sightings {
         return tracer(new Ending.AtLength(length), false, false).trace(start(from, elevation));
     }
 
+    /** The coefficient of refraction −(r/n) dn/dh of the air at a place; NaN where it is undefined. */
+    public double coefficient(double distance, double height) {
+        HeightProfile air = new HeightProfile(field, chart.radius(), distance);
+        return -(chart.radius() + height) * air.gradient(height) / (1 + air.refractivity(height));
+    }
+
+    /** The ray of a launch elevation over a length, metres, with the places that it passes. */
+    public Traced along(double from, double elevation, double length) {
+        Tracer.Settings settings = new Tracer.Settings(accuracy, false, true);
+        return new Tracer(train, new Ending.AtLength(length), settings).trace(start(from, elevation));
+    }
+
     /** Distance along the datum and height at which a ray ended, metres. */
     public double[] place(Traced t) {
         return place(t.state());
@@ -547,8 +559,8 @@ public final class Sightings {
                 image.filter(s -> isNew(images, s)).ifPresent(images::add);
             }
             if (layered.isPresent()) {
-                for (double angle : jumps(found)) {
-                    again(angle).stream().filter(s -> isNew(images, s)).forEach(images::add);
+                for (double[] rush : rushes(found)) {
+                    again(rush).stream().filter(s -> isNew(images, s)).forEach(images::add);
                 }
             }
             samples.sort(Comparator.comparingDouble(Sample::angle));
@@ -575,19 +587,22 @@ public final class Sightings {
                     transfer.isEmpty() ? note : "");
         }
 
-        /** Elevations across which the height jumps past the target's: the table's own, which cannot tell a jump from a rush. */
-        private List<Double> jumps(FanSearch.Outcome found) {
-            List<Double> list = new ArrayList<>();
+        /**
+         * Pairs of elevations between which the height passes the target's and no image was found: a jump, or a rush so steep that
+         * the table's roundings hide it.
+         */
+        private List<double[]> rushes(FanSearch.Outcome found) {
+            List<double[]> list = new ArrayList<>();
             List<FanSearch.Shot> shot = found.samples();
             for (int i = 1; i < shot.size(); i++) {
                 FanSearch.Shot a = shot.get(i - 1);
                 FanSearch.Shot b = shot.get(i);
-                if (b.angle() - a.angle() < 1e-12 && a.miss()[0] * b.miss()[0] < 0) {
-                    double e = 0.5 * (a.angle() + b.angle());
-                    boolean known = found.roots().stream().anyMatch(r -> Math.abs(r.angle() - e) < 1e-12);
-                    boolean near = !list.isEmpty() && e - list.get(list.size() - 1) < 1e-10;
+                if (a.miss()[0] * b.miss()[0] < 0) {
+                    boolean known = found.roots().stream()
+                            .anyMatch(r -> r.angle() >= a.angle() - 1e-15 && r.angle() <= b.angle() + 1e-15);
+                    boolean near = !list.isEmpty() && a.angle() - list.get(list.size() - 1)[1] < 1e-10;
                     if (!known && !near) {
-                        list.add(e);
+                        list.add(new double[] {a.angle(), b.angle()});
                     }
                 }
             }
@@ -595,17 +610,19 @@ public final class Sightings {
         }
 
         /**
-         * Searches with the air itself about a root of the table's that does not hold with the air: where the height depends so
-         * steeply on the elevation that the table's roundings move the root.
+         * Searches with the air itself about elevations that the table gives: where the height depends so steeply on the elevation
+         * that the table's roundings move the root.
          */
-        private List<Sighting> again(double e) {
+        private List<Sighting> again(double... about) {
             TreeSet<Double> angles = new TreeSet<>();
-            for (int i = 8; i <= 30; i++) {
-                double off = Math.max(Math.abs(e), 1e-6) * Math.pow(10, -0.5 * i);
-                angles.add(e - off);
-                angles.add(e + off);
+            for (double e : about) {
+                for (int i = 8; i <= 30; i++) {
+                    double off = Math.max(Math.abs(e), 1e-6) * Math.pow(10, -0.5 * i);
+                    angles.add(e - off);
+                    angles.add(e + off);
+                }
+                angles.add(e);
             }
-            angles.add(e);
             FanSearch.Outcome found = FanSearch.run(
                     this::traced,
                     angles.stream().mapToDouble(Double::doubleValue).toArray(),
@@ -736,6 +753,14 @@ public final class Sightings {
             if (lowestTurn < lower && lowestTurn * 1.01 >= low) {
                 lower = lowestTurn * 1.01;
             }
+            // down to a ray that meets the ground, so that the lowest height seen is known
+            double clear = lower;
+            for (int k = 0; k < 14 && lower > -1 && arrives(lower); k++) {
+                lower -= Math.max(some, 1e-5) * Math.pow(3, k);
+            }
+            for (int k = 1; k < 8 && lower < clear; k++) {
+                angles.add(clear + (lower - clear) * k / 8);
+            }
             for (double k : new double[] {-2, -1, -0.5, -0.2, 0, 0.2, 0.5, 1, 2}) {
                 angles.add(c0 + k * some);
             }
@@ -864,7 +889,8 @@ public final class Sightings {
         /** Drops elevations that lie closer than the fan needs, but not those beside an edge. */
         private double[] thinned(List<Double> angles, List<double[]> turns) {
             double range = angles.get(angles.size() - 1) - angles.get(0);
-            double near = range / 60;
+            double widest = turns.stream().mapToDouble(t -> t[0]).max().orElse(range);
+            double near = Math.min(range / 60, widest / 40);
             List<Double> kept = new ArrayList<>();
             for (int i = 0; i < angles.size(); i++) {
                 double a = angles.get(i);

@@ -55,11 +55,18 @@ final class PanelDrawing {
         boolean titled = figure.panels().stream().anyMatch(p -> !p.title().isEmpty());
         double top = Math.ceil(y + (titled ? Canvas.SIZE * 1.25 : 0) + Axes.ABOVE);
         double height = width == Width.FULL ? 165 : 120;
-        Scale up = scale(figure.up(), figure.up().low(), figure.up().high(), (int) (height / 20));
-        double left = Math.ceil(Canvas.EDGE + Axes.leftOf(up));
         int count = figure.panels().size();
         double end = right - Canvas.EDGE - 8;
-        double each = Math.floor((end - left - (count - 1) * GUTTER) / count);
+        double left = Canvas.EDGE + 30;
+        double each = 0;
+        // the labels of the ticks decide how much room is left, and with one scale for both directions that decides the
+        // ticks
+        for (int i = 0; i < 3; i++) {
+            each = Math.floor((end - left - (count - 1) * GUTTER) / count);
+            View view = view(figure.panels().get(0), new Box(left, top, left + each, top + height));
+            Scale up = scale(figure.up(), view.v(top + height), view.v(top), (int) (height / 20));
+            left = Math.ceil(Canvas.EDGE + Axes.leftOf(up));
+        }
         for (int i = 0; i < count; i++) {
             double start = left + i * (each + GUTTER);
             panel(figure.panels().get(i), i, new Box(start, top, start + each, top + height), y);
@@ -79,7 +86,7 @@ final class PanelDrawing {
         return legend.draw(canvas, top);
     }
 
-    private void panel(Panel panel, int number, Box plot, double titleTop) {
+    private View view(Panel panel, Box plot) {
         double u0 = shown(panel.across(), panel.across().low());
         double u1 = shown(panel.across(), panel.across().high());
         double v0 = shown(figure.up(), figure.up().low());
@@ -90,13 +97,17 @@ final class PanelDrawing {
             across = Math.min(across, up);
             up = across;
         }
-        View view = new View(
+        return new View(
                 (u0 + u1) / 2,
                 (v0 + v1) / 2,
                 (plot.left() + plot.right()) / 2,
                 (plot.top() + plot.bottom()) / 2,
                 across,
                 up);
+    }
+
+    private void panel(Panel panel, int number, Box plot, double titleTop) {
+        View view = view(panel, plot);
         int most = (int) Math.max(2, plot.width() / 24);
         Scale ruler = scale(panel.across(), view.u(plot.left()), view.u(plot.right()), most);
         while (most > 1 && !Axes.isClear(ruler, view.across())) {

@@ -40,6 +40,9 @@ final class SightFigures {
 
     private static final int LINE = 160;
     private static final int HEIGHTS = 400;
+    /** Part of the range of heights above the ground that does not decide how wide the profile is drawn. */
+    private static final double SKIN = 0.01;
+
     private static final int COLUMNS = 120;
     private static final int ROWS = 90;
     /** More images than this are numbered without the word. */
@@ -242,14 +245,13 @@ final class SightFigures {
         list.add(new Level("target " + metres(f.height()), f.height()));
         list.add(groundLevel(0));
         if (!ground.isLevel()) {
-            list.set(2, new Level("ground at the instrument", ground.height(0)));
             list.add(new Level("ground at the target", ground.height(f.distance())));
         }
         return list;
     }
 
     private Level groundLevel(double distance) {
-        return new Level("ground", ground.height(distance));
+        return new Level(ground.isLevel() ? "ground" : "ground at the instrument", ground.height(distance));
     }
 
     private PanelFigure profile(double[] range, double distance, List<Level> levels) {
@@ -314,10 +316,17 @@ final class SightFigures {
         double low = Double.POSITIVE_INFINITY;
         double high = Double.NEGATIVE_INFINITY;
         for (Curve c : curves) {
-            for (double v : c.x()) {
-                if (Double.isFinite(v)) {
-                    low = Math.min(low, v);
-                    high = Math.max(high, v);
+            double[] v = c.x();
+            int first = 0;
+            while (first < v.length - 1 && !Double.isFinite(v[first])) {
+                first++;
+            }
+            // laws of the air beside the ground may have a pole in it
+            first = Math.min(v.length - 1, first + (int) (SKIN * HEIGHTS));
+            for (int i = first; i < v.length; i++) {
+                if (Double.isFinite(v[i])) {
+                    low = Math.min(low, v[i]);
+                    high = Math.max(high, v[i]);
                 }
             }
         }
@@ -332,21 +341,21 @@ final class SightFigures {
     private String steepest(Curve bent, List<Curve> warm) {
         double[] n = bent.x();
         double[] h = bent.y();
+        double step = h[1] - h[0];
         int at = -1;
         double most = 0;
         for (int i = 1; i < n.length; i++) {
-            double g = Math.abs(n[i] - n[i - 1]);
+            double g = h[i - 1] < ground.height(0) + SKIN * step * HEIGHTS ? 0 : Math.abs(n[i] - n[i - 1]);
             if (g > most * (1 + 1e-9)) {
                 most = g;
                 at = i;
             }
         }
-        double step = h[1] - h[0];
         if (at < 0 || most / step < 1e-13) {
             return "The index is the same at all heights: light runs straight";
         }
         double gradient = (n[at] - n[at - 1]) / step;
-        String where = metres(Math.round(0.5 * (h[at] + h[at - 1]) / step) * step);
+        String where = three(0.5 * (h[at] + h[at - 1])) + " m";
         String k = Double.isInfinite(radius)
                 ? "n − 1 changes by " + three(1e6 * gradient) + " ppm/m"
                 : "k = " + three(-gradient * radius);
@@ -380,8 +389,15 @@ final class SightFigures {
         double low = Math.min(range[0], Arrays.stream(straight).min().orElse(range[0]));
         double most = Arrays.stream(g).max().orElse(0);
         boolean shown = most >= range[0] - margin;
-        double bottom = shown ? Math.min(floor, low) : low - margin;
-        double top = Math.max(range[1], shown ? most : range[1]);
+        double bottom = shown ? floor : low - margin;
+        double highest = Math.max(range[1], shown ? most : range[1]);
+        double top = f.images().isEmpty()
+                ? Math.max(highest, f.seen().limb().map(l -> l.height() * 1.05).orElse(highest))
+                : highest;
+        for (int i = 0; i <= LINE && shown; i++) {
+            // where it runs deep in the ground it would only press the rest together
+            straight[i] = straight[i] < floor - 0.1 * (top - floor) ? Double.NaN : straight[i];
+        }
         List<SectionFigure.Line> lines = new ArrayList<>();
         if (shown) {
             lines.add(new SectionFigure.Line(SectionFigure.Role.GROUND, "", d, g));
@@ -400,11 +416,6 @@ final class SightFigures {
                             "horizon at " + far(l.contact()), l.contact(), ground.height(l.contact())));
                 }
             });
-            top = f.seen()
-                    .limb()
-                    .map(l -> l.height() * 1.05)
-                    .filter(h -> h > range[1])
-                    .orElse(top);
         }
         return new SectionFigure(
                 "sightline",
@@ -456,6 +467,10 @@ final class SightFigures {
         double clear = lowest.get().lowest();
         double foot = ground.height(at);
         String words = "lowest " + metres(clear);
+        if (!where(lowest.get(), f.distance()).startsWith("at " + far(at))) {
+            // at an end it is the height of instrument or target, which is told there
+            return;
+        }
         if (shown && clear > 0) {
             lines.add(new SectionFigure.Line(
                     SectionFigure.Role.CLEARANCE, words, new double[] {at, at}, new double[] {foot, foot + clear}));
@@ -488,16 +503,21 @@ final class SightFigures {
     // ---- transfer
 
     /** The foot and the top of what stands at the target, metres above the datum. */
-    private double[] object(Found f) {
+    private double[] object(Found f, SightCurve curve) {
         if (f.span().isPresent()) {
             return f.span().get().clone();
         }
         double foot = ground.height(f.distance());
         double tall = f.height() - foot;
-        if (thing(tall, f) == SightTarget.Kind.HILLSIDE) {
-            return new double[] {foot, foot + tall / 0.94};
-        }
-        return new double[] {foot, foot + Math.max(1.25 * tall, LEAST_ANGLE * f.distance())};
+        double top = thing(tall, f) == SightTarget.Kind.HILLSIDE
+                ? foot + tall
+                : foot + Math.max(1.25 * tall, LEAST_ANGLE * f.distance());
+        // nothing is drawn beyond the rays that were shot
+        double known = curve.pieces().stream()
+                .mapToDouble(SightCurve.Piece::high)
+                .max()
+                .orElse(top);
+        return new double[] {foot, known > foot + 0.5 * tall && tall > 0 ? Math.min(top, known) : top};
     }
 
     private SightTarget.Kind thing(double tall, Found f) {
@@ -505,7 +525,7 @@ final class SightFigures {
     }
 
     private PanelFigure transfer(Found f, SightCurve curve) {
-        double[] object = object(f);
+        double[] object = object(f, curve);
         double foot = object[0];
         double top = object[1];
         double low = foot;
@@ -643,7 +663,7 @@ final class SightFigures {
     // ---- view
 
     private PanelFigure view(Found f, SightCurve curve) {
-        double[] object = object(f);
+        double[] object = object(f, curve);
         double foot = object[0];
         double tall = object[1] - foot;
         SightTarget target = new SightTarget(thing(f.height() - foot, f), tall);
@@ -688,10 +708,6 @@ final class SightFigures {
         }
         seen.addAll(gaps(curve, -wide, wide, up, false));
         List<Mark> marks = new ArrayList<>();
-        double bottom = curve.pieces().get(0).elevation()[0];
-        if (!curve.gaps().isEmpty() && curve.gaps().get(0)[1] <= bottom) {
-            marks.add(new Mark(Style.NOTE, "ground", 0, 0.5 * (up.low() + Math.max(bottom, up.low()))));
-        }
         double side = 0.93 * half;
         int count = f.images().size();
         for (int i = 0; i < count; i++) {
@@ -707,13 +723,13 @@ final class SightFigures {
         List<Level> straight = List.of(new Level("target", aim.elevation()));
         return new PanelFigure(
                 "view",
-                "What does a telescope show of a " + target.kind().word() + " of " + metres(tall) + " at "
+                "What does a telescope show of a " + target.kind().word() + " of " + three(tall) + " m at "
                         + far(f.distance()) + "?",
                 viewAnswer(f, target, object, drawn),
                 up,
                 List.of(
                         new Panel("true, without air", across, truth, List.of(), straight, aimed),
-                        new Panel("seen through the air", across, seen, List.of(), List.of(), marks)),
+                        new Panel("seen (grey: ground)", across, seen, List.of(), List.of(), marks)),
                 true);
     }
 
@@ -738,7 +754,7 @@ final class SightFigures {
         double foot = object[0];
         double lowest = f.seen().limb().map(Sightings.Limb::height).orElse(foot);
         if (lowest >= object[1]) {
-            return name + " of " + metres(object[1] - foot) + " is wholly hidden: nothing below " + metres(lowest)
+            return name + " of " + three(object[1] - foot) + " m is wholly hidden: nothing below " + metres(lowest)
                     + " is seen";
         }
         String hidden = lowest > foot + 1e-3 * (object[1] - foot)

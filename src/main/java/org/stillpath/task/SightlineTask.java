@@ -20,6 +20,9 @@ import org.stillpath.path.Sighting;
 import org.stillpath.path.Sightings;
 import org.stillpath.ray.Status;
 import org.stillpath.ray.Traced;
+import org.stillpath.task.survey.Classical;
+import org.stillpath.task.survey.Reduced;
+import org.stillpath.task.survey.Reduction;
 import org.stillpath.unit.Display;
 
 /** The task {@code sightline}: what is seen through air over an earth, and how observations are reduced. */
@@ -129,6 +132,7 @@ final class SightlineTask implements Task {
             warnings.add("no earth is given; a sphere of 6371 km is taken");
         }
         SightFigures figures = new SightFigures(wanted, drawn, scene, setting, sight.eye());
+        warnings.addAll(Sense.of(scene, sight));
         if (sight.to() instanceof Sight.Stars stars) {
             return stars(scene, setting, sight, stars, figures, warnings);
         }
@@ -139,8 +143,14 @@ final class SightlineTask implements Task {
     }
 
     private static Result target(
-            Scene scene, Setting setting, Sight sight, Sight.Point point, SightFigures figures, List<String> warnings) {
+            Scene scene, Setting setting, Sight sight, Sight.Point asked, SightFigures figures, List<String> warnings) {
         double eye = sight.eye();
+        Observations observed = Observations.of(scene, setting, sight, asked);
+        warnings.addAll(observed.warnings());
+        if (observed.point().isEmpty()) {
+            return nowhere(scene, warnings);
+        }
+        Sight.Point point = observed.point().get();
         double distance = point.distance().orElseThrow();
         double height = point.height().orElseThrow();
         Chord chord = new Chord(setting.chart().radius(), eye, distance, height);
@@ -172,6 +182,35 @@ final class SightlineTask implements Task {
         });
         q.put("chord-length", new Quantity.Amount(chord.length(), "m", 4e-16 * chord.length()));
         q.put("chord-elevation", new Quantity.Amount(chord.elevation(), "rad", 4e-16));
+        double ground = setting.chart().ground().height(0);
+        if (!setting.earth().flat() && setting.chart().ground().isLevel() && eye > ground) {
+            q.put(
+                    "horizon-dip-classical",
+                    new Quantity.Amount(
+                            Classical.dip(
+                                    eye - ground,
+                                    Classical.USUAL_K,
+                                    setting.earth().radius()),
+                            "rad",
+                            0));
+            q.put(
+                    "horizon-distance-classical",
+                    new Quantity.Amount(
+                            Classical.horizon(
+                                    eye - ground,
+                                    Classical.USUAL_K,
+                                    setting.earth().radius()),
+                            "m",
+                            0));
+            q.put("refraction-coefficient-gradient", gradient(setting, eye, height, distance));
+        }
+        for (Reduced r : observed.reduced()) {
+            q.put(r.key(), new Quantity.Amount(r.exact(), r.unit(), r.error()));
+            if (!Double.isNaN(r.classical()) && r.classical() != r.exact()) {
+                q.put(r.key() + "-classical", new Quantity.Amount(r.classical(), r.unit(), 0));
+                q.put(r.key() + "-difference", new Quantity.Amount(r.difference(), r.unit(), r.error()));
+            }
+        }
         tell(warnings, seen, rows.size());
         boolean accurate = seen.images().stream().allMatch(s -> accurate(s, setting, chord));
         if (!accurate) {
@@ -187,11 +226,56 @@ final class SightlineTask implements Task {
                 List.of(),
                 rows,
                 List.of(),
-                List.of(table(rows), transfer(seen)),
+                tables(rows, seen, observed.reduced()),
                 figures.of(new SightFigures.Found(distance, height, point.span(), seen, rows, headline), warnings),
                 warnings,
                 CAUTIONS,
                 accurate);
+    }
+
+    /** k from the gradient of the index half-way between the two heights, at the eye and at the target. */
+    private static Quantity gradient(Setting setting, double eye, double height, double distance) {
+        double r = setting.earth().radius();
+        double k = setting.sightings().coefficient(0.5 * distance, 0.5 * (eye + height));
+        return new Quantity.Amount(Double.isNaN(k) ? 0 : k, "1", 1e-12 * r / Earth.MEAN);
+    }
+
+    private static Result nowhere(Scene scene, List<String> warnings) {
+        return new Result(
+                "sightline",
+                scene.title(),
+                "The observed ray does not reach the observed distance",
+                Map.of("visible", new Quantity.Word("no")),
+                List.of(),
+                List.of(),
+                List.of(),
+                List.of(),
+                List.of(),
+                List.of(),
+                warnings,
+                CAUTIONS,
+                true);
+    }
+
+    private static List<Table> tables(List<ImageRow> rows, Sightings.Outcome seen, List<Reduced> reduced) {
+        List<Table> tables = new ArrayList<>(List.of(table(rows), transfer(seen)));
+        if (!reduced.isEmpty()) {
+            List<List<String>> cells = new ArrayList<>();
+            for (Reduced r : reduced) {
+                cells.add(List.of(
+                        r.key(),
+                        Double.toString(r.exact()),
+                        Double.isNaN(r.classical()) ? "" : Double.toString(r.classical()),
+                        Double.isNaN(r.classical()) ? "" : Double.toString(r.difference()),
+                        r.unit(),
+                        r.formula()));
+            }
+            tables.add(new Table(
+                    "reductions",
+                    List.of("quantity", "through-the-air", "classical", "difference", "unit", "formula"),
+                    cells));
+        }
+        return tables;
     }
 
     private static boolean accurate(Sighting s, Setting setting, Chord chord) {
@@ -456,6 +540,7 @@ final class SightlineTask implements Task {
                     "staff-reading",
                     new Quantity.Amount(r.height() - setting.chart().ground().height(staff.distance()), "m", error));
             accurate = error <= scene.accuracy() * staff.distance() + 1e-14;
+            kukkamaki(setting, eye, staff.distance(), straight, displacement, error, q);
             headline =
                     "The level sight meets the staff " + Display.of(Math.abs(displacement), "m", Math.max(error, 1e-8))
                             + (displacement < 0 ? " too low" : " too high");
@@ -488,6 +573,30 @@ final class SightlineTask implements Task {
     private static double ground(Setting setting, Sight.Staff staff) {
         Ground ground = setting.chart().ground();
         return Math.min(ground.height(0), ground.height(staff.distance()));
+    }
+
+    /** The textbook's answer, from the air's index 0.5 m and 2.5 m above the ground at the instrument. */
+    private static void kukkamaki(
+            Setting setting,
+            double eye,
+            double distance,
+            double straight,
+            double displacement,
+            double error,
+            Map<String, Quantity> q) {
+        Ground ground = setting.chart().ground();
+        double c = Classical.USUAL_EXPONENT;
+        double low = Reduction.refractivity(setting.field(), 0, ground.height(0) + 0.5);
+        double high = Reduction.refractivity(setting.field(), 0, ground.height(0) + 2.5);
+        double above = eye - ground.height(0);
+        double staff = eye + straight - ground.height(distance);
+        if (!(above > 0.05 && staff > 0.05) || Double.isNaN(low + high)) {
+            return;
+        }
+        double index = (low - high) / (Math.pow(0.5, c) - Math.pow(2.5, c));
+        double classical = Classical.kukkamaki(index, c, distance, above, staff);
+        q.put("staff-displacement-classical", new Quantity.Amount(classical, "m", 0));
+        q.put("staff-displacement-difference", new Quantity.Amount(displacement - classical, "m", error));
     }
 
     private static Table table(List<ImageRow> rows) {
