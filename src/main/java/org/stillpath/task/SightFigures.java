@@ -45,8 +45,8 @@ final class SightFigures {
 
     private static final int COLUMNS = 120;
     private static final int ROWS = 90;
-    /** More images than this are numbered without the word. */
-    private static final int MOST_NAMED = 4;
+    /** Air whose bend varies by less than this factor bends evenly. */
+    private static final double EVEN = 1.3;
     /** More folds than this are marked without the word. */
     private static final int MOST_FOLDS = 6;
     /** Ground further below the paths than this many times their range of heights is left out. */
@@ -216,7 +216,10 @@ final class SightFigures {
     }
 
     private static String three(double value) {
-        return Display.in(value, "1", 5e-3 * Math.abs(value)).number();
+        return value == 0
+                ? "0"
+                : Display.in(value, "1", Math.pow(10, Math.floor(Math.log10(Math.abs(value))) - 2))
+                        .number();
     }
 
     // ---- profile
@@ -284,7 +287,7 @@ final class SightFigures {
         }
         panels.add(new Panel(
                 "", axis("refractivity", Measure.REFRACTIVITY, bent, 2e-8), ground(range), bent, levels, List.of()));
-        double pad = 0.06 * room;
+        double pad = 0.12 * room;
         return new PanelFigure(
                 "profile",
                 "How do the temperature and the refractivity n − 1 of the air change with height?",
@@ -342,10 +345,12 @@ final class SightFigures {
         double[] n = bent.x();
         double[] h = bent.y();
         double step = h[1] - h[0];
+        double least = Double.POSITIVE_INFINITY;
         int at = -1;
         double most = 0;
         for (int i = 1; i < n.length; i++) {
             double g = h[i - 1] < ground.height(0) + SKIN * step * HEIGHTS ? 0 : Math.abs(n[i] - n[i - 1]);
+            least = g > 0 ? Math.min(least, g) : least;
             if (g > most * (1 + 1e-9)) {
                 most = g;
                 at = i;
@@ -359,6 +364,11 @@ final class SightFigures {
         String k = Double.isInfinite(radius)
                 ? "n − 1 changes by " + three(1e6 * gradient) + " ppm/m"
                 : "k = " + three(-gradient * radius);
+        if (most < EVEN * least && !Double.isInfinite(radius)) {
+            double sign = -Math.signum(gradient) * radius / step;
+            return "The air bends light evenly: k from " + three(sign * least) + " to " + three(sign * most)
+                    + " at these heights";
+        }
         if (warm.isEmpty()) {
             return "The air bends light most at " + where + ": " + k + " there";
         }
@@ -419,7 +429,7 @@ final class SightFigures {
         }
         return new SectionFigure(
                 "sightline",
-                "Which ways does light take from the target to the instrument? Thin dashes: the straight line",
+                "Which ways does light take? Images are numbered from above; thin dashes: the straight line",
                 f.headline() + lowest(f),
                 "distance along the datum",
                 "height above the datum",
@@ -438,7 +448,7 @@ final class SightFigures {
             }
             lines.add(new SectionFigure.Line(
                     row.orientation().equals("erect") ? SectionFigure.Role.ERECT : SectionFigure.Role.INVERTED,
-                    count == 1 ? "" : (count <= MOST_NAMED ? "image " : "") + (i + 1),
+                    count == 1 ? "" : Integer.toString(i + 1),
                     Arrays.stream(p).mapToDouble(q -> q[0]).toArray(),
                     Arrays.stream(p).mapToDouble(q -> q[1]).toArray()));
         }
@@ -454,7 +464,7 @@ final class SightFigures {
     private static String lowest(Found f) {
         return f.images().stream()
                 .min(java.util.Comparator.comparingDouble(ImageRow::lowest))
-                .map(i -> "; the lowest ray clears the ground by " + metres(i.lowest()) + " " + where(i, f.distance()))
+                .map(i -> "; lowest clearance " + metres(i.lowest()) + " " + where(i, f.distance()))
                 .orElse("");
     }
 
@@ -548,17 +558,24 @@ final class SightFigures {
         }
         double wide = Math.max(e[1] - e[0], 1e-6);
         Axis across = new Axis("apparent elevation", Measure.ANGLE, e[0] - 0.12 * wide, e[1] + 0.05 * wide);
-        Axis up = new Axis("true height at the target's distance", Measure.LENGTH, low - 0.08 * room, top);
+        Axis up =
+                new Axis("true height at the target's distance", Measure.LENGTH, low - 0.08 * room, top + 0.06 * room);
         List<Shape> shapes = gaps(curve, up.low() - room, top + room, across, true);
         List<Curve> curves = new ArrayList<>();
         List<Mark> marks = new ArrayList<>();
         curves.add(straight(f.distance(), up));
+        double before = Double.NEGATIVE_INFINITY;
         long folds = curve.pieces().stream().filter(SightCurve.Piece::fold).count();
         for (SightCurve.Piece p : curve.pieces()) {
             boolean erect = p.erect();
             curves.add(new Curve(
                     erect ? Style.ERECT : Style.INVERTED, erect ? "erect" : "inverted", p.elevation(), p.height()));
-            if (p.fold()) {
+            double x = p.elevation()[0];
+            // beside a jump turns crowd; one mark tells them
+            boolean apart = Math.abs(x - before) > 0.015 * wide
+                    && curve.jumps().stream().noneMatch(j -> Math.abs(j[0] - x) < 0.015 * wide);
+            if (p.fold() && apart) {
+                before = x;
                 marks.add(new Mark(Style.FOLD, folds <= MOST_FOLDS ? "fold" : "", p.elevation()[0], p.height()[0]));
             }
         }
@@ -607,6 +624,7 @@ final class SightFigures {
         String where = String.join(
                 ", ", f.images().stream().limit(4).map(i -> minutes(i.launch())).toList());
         int most = curve.pieces().stream()
+                .filter(SightCurve.Piece::isResolved)
                 .mapToInt(p -> curve.count(0.5 * (p.low() + p.high())))
                 .max()
                 .orElse(1);
@@ -650,7 +668,7 @@ final class SightFigures {
     /** Strips from which no light comes, along the elevation: across the paper or up it. */
     private static List<Shape> gaps(SightCurve curve, double low, double high, Axis elevation, boolean upright) {
         List<Shape> shapes = new ArrayList<>();
-        double deep = elevation.low() - (elevation.high() - elevation.low());
+        double deep = elevation.low() - 20 * (elevation.high() - elevation.low());
         for (double[] g : curve.gaps()) {
             double from = Math.max(g[0], deep);
             if (g[1] > from) {
@@ -701,7 +719,7 @@ final class SightFigures {
             for (int i = 0; i < h.length; i++) {
                 h[i] = p.height()[i] - foot;
             }
-            drawn += p.high() > foot && p.low() < object[1] ? 1 : 0;
+            drawn += p.isResolved() && p.high() > foot && p.low() < object[1] ? 1 : 0;
             for (SightTarget.Part part : target.parts()) {
                 mapped(part, h, p.elevation(), scale, seen);
             }
@@ -719,8 +737,8 @@ final class SightFigures {
                     row.launch()));
         }
         Chord aim = new Chord(radius, eye, f.distance(), f.height());
-        List<Mark> aimed = List.of(new Mark(Style.ERECT, "", side, aim.elevation()));
-        List<Level> straight = List.of(new Level("target", aim.elevation()));
+        List<Mark> aimed = List.of(new Mark(Style.ERECT, "target", side, aim.elevation()));
+        List<Level> straight = List.of(new Level("", aim.elevation()));
         return new PanelFigure(
                 "view",
                 "What does a telescope show of a " + target.kind().word() + " of " + three(tall) + " m at "
