@@ -20,6 +20,9 @@ import org.stillpath.task.SectionFigure.Role;
 
 /** Draws a {@link PanelFigure}: its panels side by side at both widths, the shared axis labelled at the left one alone. */
 final class PanelDrawing {
+    /** Least height of a panel, points. */
+    private static final double LEAST = 70;
+
     private static final double GUTTER = 24;
     private static final double THINNING = 0.03;
     private static final Pen LEVEL = Pen.dashed(Ink.GREY, 0.5, 1.0, 2.0);
@@ -55,11 +58,19 @@ final class PanelDrawing {
         boolean titled = figure.panels().stream().anyMatch(p -> !p.title().isEmpty());
         double top = Math.ceil(y + (titled ? Canvas.SIZE * 1.25 : 0) + Axes.ABOVE);
         double height = width == Width.FULL ? 165 : 120;
-        Scale up = scale(figure.up(), figure.up().low(), figure.up().high(), (int) (height / 20));
-        double left = Math.ceil(Canvas.EDGE + Axes.leftOf(up));
         int count = figure.panels().size();
         double end = right - Canvas.EDGE - 8;
-        double each = Math.floor((end - left - (count - 1) * GUTTER) / count);
+        double left = Canvas.EDGE + 30;
+        double each = 0;
+        // the labels of the ticks decide how much room is left, and with one scale for both directions that decides the
+        // ticks
+        for (int i = 0; i < 3; i++) {
+            each = Math.floor((end - left - (count - 1) * GUTTER) / count);
+            height = figure.equal() ? Math.min(height, Math.ceil(Math.max(LEAST, each * form()))) : height;
+            View view = view(figure.panels().get(0), new Box(left, top, left + each, top + height));
+            Scale up = scale(figure.up(), view.v(top + height), view.v(top), (int) (height / 20));
+            left = Math.ceil(Canvas.EDGE + Axes.leftOf(up));
+        }
         for (int i = 0; i < count; i++) {
             double start = left + i * (each + GUTTER);
             panel(figure.panels().get(i), i, new Box(start, top, start + each, top + height), y);
@@ -79,7 +90,13 @@ final class PanelDrawing {
         return legend.draw(canvas, top);
     }
 
-    private void panel(Panel panel, int number, Box plot, double titleTop) {
+    /** Height over width of what a panel with one scale shows. */
+    private double form() {
+        Axis across = figure.panels().get(0).across();
+        return (figure.up().high() - figure.up().low()) / (across.high() - across.low());
+    }
+
+    private View view(Panel panel, Box plot) {
         double u0 = shown(panel.across(), panel.across().low());
         double u1 = shown(panel.across(), panel.across().high());
         double v0 = shown(figure.up(), figure.up().low());
@@ -90,13 +107,17 @@ final class PanelDrawing {
             across = Math.min(across, up);
             up = across;
         }
-        View view = new View(
+        return new View(
                 (u0 + u1) / 2,
                 (v0 + v1) / 2,
                 (plot.left() + plot.right()) / 2,
                 (plot.top() + plot.bottom()) / 2,
                 across,
                 up);
+    }
+
+    private void panel(Panel panel, int number, Box plot, double titleTop) {
+        View view = view(panel, plot);
         int most = (int) Math.max(2, plot.width() / 24);
         Scale ruler = scale(panel.across(), view.u(plot.left()), view.u(plot.right()), most);
         while (most > 1 && !Axes.isClear(ruler, view.across())) {
@@ -131,8 +152,9 @@ final class PanelDrawing {
             }
         }
         chart.draw(canvas).forEach(canvas::add);
-        marks(panel, view, plot, labels);
+        symbols(panel, view, plot, labels);
         levels(panel, view, plot, labels);
+        names(panel, view, plot, labels);
         String below = name(panel.across());
         double baseline = plot.bottom() + Axes.TICK + Axes.TICK_GAP + (Typeface.ASCENDER + 1.25) * Canvas.SIZE;
         canvas.words(below, Math.max(plot.left() - 20, plot.right() - Canvas.width(below)), baseline, Ink.INK);
@@ -184,7 +206,7 @@ final class PanelDrawing {
         return p;
     }
 
-    private void marks(Panel panel, View view, Box plot, Labels labels) {
+    private void symbols(Panel panel, View view, Box plot, Labels labels) {
         for (Mark m : panel.marks()) {
             double x = view.x(shown(panel.across(), m.x()));
             double y = view.y(shown(figure.up(), m.y()));
@@ -193,6 +215,9 @@ final class PanelDrawing {
                 labels.block(new Box(x, y, x, y).grown(3.5));
             }
         }
+    }
+
+    private void names(Panel panel, View view, Box plot, Labels labels) {
         for (Mark m : panel.marks()) {
             double x = view.x(shown(panel.across(), m.x()));
             double y = view.y(shown(figure.up(), m.y()));
@@ -222,12 +247,12 @@ final class PanelDrawing {
             double w = Canvas.width(Canvas.clean(l.label()));
             double h = Canvas.height();
             List<Labels.Place> places = new ArrayList<>();
-            for (int i = 0; i <= 8; i++) {
-                double x = plot.right() - w - i * (plot.width() - w - 4) / 8;
+            for (int i = 0; i <= 24; i++) {
+                double x = plot.right() - w - i * (plot.width() - w - 4) / 24;
                 for (int side = 0; side < 2; side++) {
                     double top = side == 0 ? y - h - 0.5 : y + 0.5;
                     places.add(new Labels.Place(
-                            new Box(x, top, x + w, top + h), 1.0 * i + 2 * side, x + w / 2, side == 0 ? y - 1 : y + 1));
+                            new Box(x, top, x + w, top + h), 0.4 * i + 2 * side, x + w / 2, side == 0 ? y - 1 : y + 1));
                 }
             }
             label(l.label(), places, labels, l);

@@ -16,6 +16,7 @@ import org.stillpath.path.Sightings;
  * @param gaps elevations from which no light comes: where each starts and ends; the first may start at minus infinity
  */
 record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps) {
+    private static final double RESOLVED = 2.4e-6;
     private static final int STEPS = 12;
     /** Nearer to each other rays are the same, or on both sides of a jump, rad. */
     private static final double SAME = 1e-12;
@@ -38,6 +39,11 @@ record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps)
     record Piece(double[] elevation, double[] height, boolean fold) {
         int last() {
             return elevation.length - 1;
+        }
+
+        /** Whether a telescope could show it: half a second of arc. */
+        boolean isResolved() {
+            return elevation[last()] - elevation[0] > RESOLVED;
         }
 
         boolean erect() {
@@ -169,9 +175,10 @@ record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps)
         fine.add(new double[] {b[0], b[1]});
     }
 
-    /** In how many elevations a height is seen. */
+    /** In how many elevations a height is seen, as far as a telescope could tell. */
     int count(double height) {
         return (int) pieces.stream()
+                .filter(Piece::isResolved)
                 .filter(p -> p.low() <= height && height < p.high())
                 .count();
     }

@@ -40,10 +40,13 @@ final class SightFigures {
 
     private static final int LINE = 160;
     private static final int HEIGHTS = 400;
+    /** Part of the range of heights above the ground that does not decide how wide the profile is drawn. */
+    private static final double SKIN = 0.01;
+
     private static final int COLUMNS = 120;
     private static final int ROWS = 90;
-    /** More images than this are numbered without the word. */
-    private static final int MOST_NAMED = 4;
+    /** Air whose bend varies by less than this factor bends evenly. */
+    private static final double EVEN = 1.3;
     /** More folds than this are marked without the word. */
     private static final int MOST_FOLDS = 6;
     /** Ground further below the paths than this many times their range of heights is left out. */
@@ -218,7 +221,10 @@ final class SightFigures {
     }
 
     private static String three(double value) {
-        return Display.in(value, "1", 5e-3 * Math.abs(value)).number();
+        return value == 0
+                ? "0"
+                : Display.in(value, "1", Math.pow(10, Math.floor(Math.log10(Math.abs(value))) - 2))
+                        .number();
     }
 
     // ---- profile
@@ -247,14 +253,13 @@ final class SightFigures {
         list.add(new Level("target " + metres(f.height()), f.height()));
         list.add(groundLevel(0));
         if (!ground.isLevel()) {
-            list.set(2, new Level("ground at the instrument", ground.height(0)));
             list.add(new Level("ground at the target", ground.height(f.distance())));
         }
         return list;
     }
 
     private Level groundLevel(double distance) {
-        return new Level("ground", ground.height(distance));
+        return new Level(ground.isLevel() ? "ground" : "ground at the instrument", ground.height(distance));
     }
 
     private PanelFigure profile(double[] range, double distance, List<Level> levels) {
@@ -287,7 +292,7 @@ final class SightFigures {
         }
         panels.add(new Panel(
                 "", axis("refractivity", Measure.REFRACTIVITY, bent, 2e-8), ground(range), bent, levels, List.of()));
-        double pad = 0.06 * room;
+        double pad = 0.12 * room;
         return new PanelFigure(
                 "profile",
                 "How do the temperature and the refractivity n − 1 of the air change with height?",
@@ -319,10 +324,17 @@ final class SightFigures {
         double low = Double.POSITIVE_INFINITY;
         double high = Double.NEGATIVE_INFINITY;
         for (Curve c : curves) {
-            for (double v : c.x()) {
-                if (Double.isFinite(v)) {
-                    low = Math.min(low, v);
-                    high = Math.max(high, v);
+            double[] v = c.x();
+            int first = 0;
+            while (first < v.length - 1 && !Double.isFinite(v[first])) {
+                first++;
+            }
+            // laws of the air beside the ground may have a pole in it
+            first = Math.min(v.length - 1, first + (int) (SKIN * HEIGHTS));
+            for (int i = first; i < v.length; i++) {
+                if (Double.isFinite(v[i])) {
+                    low = Math.min(low, v[i]);
+                    high = Math.max(high, v[i]);
                 }
             }
         }
@@ -337,24 +349,31 @@ final class SightFigures {
     private String steepest(Curve bent, List<Curve> warm) {
         double[] n = bent.x();
         double[] h = bent.y();
+        double step = h[1] - h[0];
+        double least = Double.POSITIVE_INFINITY;
         int at = -1;
         double most = 0;
         for (int i = 1; i < n.length; i++) {
-            double g = Math.abs(n[i] - n[i - 1]);
+            double g = h[i - 1] < ground.height(0) + SKIN * step * HEIGHTS ? 0 : Math.abs(n[i] - n[i - 1]);
+            least = g > 0 ? Math.min(least, g) : least;
             if (g > most * (1 + 1e-9)) {
                 most = g;
                 at = i;
             }
         }
-        double step = h[1] - h[0];
         if (at < 0 || most / step < 1e-13) {
             return "The index is the same at all heights: light runs straight";
         }
         double gradient = (n[at] - n[at - 1]) / step;
-        String where = metres(Math.round(0.5 * (h[at] + h[at - 1]) / step) * step);
+        String where = three(0.5 * (h[at] + h[at - 1])) + " m";
         String k = Double.isInfinite(radius)
                 ? "n − 1 changes by " + three(1e6 * gradient) + " ppm/m"
                 : "k = " + three(-gradient * radius);
+        if (most < EVEN * least && !Double.isInfinite(radius)) {
+            double sign = -Math.signum(gradient) * radius / step;
+            return "The air bends light evenly: k from " + three(sign * least) + " to " + three(sign * most)
+                    + " at these heights";
+        }
         if (warm.isEmpty()) {
             return "The air bends light most at " + where + ": " + k + " there";
         }
@@ -385,8 +404,15 @@ final class SightFigures {
         double low = Math.min(range[0], Arrays.stream(straight).min().orElse(range[0]));
         double most = Arrays.stream(g).max().orElse(0);
         boolean shown = most >= range[0] - margin;
-        double bottom = shown ? Math.min(floor, low) : low - margin;
-        double top = Math.max(range[1], shown ? most : range[1]);
+        double bottom = shown ? floor : low - margin;
+        double highest = Math.max(range[1], shown ? most : range[1]);
+        double top = f.images().isEmpty()
+                ? Math.max(highest, f.seen().limb().map(l -> l.height() * 1.05).orElse(highest))
+                : highest;
+        for (int i = 0; i <= LINE && shown; i++) {
+            // where it runs deep in the ground it would only press the rest together
+            straight[i] = straight[i] < floor - 0.1 * (top - floor) ? Double.NaN : straight[i];
+        }
         List<SectionFigure.Line> lines = new ArrayList<>();
         if (shown) {
             lines.add(new SectionFigure.Line(SectionFigure.Role.GROUND, "", d, g));
@@ -405,15 +431,10 @@ final class SightFigures {
                             "horizon at " + far(l.contact()), l.contact(), ground.height(l.contact())));
                 }
             });
-            top = f.seen()
-                    .limb()
-                    .map(l -> l.height() * 1.05)
-                    .filter(h -> h > range[1])
-                    .orElse(top);
         }
         return new SectionFigure(
                 "sightline",
-                "Which ways does light take from the target to the instrument? Thin dashes: the straight line",
+                "Which ways does light take? Images are numbered from above; thin dashes: the straight line",
                 f.headline() + lowest(f),
                 "distance along the datum",
                 "height above the datum",
@@ -432,7 +453,7 @@ final class SightFigures {
             }
             lines.add(new SectionFigure.Line(
                     row.orientation().equals("erect") ? SectionFigure.Role.ERECT : SectionFigure.Role.INVERTED,
-                    count == 1 ? "" : (count <= MOST_NAMED ? "image " : "") + (i + 1),
+                    count == 1 ? "" : Integer.toString(i),
                     Arrays.stream(p).mapToDouble(q -> q[0]).toArray(),
                     Arrays.stream(p).mapToDouble(q -> q[1]).toArray()));
         }
@@ -448,7 +469,7 @@ final class SightFigures {
     private static String lowest(Found f) {
         return f.images().stream()
                 .min(java.util.Comparator.comparingDouble(ImageRow::lowest))
-                .map(i -> "; the lowest ray clears the ground by " + metres(i.lowest()) + " " + where(i, f.distance()))
+                .map(i -> "; lowest clearance " + metres(i.lowest()) + " " + where(i, f.distance()))
                 .orElse("");
     }
 
@@ -461,6 +482,10 @@ final class SightFigures {
         double clear = lowest.get().lowest();
         double foot = ground.height(at);
         String words = "lowest " + metres(clear);
+        if (!where(lowest.get(), f.distance()).startsWith("at " + far(at))) {
+            // at an end it is the height of instrument or target, which is told there
+            return;
+        }
         if (shown && clear > 0) {
             lines.add(new SectionFigure.Line(
                     SectionFigure.Role.CLEARANCE, words, new double[] {at, at}, new double[] {foot, foot + clear}));
@@ -493,16 +518,21 @@ final class SightFigures {
     // ---- transfer
 
     /** The foot and the top of what stands at the target, metres above the datum. */
-    private double[] object(Found f) {
+    private double[] object(Found f, SightCurve curve) {
         if (f.span().isPresent()) {
             return f.span().get().clone();
         }
         double foot = ground.height(f.distance());
         double tall = f.height() - foot;
-        if (thing(tall, f) == SightTarget.Kind.HILLSIDE) {
-            return new double[] {foot, foot + tall / 0.94};
-        }
-        return new double[] {foot, foot + Math.max(1.25 * tall, LEAST_ANGLE * f.distance())};
+        double top = thing(tall, f) == SightTarget.Kind.HILLSIDE
+                ? foot + tall
+                : foot + Math.max(1.25 * tall, LEAST_ANGLE * f.distance());
+        // nothing is drawn beyond the rays that were shot
+        double known = curve.pieces().stream()
+                .mapToDouble(SightCurve.Piece::high)
+                .max()
+                .orElse(top);
+        return new double[] {foot, known > foot + 0.5 * tall && tall > 0 ? Math.min(top, known) : top};
     }
 
     private SightTarget.Kind thing(double tall, Found f) {
@@ -510,7 +540,7 @@ final class SightFigures {
     }
 
     private PanelFigure transfer(Found f, SightCurve curve) {
-        double[] object = object(f);
+        double[] object = object(f, curve);
         double foot = object[0];
         double top = object[1];
         double low = foot;
@@ -533,17 +563,24 @@ final class SightFigures {
         }
         double wide = Math.max(e[1] - e[0], 1e-6);
         Axis across = new Axis("apparent elevation", Measure.ANGLE, e[0] - 0.12 * wide, e[1] + 0.05 * wide);
-        Axis up = new Axis("true height at the target's distance", Measure.LENGTH, low - 0.08 * room, top);
+        Axis up =
+                new Axis("true height at the target's distance", Measure.LENGTH, low - 0.08 * room, top + 0.06 * room);
         List<Shape> shapes = gaps(curve, up.low() - room, top + room, across, true);
         List<Curve> curves = new ArrayList<>();
         List<Mark> marks = new ArrayList<>();
         curves.add(straight(f.distance(), up));
+        double before = Double.NEGATIVE_INFINITY;
         long folds = curve.pieces().stream().filter(SightCurve.Piece::fold).count();
         for (SightCurve.Piece p : curve.pieces()) {
             boolean erect = p.erect();
             curves.add(new Curve(
                     erect ? Style.ERECT : Style.INVERTED, erect ? "erect" : "inverted", p.elevation(), p.height()));
-            if (p.fold()) {
+            double x = p.elevation()[0];
+            // beside a jump turns crowd; one mark tells them
+            boolean apart = Math.abs(x - before) > 0.015 * wide
+                    && curve.jumps().stream().noneMatch(j -> Math.abs(j[0] - x) < 0.015 * wide);
+            if (p.fold() && apart) {
+                before = x;
                 marks.add(new Mark(Style.FOLD, folds <= MOST_FOLDS ? "fold" : "", p.elevation()[0], p.height()[0]));
             }
         }
@@ -556,7 +593,7 @@ final class SightFigures {
             ImageRow row = f.images().get(i);
             marks.add(new Mark(
                     row.orientation().equals("erect") ? Style.ERECT : Style.INVERTED,
-                    count == 1 ? "" : Integer.toString(i + 1),
+                    count == 1 ? "" : Integer.toString(i),
                     row.launch(),
                     f.height()));
         }
@@ -592,6 +629,7 @@ final class SightFigures {
         String where = String.join(
                 ", ", f.images().stream().limit(4).map(i -> minutes(i.launch())).toList());
         int most = curve.pieces().stream()
+                .filter(SightCurve.Piece::isResolved)
                 .mapToInt(p -> curve.count(0.5 * (p.low() + p.high())))
                 .max()
                 .orElse(1);
@@ -635,7 +673,7 @@ final class SightFigures {
     /** Strips from which no light comes, along the elevation: across the paper or up it. */
     private static List<Shape> gaps(SightCurve curve, double low, double high, Axis elevation, boolean upright) {
         List<Shape> shapes = new ArrayList<>();
-        double deep = elevation.low() - (elevation.high() - elevation.low());
+        double deep = elevation.low() - 20 * (elevation.high() - elevation.low());
         for (double[] g : curve.gaps()) {
             double from = Math.max(g[0], deep);
             if (g[1] > from) {
@@ -648,7 +686,7 @@ final class SightFigures {
     // ---- view
 
     private PanelFigure view(Found f, SightCurve curve) {
-        double[] object = object(f);
+        double[] object = object(f, curve);
         double foot = object[0];
         double tall = object[1] - foot;
         SightTarget target = new SightTarget(thing(f.height() - foot, f), tall);
@@ -686,39 +724,35 @@ final class SightFigures {
             for (int i = 0; i < h.length; i++) {
                 h[i] = p.height()[i] - foot;
             }
-            drawn += p.high() > foot && p.low() < object[1] ? 1 : 0;
+            drawn += p.isResolved() && p.high() > foot && p.low() < object[1] ? 1 : 0;
             for (SightTarget.Part part : target.parts()) {
                 mapped(part, h, p.elevation(), scale, seen);
             }
         }
         seen.addAll(gaps(curve, -wide, wide, up, false));
         List<Mark> marks = new ArrayList<>();
-        double bottom = curve.pieces().get(0).elevation()[0];
-        if (!curve.gaps().isEmpty() && curve.gaps().get(0)[1] <= bottom) {
-            marks.add(new Mark(Style.NOTE, "ground", 0, 0.5 * (up.low() + Math.max(bottom, up.low()))));
-        }
         double side = 0.93 * half;
         int count = f.images().size();
         for (int i = 0; i < count; i++) {
             ImageRow row = f.images().get(i);
             marks.add(new Mark(
                     row.orientation().equals("erect") ? Style.ERECT : Style.INVERTED,
-                    count == 1 ? "" : Integer.toString(i + 1),
+                    count == 1 ? "" : Integer.toString(i),
                     side,
                     row.launch()));
         }
         Chord aim = new Chord(radius, eye, f.distance(), f.height());
-        List<Mark> aimed = List.of(new Mark(Style.ERECT, "", side, aim.elevation()));
-        List<Level> straight = List.of(new Level("target", aim.elevation()));
+        List<Mark> aimed = List.of(new Mark(Style.ERECT, "target", side, aim.elevation()));
+        List<Level> straight = List.of(new Level("", aim.elevation()));
         return new PanelFigure(
                 "view",
-                "What does a telescope show of a " + target.kind().word() + " of " + metres(tall) + " at "
+                "What does a telescope show of a " + target.kind().word() + " of " + three(tall) + " m at "
                         + far(f.distance()) + "?",
                 viewAnswer(f, target, object, drawn),
                 up,
                 List.of(
                         new Panel("true, without air", across, truth, List.of(), straight, aimed),
-                        new Panel("seen through the air", across, seen, List.of(), List.of(), marks)),
+                        new Panel("seen (grey: ground)", across, seen, List.of(), List.of(), marks)),
                 true);
     }
 
@@ -743,7 +777,7 @@ final class SightFigures {
         double foot = object[0];
         double lowest = f.seen().limb().map(Sightings.Limb::height).orElse(foot);
         if (lowest >= object[1]) {
-            return name + " of " + metres(object[1] - foot) + " is wholly hidden: nothing below " + metres(lowest)
+            return name + " of " + three(object[1] - foot) + " m is wholly hidden: nothing below " + metres(lowest)
                     + " is seen";
         }
         String hidden = lowest > foot + 1e-3 * (object[1] - foot)

@@ -131,11 +131,10 @@ final class SightTarget {
                 0.6,
                 -0.85,
                 0.28);
-        add(Tone.WHITE, 0.06, 0.93, -0.04, 0.94, -0.2, 0.79, -0.08, 0.82, 0.02, 0.76, 0.12, 0.84, 0.22, 0.82);
+        add(Tone.GROUND, 0.06, 0.93, -0.04, 0.94, -0.2, 0.79, -0.08, 0.82, 0.02, 0.76, 0.12, 0.84, 0.22, 0.82);
         add(Tone.DARK, -1.3, 0, 1.3, 0, 1.12, 0.155, 0.7, 0.13, 0.3, 0.2, -0.2, 0.14, -0.6, 0.19, -1.03, 0.17);
         rectangle(Tone.DARK, -0.01, 0.03, 0.92, 1);
         rectangle(Tone.SIGNAL, -0.025, 0.045, 0.965, 1);
-        rectangle(Tone.SECOND, -1.3, 1.3, 0, 0.025);
     }
 
     /** The part of a polygon between two heights above its foot, with its points at the given heights between them. */

@@ -102,8 +102,8 @@ class PicturesTest {
                         picture.labels().stream().map(Picture.Label::text).toList());
         int panels = figure instanceof CurveFigure c ? c.panels().size() : 1;
         assertThat(text(root, "text").stream()
-                        .filter(t -> t.matches(".* / (km|m|mm|µm|nm|deg|mrad|µrad)( \\(log.*\\))?")))
-                .hasSize(2 * panels);
+                        .filter(t -> t.matches(".* / (km|m|mm|µm|nm|deg|mrad|µrad|arcmin|°C|ppm)( \\(log.*\\))?")))
+                .hasSize(figure instanceof PanelFigure p ? p.panels().size() + 1 : 2 * panels);
         assertThat(svg.chars().filter(c -> c != '\n' && Character.isISOControl(c)))
                 .isEmpty();
         assertThat(svg).doesNotContain(" id=");
@@ -227,6 +227,36 @@ class PicturesTest {
         assertThat(picture.items().stream()
                         .filter(i -> i instanceof Item.Stroke s && s.pen().ink() == Ink.GREEN))
                 .hasSize(3);
+    }
+
+    /** Erect and inverted differ by line style and by colour; the lowest clearance is told. */
+    @Test
+    void imagesOfASightAreToldApart() {
+        assertThat(words(Scenes.sight())).contains("1 erect image", "1 inverted image", "lowest 0.25 m", "1", "2");
+        assertThat(Legend.pen(Role.ERECT).dashes()).isEmpty();
+        assertThat(Legend.pen(Role.INVERTED).dashes()).isNotEmpty();
+        assertThat(Legend.pen(Role.ERECT).ink())
+                .isNotEqualTo(Legend.pen(Role.INVERTED).ink());
+    }
+
+    /** A thing keeps its form: the square is as wide as it is tall, and the taller one twice as tall. */
+    @Test
+    void aViewHasOneScaleForBothDirectionsAndBothPanels() {
+        for (Width width : Width.values()) {
+            List<Item.Area> dark = Pictures.of(Scenes.view(), width).items().stream()
+                    .filter(i -> i instanceof Item.Area a && a.ink() == Ink.INK)
+                    .map(i -> (Item.Area) i)
+                    .toList();
+            assertThat(dark).hasSize(2);
+            double wide = span(dark.get(0).x());
+            assertThat(span(dark.get(0).y())).isCloseTo(wide, org.assertj.core.data.Offset.offset(1e-6));
+            assertThat(span(dark.get(1).y())).isCloseTo(2 * wide, org.assertj.core.data.Offset.offset(1e-6));
+        }
+    }
+
+    private static double span(double[] values) {
+        return Arrays.stream(values).max().orElseThrow()
+                - Arrays.stream(values).min().orElseThrow();
     }
 
     private static List<String> words(SectionFigure figure) {

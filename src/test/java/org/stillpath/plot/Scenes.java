@@ -7,6 +7,7 @@ import java.util.Optional;
 import java.util.function.DoubleBinaryOperator;
 import org.stillpath.task.CurveFigure;
 import org.stillpath.task.Figure;
+import org.stillpath.task.PanelFigure;
 import org.stillpath.task.SectionFigure;
 import org.stillpath.task.SectionFigure.Line;
 import org.stillpath.task.SectionFigure.Mark;
@@ -19,7 +20,16 @@ final class Scenes {
 
     static List<SectionFigure> all() {
         return List.of(
-                rod(), realImage(), virtualImage(), mirage(), lost(), mirrorAndLens(), tall(), paths(), awkward());
+                rod(),
+                realImage(),
+                virtualImage(),
+                mirage(),
+                lost(),
+                mirrorAndLens(),
+                tall(),
+                paths(),
+                sight(),
+                awkward());
     }
 
     static List<CurveFigure> curves() {
@@ -29,7 +39,138 @@ final class Scenes {
     static List<Figure> figures() {
         List<Figure> list = new ArrayList<>(all());
         list.addAll(curves());
+        list.addAll(panels());
         return list;
+    }
+
+    static List<PanelFigure> panels() {
+        return List.of(profile(), transfer(), view());
+    }
+
+    /** An inversion about 20 m over ground at 0 m. */
+    static PanelFigure profile() {
+        double[] h = new double[201];
+        double[] t = new double[201];
+        double[] n = new double[201];
+        for (int i = 0; i <= 200; i++) {
+            h[i] = 0.2 * i;
+            t[i] = 283.15 + 2 * Math.tanh((h[i] - 20) / 3);
+            n[i] = 0.08 / t[i];
+        }
+        PanelFigure.Shape ground = new PanelFigure.Shape(
+                PanelFigure.Tone.GROUND, new double[] {-1e3, 1e3, 1e3, -1e3}, new double[] {-50, -50, 0, 0});
+        List<PanelFigure.Level> levels = List.of(
+                new PanelFigure.Level("instrument 12 m", 12),
+                new PanelFigure.Level("target 10 m", 10),
+                new PanelFigure.Level("ground", 0));
+        return new PanelFigure(
+                "profile",
+                "How do the temperature and the refractivity n − 1 of the air change with height?",
+                "The air bends light most at 20.0 m: k = 4.35 and 0.660 K/m there",
+                new PanelFigure.Axis("height above the datum", PanelFigure.Measure.LENGTH, -5, 40),
+                List.of(
+                        new PanelFigure.Panel(
+                                "",
+                                new PanelFigure.Axis("temperature", PanelFigure.Measure.TEMPERATURE, 280, 286),
+                                List.of(ground),
+                                List.of(new PanelFigure.Curve(PanelFigure.Style.PLAIN, "", t, h)),
+                                List.of(),
+                                List.of()),
+                        new PanelFigure.Panel(
+                                "",
+                                new PanelFigure.Axis(
+                                        "refractivity", PanelFigure.Measure.REFRACTIVITY, 2.79e-4, 2.86e-4),
+                                List.of(ground),
+                                List.of(new PanelFigure.Curve(PanelFigure.Style.PLAIN, "", n, h)),
+                                levels,
+                                List.of())),
+                false);
+    }
+
+    /** A cubic: erect, inverted, erect. */
+    static PanelFigure transfer() {
+        double[] e = new double[121];
+        double[] h = new double[121];
+        for (int i = 0; i <= 120; i++) {
+            double s = (i - 60) / 40.0;
+            e[i] = 1e-3 * s;
+            h[i] = 10 + 4 * (s * s * s - s);
+        }
+        int a = 60 - 23;
+        int b = 60 + 23;
+        return new PanelFigure(
+                "transfer",
+                "Which heights at the target's distance are seen at which elevations?",
+                "The target's height 10 m is seen at 3.44′, 0.00′, −3.44′",
+                new PanelFigure.Axis("true height at the target's distance", PanelFigure.Measure.LENGTH, 0, 20),
+                List.of(new PanelFigure.Panel(
+                        "",
+                        new PanelFigure.Axis("apparent elevation", PanelFigure.Measure.ANGLE, -1.8e-3, 1.6e-3),
+                        List.of(),
+                        List.of(
+                                new PanelFigure.Curve(PanelFigure.Style.ERECT, "erect", part(e, 0, a), part(h, 0, a)),
+                                new PanelFigure.Curve(
+                                        PanelFigure.Style.INVERTED, "inverted", part(e, a, b), part(h, a, b)),
+                                new PanelFigure.Curve(
+                                        PanelFigure.Style.ERECT, "erect", part(e, b, 120), part(h, b, 120))),
+                        List.of(new PanelFigure.Level("target 10 m", 10)),
+                        List.of(
+                                new PanelFigure.Mark(PanelFigure.Style.FOLD, "fold", e[a], h[a]),
+                                new PanelFigure.Mark(PanelFigure.Style.FOLD, "fold", e[b], h[b]),
+                                new PanelFigure.Mark(PanelFigure.Style.ERECT, "1", 1e-3, 10),
+                                new PanelFigure.Mark(PanelFigure.Style.INVERTED, "2", 0, 10),
+                                new PanelFigure.Mark(PanelFigure.Style.ERECT, "3", -1e-3, 10)))),
+                false);
+    }
+
+    private static double[] part(double[] all, int from, int to) {
+        return Arrays.copyOfRange(all, from, to + 1);
+    }
+
+    /** A square on the ground, and twice as tall beside it. */
+    static PanelFigure view() {
+        PanelFigure.Axis across = new PanelFigure.Axis("across", PanelFigure.Measure.ANGLE, -2e-3, 2e-3);
+        List<PanelFigure.Panel> panels = new ArrayList<>();
+        for (int k = 1; k <= 2; k++) {
+            panels.add(new PanelFigure.Panel(
+                    k == 1 ? "true, without air" : "seen (grey: ground)",
+                    across,
+                    List.of(
+                            new PanelFigure.Shape(
+                                    PanelFigure.Tone.DARK,
+                                    new double[] {-5e-4, 5e-4, 5e-4, -5e-4},
+                                    new double[] {0, 0, k * 1e-3, k * 1e-3}),
+                            new PanelFigure.Shape(
+                                    PanelFigure.Tone.GROUND, new double[] {-1, 1, 1, -1}, new double[] {-1, -1, 0, 0})),
+                    List.of(),
+                    List.of(),
+                    List.of(new PanelFigure.Mark(PanelFigure.Style.ERECT, k == 1 ? "target" : "1", 1.5e-3, k * 8e-4))));
+        }
+        return new PanelFigure(
+                "view",
+                "What does a telescope show of a staff of 1.00 m at 1000 m?",
+                "The staff is seen once, 2.75′ higher than it is and 2.00 times as tall",
+                new PanelFigure.Axis("elevation", PanelFigure.Measure.ANGLE, -5e-4, 2.3e-3),
+                panels,
+                true);
+    }
+
+    /** A sight over the ground: one ray of each kind and the lowest clearance. */
+    static SectionFigure sight() {
+        return new SectionFigure(
+                "sightline",
+                "Which ways does light take? Images are numbered from above; thin dashes: the straight line",
+                "2 images of the target: erect, inverted from above; lowest clearance 0.25 m at 450 m",
+                "distance along the datum",
+                "height above the datum",
+                Optional.empty(),
+                List.of(
+                        line(Role.GROUND, "", 0, 0, 600, 0),
+                        line(Role.EXTENSION, "", 0, 1.5, 600, 0.5),
+                        line(Role.ERECT, "1", 0, 1.5, 300, 0.9, 600, 0.5),
+                        line(Role.INVERTED, "2", 0, 1.5, 300, 0.5, 450, 0.25, 600, 0.5),
+                        line(Role.CLEARANCE, "lowest 0.25 m", 450, 0, 450, 0.25)),
+                List.of(new Mark("instrument 1.5 m", 0, 1.5), new Mark("target 0.5 m", 600, 0.5)));
     }
 
     /** Paths of all three kinds with wavefronts: circles about the start. */
