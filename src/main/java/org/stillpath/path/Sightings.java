@@ -715,7 +715,11 @@ public final class Sightings {
                     }
                     lifts[i] = air.lift(heights[i], air.refractivity(heights[i]), h1, nu1);
                 }
-                usual = Math.max(usual, Math.max(air.steepness(h1), air.steepness(0.5 * (h1 + h2))));
+                for (double h : new double[] {h1, 0.5 * (h1 + h2)}) {
+                    // over rising ground the eye's height may lie under it farther on, where there is no air
+                    double g = air.steepness(h);
+                    usual = g > usual ? g : usual;
+                }
                 turns.addAll(turning(air, heights, lifts, h1, p == 0));
             }
             double bend = Math.min(MOST_BEND, 1.05 * distance * most + 1e-9);
