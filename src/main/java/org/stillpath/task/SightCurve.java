@@ -14,8 +14,9 @@ import org.stillpath.path.Sightings;
  * @param pieces from the lowest elevation to the highest: parts without a turn, a jump or a gap
  * @param jumps elevations at which the height jumps, with the heights below and above
  * @param gaps elevations from which no light comes: where each starts and ends; the first may start at minus infinity
+ * @param shot highest elevation of the rays that were shot; beyond it the curve is continued straight
  */
-record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps) {
+record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps, double shot) {
     private static final double RESOLVED = 2.4e-6;
     private static final int STEPS = 12;
     /** Nearer to each other rays are the same, or on both sides of a jump, rad. */
@@ -39,6 +40,15 @@ record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps)
     record Piece(double[] elevation, double[] height, boolean fold) {
         int last() {
             return elevation.length - 1;
+        }
+
+        /** The last place whose elevation is not above another. */
+        int upTo(double limit) {
+            int i = last();
+            while (i > 0 && elevation[i] > limit) {
+                i--;
+            }
+            return i;
         }
 
         /** Whether a telescope could show it: half a second of arc. */
@@ -73,14 +83,18 @@ record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps)
         }
     }
 
-    static SightCurve of(Sightings.Outcome seen) {
+    /**
+     * The curve of what the search found, continued to a height where that lies above all of it: the search goes no higher than it
+     * must to find the images, and what is above is open.
+     */
+    static SightCurve of(Sightings.Outcome seen, double top) {
         double[][] t = seen.transfer();
         double[] blocked = seen.blocked();
         List<Piece> pieces = new ArrayList<>();
         List<double[]> jumps = new ArrayList<>();
         List<double[]> gaps = new ArrayList<>();
         if (t.length == 0) {
-            return new SightCurve(pieces, jumps, gaps);
+            return new SightCurve(pieces, jumps, gaps, Double.NaN);
         }
         if (blocked.length > 0 && blocked[0] < t[0][0]) {
             gaps.add(new double[] {Double.NEGATIVE_INFINITY, t[0][0]});
@@ -105,8 +119,13 @@ record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps)
             split(run, pieces);
             run = new ArrayList<>(List.of(b));
         }
+        double[] last = t[t.length - 1];
+        if (last[1] < top && last[2] > 0) {
+            double more = 1.25 * (top - last[1]);
+            run.add(new double[] {last[0] + more / last[2], last[1] + more, last[2]});
+        }
         split(run, pieces);
-        return new SightCurve(pieces, jumps, gaps);
+        return new SightCurve(pieces, jumps, gaps, last[0]);
     }
 
     private static double steepest(double[] a, double[] b) {

@@ -112,7 +112,7 @@ final class SightFigures {
     /** Figures of a sighted target; what cannot be drawn is told in the warnings. */
     List<Figure> of(Found found, List<String> warnings) {
         List<Figure> list = new ArrayList<>();
-        SightCurve curve = SightCurve.of(found.seen());
+        SightCurve curve = SightCurve.of(found.seen(), object(found)[1]);
         for (String name : wanted.names()) {
             boolean curved = name.equals("transfer") || name.equals("view");
             if (curved && curve.pieces().isEmpty()) {
@@ -371,7 +371,9 @@ final class SightFigures {
                 : "k = " + three(-gradient * radius);
         if (most < EVEN * least && !Double.isInfinite(radius)) {
             double sign = -Math.signum(gradient) * radius / step;
-            return "The air bends light evenly: k from " + three(sign * least) + " to " + three(sign * most)
+            String one = three(sign * least);
+            String other = three(sign * most);
+            return "The air bends light evenly: k " + (one.equals(other) ? "= " + one : "from " + one + " to " + other)
                     + " at these heights";
         }
         if (warm.isEmpty()) {
@@ -518,7 +520,7 @@ final class SightFigures {
     // ---- transfer
 
     /** The foot and the top of what stands at the target, metres above the datum. */
-    private double[] object(Found f, SightCurve curve) {
+    private double[] object(Found f) {
         if (f.span().isPresent()) {
             return f.span().get().clone();
         }
@@ -527,12 +529,7 @@ final class SightFigures {
         double top = thing(tall, f) == SightTarget.Kind.HILLSIDE
                 ? foot + tall
                 : foot + Math.max(1.25 * tall, LEAST_ANGLE * f.distance());
-        // nothing is drawn beyond the rays that were shot
-        double known = curve.pieces().stream()
-                .mapToDouble(SightCurve.Piece::high)
-                .max()
-                .orElse(top);
-        return new double[] {foot, known > foot + 0.5 * tall && tall > 0 ? Math.min(top, known) : top};
+        return new double[] {foot, top};
     }
 
     private SightTarget.Kind thing(double tall, Found f) {
@@ -540,7 +537,7 @@ final class SightFigures {
     }
 
     private PanelFigure transfer(Found f, SightCurve curve) {
-        double[] object = object(f, curve);
+        double[] object = object(f);
         double foot = object[0];
         double top = object[1];
         double low = foot;
@@ -573,8 +570,19 @@ final class SightFigures {
         long folds = curve.pieces().stream().filter(SightCurve.Piece::fold).count();
         for (SightCurve.Piece p : curve.pieces()) {
             boolean erect = p.erect();
+            int shot = p.upTo(curve.shot());
             curves.add(new Curve(
-                    erect ? Style.ERECT : Style.INVERTED, erect ? "erect" : "inverted", p.elevation(), p.height()));
+                    erect ? Style.ERECT : Style.INVERTED,
+                    erect ? "erect" : "inverted",
+                    Arrays.copyOf(p.elevation(), shot + 1),
+                    Arrays.copyOf(p.height(), shot + 1)));
+            if (shot < p.last()) {
+                curves.add(new Curve(
+                        Style.THIRD,
+                        "continued straight",
+                        Arrays.copyOfRange(p.elevation(), shot, p.last() + 1),
+                        Arrays.copyOfRange(p.height(), shot, p.last() + 1)));
+            }
             double x = p.elevation()[0];
             // beside a jump turns crowd; one mark tells them
             boolean apart = Math.abs(x - before) > 0.015 * wide
@@ -686,7 +694,7 @@ final class SightFigures {
     // ---- view
 
     private PanelFigure view(Found f, SightCurve curve) {
-        double[] object = object(f, curve);
+        double[] object = object(f);
         double foot = object[0];
         double tall = object[1] - foot;
         SightTarget target = new SightTarget(thing(f.height() - foot, f), tall);
@@ -714,7 +722,7 @@ final class SightFigures {
             mapped(p, h, to, scale, truth);
         }
         double horizon = horizon(f.distance());
-        double edge = Math.max(horizon, base.elevation());
+        double edge = Math.max(horizon, new Chord(radius, eye, f.distance(), ground.height(f.distance())).elevation());
         truth.add(strip(-wide, wide, up.low() - 2 * room, edge));
 
         List<Shape> seen = new ArrayList<>();

@@ -167,6 +167,20 @@ class SightFiguresTest {
         assertThat(Jobs.faults(near + "view: ship\n")).anyMatch(s -> s.contains("view"));
     }
 
+    /** The search ends a little above the target; what stands higher is seen all the same, and told as continued. */
+    @Test
+    void whatStandsAboveTheRaysShotIsNotDrawnAsMissing() {
+        Result r = Jobs.run(
+                ROAD + "to: {distance: 5 km, height: 12 m, span: [8 m, 400 m]}\n" + ALL + "view: staff\n", true);
+        PanelFigure f = panels(r, "view");
+        double[] truth = edges(f.panels().get(0), Tone.SIGNAL);
+        double[] seen = edges(f.panels().get(1), Tone.SIGNAL);
+        // refraction of some arcseconds, against 270 arcmin
+        assertThat(seen[3]).isCloseTo(truth[3], within(3e-4));
+        assertThat(panels(r, "transfer").panels().get(0).curves().stream().map(Curve::label))
+                .contains("continued straight");
+    }
+
     @Test
     void aHiddenTargetIsDrawnAsHidden() {
         Result r = Jobs.run(
