@@ -119,12 +119,7 @@ final class ChartProfile implements ScalarField {
     @Override
     public String explain(double x, double y, double z, double wavelength) {
         double u = new ChartLevel(along, chart).value(x, y, z, new double[3]);
-        if (spline.beyond() == Beyond.FAULT && (u < spline.first() || u > spline.last())) {
-            return along.word() + " = " + Told.length(u) + " is outside the table, which runs from "
-                    + Told.length(spline.first()) + " to " + Told.length(spline.last())
-                    + "; `beyond:` says what holds there";
-        }
-        return "";
+        return Profile.outside(along.word(), u, spline);
     }
 
     @Override

@@ -163,9 +163,13 @@ public final class Profile implements ScalarField {
 
     @Override
     public String explain(double x, double y, double z, double wavelength) {
-        double u = along.at(x, y, z);
+        return outside(along.word(), along.at(x, y, z), spline);
+    }
+
+    /** Why a table has no value at a coordinate, in words; empty where it has one. */
+    static String outside(String word, double u, Spline spline) {
         if (spline.beyond() == Beyond.FAULT && (u < spline.first() || u > spline.last())) {
-            return along.word() + " = " + Told.length(u) + " is outside the table, which runs from "
+            return word + " = " + Told.length(u) + " is outside the table, which runs from "
                     + Told.length(spline.first()) + " to " + Told.length(spline.last())
                     + "; `beyond:` says what holds there";
         }

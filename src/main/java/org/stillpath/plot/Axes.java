@@ -28,13 +28,16 @@ record Axes(Scale across, Scale up) {
 
     /** Whether the labels of ticks, {@code points} of paper for a metre, stand clear of each other. */
     static boolean isClear(Scale scale, double points) {
-        List<Scale.Tick> ticks = scale.ticks();
-        for (int i = 1; i < ticks.size(); i++) {
-            double apart = (ticks.get(i).at() - ticks.get(i - 1).at()) * points;
-            double half = (Canvas.width(ticks.get(i).text())
-                            + Canvas.width(ticks.get(i - 1).text()))
-                    / 2;
-            if (apart < half + 8) {
+        return areClear(
+                scale.ticks().stream().map(Scale.Tick::text).toList(),
+                scale.ticks().stream().mapToDouble(t -> t.at() * points).toArray());
+    }
+
+    /** Whether words that stand centred at places along an axis, ascending, are clear of each other. */
+    static boolean areClear(List<String> words, double[] places) {
+        for (int i = 1; i < places.length; i++) {
+            double half = (Canvas.width(words.get(i)) + Canvas.width(words.get(i - 1))) / 2;
+            if (places[i] - places[i - 1] < half + 8) {
                 return false;
             }
         }

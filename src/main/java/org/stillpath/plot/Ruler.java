@@ -87,15 +87,8 @@ record Ruler(Unit unit, int power, double low, double high, List<Tick> ticks) {
 
     /** Whether tick labels stand clear of each other over so many points. */
     boolean isClear(double points) {
-        for (int i = 1; i < ticks.size(); i++) {
-            double apart = (part(ticks.get(i)) - part(ticks.get(i - 1))) * points;
-            double half = (Canvas.width(ticks.get(i).text())
-                            + Canvas.width(ticks.get(i - 1).text()))
-                    / 2;
-            if (apart < half + 8) {
-                return false;
-            }
-        }
-        return true;
+        return Axes.areClear(
+                ticks.stream().map(Tick::text).toList(),
+                ticks.stream().mapToDouble(t -> part(t) * points).toArray());
     }
 }

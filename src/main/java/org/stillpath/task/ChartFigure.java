@@ -1,6 +1,5 @@
 package org.stillpath.task;
 
-import java.util.Arrays;
 import java.util.List;
 
 /**
@@ -47,39 +46,21 @@ public record ChartFigure(String name, String question, String answer, Axis acro
      *
      * @param style how it is drawn
      * @param label what it is; empty for none
-     * @param x in SI of the horizontal axis; of {@link Style#STEPS} one more than {@code y}
-     * @param y in SI of the vertical axis; ignored for {@link Style#MARKS}
+     * @param points in SI of both axes; of {@link Style#STEPS} one x more than y, of {@link Style#MARKS} the y are ignored
      */
-    public record Series(Style style, String label, double[] x, double[] y) {
-        public Series {
-            x = x.clone();
-            y = y.clone();
+    public record Series(Style style, String label, Points points) {
+        public Series(Style style, String label, double[] x, double[] y) {
+            this(style, label, new Points(x, y));
         }
 
-        /** A copy. */
-        @Override
+        /** Values to the right (a copy). */
         public double[] x() {
-            return x.clone();
+            return points.x();
         }
 
-        /** A copy. */
-        @Override
+        /** Values upward (a copy). */
         public double[] y() {
-            return y.clone();
-        }
-
-        @Override
-        public boolean equals(Object o) {
-            return o instanceof Series s
-                    && style == s.style
-                    && label.equals(s.label)
-                    && Arrays.equals(x, s.x)
-                    && Arrays.equals(y, s.y);
-        }
-
-        @Override
-        public int hashCode() {
-            return Arrays.hashCode(x) * 31 + Arrays.hashCode(y);
+            return points.y();
         }
     }
 }

@@ -1,6 +1,5 @@
 package org.stillpath.task;
 
-import java.util.Arrays;
 import java.util.List;
 
 /**
@@ -67,38 +66,28 @@ public record CurveFigure(String name, String question, String answer, List<Pane
      * A line through samples, with gaps at values that are not numbers.
      *
      * @param label what it is; the same in all panels
-     * @param x SI, ascending
-     * @param y SI, as many
+     * @param points SI, x ascending, a y for each
      */
-    public record Curve(String label, double[] x, double[] y) {
+    public record Curve(String label, Points points) {
         public Curve {
-            if (x.length != y.length) {
-                throw new IllegalArgumentException("y must have a value for each x, " + x.length + ": " + y.length);
+            if (points.across() != points.up()) {
+                throw new IllegalArgumentException(
+                        "y must have a value for each x, " + points.across() + ": " + points.up());
             }
-            x = x.clone();
-            y = y.clone();
+        }
+
+        public Curve(String label, double[] x, double[] y) {
+            this(label, new Points(x, y));
         }
 
         /** Values to the right (a copy). */
-        @Override
         public double[] x() {
-            return x.clone();
+            return points.x();
         }
 
         /** Values upward (a copy). */
-        @Override
         public double[] y() {
-            return y.clone();
-        }
-
-        @Override
-        public boolean equals(Object o) {
-            return o instanceof Curve c && label.equals(c.label) && Arrays.equals(x, c.x) && Arrays.equals(y, c.y);
-        }
-
-        @Override
-        public int hashCode() {
-            return 31 * Arrays.hashCode(x) + Arrays.hashCode(y);
+            return points.y();
         }
     }
 

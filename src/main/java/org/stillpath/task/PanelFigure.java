@@ -1,6 +1,5 @@
 package org.stillpath.task;
 
-import java.util.Arrays;
 import java.util.List;
 
 /**
@@ -90,38 +89,28 @@ public record PanelFigure(String name, String question, String answer, Axis up, 
     /**
      * A filled polygon.
      *
-     * @param x SI, three or more
-     * @param y SI, as many
+     * @param points SI, three or more
      */
-    public record Shape(Tone tone, double[] x, double[] y) {
+    public record Shape(Tone tone, Points points) {
         public Shape {
-            if (x.length != y.length || x.length < 3) {
-                throw new IllegalArgumentException("a shape needs three or more points: " + x.length + ", " + y.length);
+            if (points.across() != points.up() || points.across() < 3) {
+                throw new IllegalArgumentException(
+                        "a shape needs three or more points: " + points.across() + ", " + points.up());
             }
-            x = x.clone();
-            y = y.clone();
+        }
+
+        public Shape(Tone tone, double[] x, double[] y) {
+            this(tone, new Points(x, y));
         }
 
         /** Values to the right (a copy). */
-        @Override
         public double[] x() {
-            return x.clone();
+            return points.x();
         }
 
         /** Values upward (a copy). */
-        @Override
         public double[] y() {
-            return y.clone();
-        }
-
-        @Override
-        public boolean equals(Object o) {
-            return o instanceof Shape s && tone == s.tone && Arrays.equals(x, s.x) && Arrays.equals(y, s.y);
-        }
-
-        @Override
-        public int hashCode() {
-            return 31 * Arrays.hashCode(x) + Arrays.hashCode(y);
+            return points.y();
         }
     }
 
@@ -149,42 +138,28 @@ public record PanelFigure(String name, String question, String answer, Axis up, 
      * A line through samples, with gaps at values that are not numbers.
      *
      * @param label what it is, for the legend; empty for none
-     * @param x SI
-     * @param y SI, as many
+     * @param points SI, a y for each x
      */
-    public record Curve(Style style, String label, double[] x, double[] y) {
+    public record Curve(Style style, String label, Points points) {
         public Curve {
-            if (x.length != y.length) {
-                throw new IllegalArgumentException("y must have a value for each x, " + x.length + ": " + y.length);
+            if (points.across() != points.up()) {
+                throw new IllegalArgumentException(
+                        "y must have a value for each x, " + points.across() + ": " + points.up());
             }
-            x = x.clone();
-            y = y.clone();
+        }
+
+        public Curve(Style style, String label, double[] x, double[] y) {
+            this(style, label, new Points(x, y));
         }
 
         /** Values to the right (a copy). */
-        @Override
         public double[] x() {
-            return x.clone();
+            return points.x();
         }
 
         /** Values upward (a copy). */
-        @Override
         public double[] y() {
-            return y.clone();
-        }
-
-        @Override
-        public boolean equals(Object o) {
-            return o instanceof Curve c
-                    && style == c.style
-                    && label.equals(c.label)
-                    && Arrays.equals(x, c.x)
-                    && Arrays.equals(y, c.y);
-        }
-
-        @Override
-        public int hashCode() {
-            return 31 * Arrays.hashCode(x) + Arrays.hashCode(y);
+            return points.y();
         }
     }
 

@@ -97,42 +97,28 @@ public record SectionFigure(
      *
      * @param role what it is
      * @param label words beside the line; empty for none
-     * @param u coordinates to the right, metres; as many as {@code v}, at least two
-     * @param v coordinates upward, metres
+     * @param points metres, two or more
      */
-    public record Line(Role role, String label, double[] u, double[] v) {
+    public record Line(Role role, String label, Points points) {
         public Line {
-            if (u.length != v.length || u.length < 2) {
-                throw new IllegalArgumentException("a line needs two or more points: " + u.length + ", " + v.length);
+            if (points.across() != points.up() || points.across() < 2) {
+                throw new IllegalArgumentException(
+                        "a line needs two or more points: " + points.across() + ", " + points.up());
             }
-            u = u.clone();
-            v = v.clone();
         }
 
-        /** Coordinates to the right (a copy). */
-        @Override
+        public Line(Role role, String label, double[] u, double[] v) {
+            this(role, label, new Points(u, v));
+        }
+
+        /** Values to the right (a copy). */
         public double[] u() {
-            return u.clone();
+            return points.x();
         }
 
-        /** Coordinates upward (a copy). */
-        @Override
+        /** Values upward (a copy). */
         public double[] v() {
-            return v.clone();
-        }
-
-        @Override
-        public boolean equals(Object o) {
-            return o instanceof Line l
-                    && role == l.role
-                    && label.equals(l.label)
-                    && Arrays.equals(u, l.u)
-                    && Arrays.equals(v, l.v);
-        }
-
-        @Override
-        public int hashCode() {
-            return 31 * Arrays.hashCode(u) + Arrays.hashCode(v);
+            return points.y();
         }
     }
 
