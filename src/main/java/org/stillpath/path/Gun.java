@@ -17,8 +17,6 @@ import org.stillpath.ray.Train;
 final class Gun {
     /** Most passages of one ray past the target that are looked at. */
     static final int PASSAGES = 6;
-    /** How far a ray is followed, in distances of the two points or, if that is more, sizes of the train. */
-    static final double REACH = 12;
 
     private final Train train;
     private final Vector from;
@@ -39,7 +37,9 @@ final class Gun {
 
     private Tracer tracer(int passage, double accuracy, boolean trail, Columns how) {
         return new Tracer(
-                train, new Ending.Nearest(to, passage), new Tracer.Settings(accuracy, true, trail, how, REACH));
+                train,
+                new Ending.Nearest(to, passage),
+                new Tracer.Settings(accuracy, true, trail, how, PathSearch.REACH));
     }
 
     /** The passages of the ray in a direction, none where it ends before the first. */

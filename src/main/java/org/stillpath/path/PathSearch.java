@@ -23,12 +23,17 @@ import org.stillpath.ray.Train;
  * variation is counted twice ({@link SecondVariation}).
  */
 public final class PathSearch {
+    /** How far a ray is followed to its first passage, in distances of the two points or, if that is more, sizes of the train. */
+    public static final double REACH = 12;
     /** Most rays of a search. */
     static final int MOST_SHOTS = 20_000;
 
     private static final int FAN = 12;
     /** What a path may miss by, as a part of the chord, to be worth mending by multiple shooting. */
     private static final double MENDABLE = 1e-3;
+
+    /** Launches nearer to each other than this, rad, are one. */
+    private static final double ONE_DIRECTION = 1e-7;
 
     private static final double NULL_DIRECTION = 1e-6;
     /** The fan crowds toward its axis down to this angle, rad. */
@@ -212,6 +217,10 @@ public final class PathSearch {
     private List<StationaryPath> polished() {
         List<StationaryPath> paths = new ArrayList<>();
         for (Root root : roots) {
+            // one direction gives one path, and both the fan and the cone may have found it
+            if (paths.stream().anyMatch(p -> p.launch().minus(root.direction).norm() < ONE_DIRECTION)) {
+                continue;
+            }
             StationaryPath path = polish(root);
             if (path != null && paths.stream().noneMatch(p -> same(p, path))) {
                 paths.add(path);
@@ -228,7 +237,7 @@ public final class PathSearch {
         boolean continuum = a.kind() == StationaryPath.Kind.DEGENERATE
                 && b.kind() == StationaryPath.Kind.DEGENERATE
                 && longer < Math.max(1e-11, 10 * query.accuracy);
-        return (apart < Math.max(1e-7, Math.sqrt(query.accuracy)) && longer < 1e-9) || continuum;
+        return (apart < Math.max(ONE_DIRECTION, Math.sqrt(query.accuracy)) && longer < 1e-9) || continuum;
     }
 
     private @Nullable StationaryPath polish(Root root) {

@@ -25,15 +25,16 @@ final class SearchNotes {
         List<String> notes = new ArrayList<>();
         notes.add(String.format(
                 Locale.ROOT,
-                "searched were %s within %.4g deg of %s%s, with %d rays (%s samples of the media), each followed over 12 times the "
-                        + "distance of the points; paths outside that are not known, and finer detail than its resolution may "
-                        + "be missed",
+                "searched were %s within %.4g deg of %s%s, with %d rays (%s samples of the media), each followed over %.0f times "
+                        + "the distance of the points to where it first passes the target; paths outside that are not known, and "
+                        + "finer detail than its resolution may be missed",
                 outcome.planar() ? "directions in one plane" : "directions",
                 Math.toDegrees(halfAngle),
                 around,
                 what.isEmpty() ? "" : ", " + what,
                 outcome.shots(),
-                String.format(Locale.ROOT, "%,d", outcome.evaluations()).replace(',', ' ')));
+                String.format(Locale.ROOT, "%,d", outcome.evaluations()).replace(',', ' '),
+                PathSearch.REACH));
         edges(outcome, open).ifPresent(notes::add);
         if (outcome.exhausted()) {
             notes.add(

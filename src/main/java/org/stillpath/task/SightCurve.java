@@ -17,6 +17,9 @@ import org.stillpath.path.Sightings;
  * @param shot highest elevation of the rays that were shot; beyond it the curve is continued straight
  */
 record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps, double shot) {
+    /** Of a target that no ray comes to. */
+    static final SightCurve NONE = new SightCurve(List.of(), List.of(), List.of(), Double.NaN);
+
     private static final double RESOLVED = 2.4e-6;
     private static final int STEPS = 12;
     /** Nearer to each other rays are the same, or on both sides of a jump, rad. */
@@ -94,7 +97,7 @@ record SightCurve(List<Piece> pieces, List<double[]> jumps, List<double[]> gaps,
         List<double[]> jumps = new ArrayList<>();
         List<double[]> gaps = new ArrayList<>();
         if (t.length == 0) {
-            return new SightCurve(pieces, jumps, gaps, Double.NaN);
+            return NONE;
         }
         if (blocked.length > 0 && blocked[0] < t[0][0]) {
             gaps.add(new double[] {Double.NEGATIVE_INFINITY, t[0][0]});

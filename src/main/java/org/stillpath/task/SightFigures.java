@@ -35,6 +35,8 @@ import org.stillpath.unit.Display;
 final class SightFigures {
     /** Names that a job may ask for. */
     static final List<String> NAMES = List.of("profile", "sightline", "transfer", "view");
+    /** Those that show the transfer curve. */
+    private static final List<String> CURVED = List.of("transfer", "view");
     /** What is drawn where the job says nothing. */
     static final List<String> USUAL = List.of("sightline");
 
@@ -112,10 +114,12 @@ final class SightFigures {
     /** Figures of a sighted target; what cannot be drawn is told in the warnings. */
     List<Figure> of(Found found, List<String> warnings) {
         List<Figure> list = new ArrayList<>();
-        SightCurve curve = SightCurve.of(found.seen(), object(found)[1]);
+        // a series runs thousands of sights and draws none: the curve is joined only for what shows it
+        SightCurve curve = wanted.names().stream().anyMatch(CURVED::contains)
+                ? SightCurve.of(found.seen(), object(found)[1])
+                : SightCurve.NONE;
         for (String name : wanted.names()) {
-            boolean curved = name.equals("transfer") || name.equals("view");
-            if (curved && curve.pieces().isEmpty()) {
+            if (CURVED.contains(name) && curve.pieces().isEmpty()) {
                 warnings.add("the figure `" + name + "` is not drawn: no ray got to the target's distance");
                 continue;
             }
