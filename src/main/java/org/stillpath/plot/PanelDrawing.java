@@ -83,11 +83,19 @@ final class PanelDrawing {
         Map<String, Pen> lines = new LinkedHashMap<>();
         figure.panels()
                 .forEach(p -> p.curves().stream()
-                        .filter(c -> !c.label().isEmpty())
+                        .filter(c -> !c.label().isEmpty() && isSeen(p, c))
                         .forEach(c -> lines.putIfAbsent(Canvas.clean(c.label()), pen(c.style()))));
         Legend legend = new Legend(width.points());
         lines.forEach((words, pen) -> legend.line(pen, words));
         return legend.draw(canvas, top);
+    }
+
+    /** Whether any part of a curve lies within its panel. */
+    private boolean isSeen(Panel panel, PanelFigure.Curve curve) {
+        Axis across = panel.across();
+        Box box = new Box(
+                across.low(), figure.up().low(), across.high(), figure.up().high());
+        return !new Polyline(curve.x(), curve.y()).inside(box).isEmpty();
     }
 
     /** Height over width of what a panel with one scale shows. */

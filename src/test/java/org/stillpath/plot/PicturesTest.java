@@ -239,6 +239,35 @@ class PicturesTest {
                 .isNotEqualTo(Legend.pen(Role.INVERTED).ink());
     }
 
+    /** What lies wholly outside its panel needs no entry in the legend. */
+    @Test
+    void theLegendNamesOnlyWhatIsSeen() {
+        PanelFigure.Axis across = new PanelFigure.Axis("distance", PanelFigure.Measure.LENGTH, 0, 1);
+        PanelFigure.Axis up = new PanelFigure.Axis("height", PanelFigure.Measure.LENGTH, 0, 1);
+        double[] x = {0, 1};
+        PanelFigure figure = new PanelFigure(
+                "transfer",
+                "Which?",
+                "This one",
+                up,
+                List.of(new PanelFigure.Panel(
+                        "",
+                        across,
+                        List.of(),
+                        List.of(
+                                new PanelFigure.Curve(PanelFigure.Style.ERECT, "within", x, new double[] {0.2, 0.7}),
+                                new PanelFigure.Curve(PanelFigure.Style.SECOND, "across", x, new double[] {-9, 10}),
+                                new PanelFigure.Curve(PanelFigure.Style.GUIDE, "beyond", x, new double[] {2, 3})),
+                        List.of(),
+                        List.of())),
+                false);
+        for (Width width : Width.values()) {
+            assertThat(Pictures.of(figure, width).labels().stream().map(Picture.Label::text))
+                    .contains("within", "across")
+                    .doesNotContain("beyond");
+        }
+    }
+
     /** A thing keeps its form: the square is as wide as it is tall, and the taller one twice as tall. */
     @Test
     void aViewHasOneScaleForBothDirectionsAndBothPanels() {
