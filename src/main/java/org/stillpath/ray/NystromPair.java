@@ -26,6 +26,8 @@ import java.util.stream.IntStream;
  * @param used for each stage the stages whose weights in it are not 0
  * @param usedInPlace the stages that the place needs, with its error
  * @param usedInMomentum the stages that the momentum needs, with its error
+ * @param inPlace those that it needs without its error
+ * @param inMomentum likewise
  */
 record NystromPair(
         int order,
@@ -39,7 +41,9 @@ record NystromPair(
         double[] bpe,
         int[][] used,
         int[] usedInPlace,
-        int[] usedInMomentum) {
+        int[] usedInMomentum,
+        int[] inPlace,
+        int[] inMomentum) {
     private NystromPair(
             int order,
             int lower,
@@ -62,7 +66,9 @@ record NystromPair(
                 bpe,
                 Arrays.stream(a).map(row -> used(row)).toArray(int[][]::new),
                 used(b, be),
-                used(bp, bpe));
+                used(bp, bpe),
+                used(b),
+                used(bp));
     }
 
     private static int[] used(double[]... weights) {

@@ -71,7 +71,7 @@ public final class NystromPropagator implements Propagator {
      * @param stride multiplies the longest step, and the first step towards a target that is nearer than it
      */
     public NystromPropagator(double tolerance, double scale, double stride) {
-        this(tolerance, scale, stride, tolerance < TIGHT ? NystromPair.TWELVE_TEN : NystromPair.EIGHT_SIX);
+        this(tolerance, scale, stride, pairFor(tolerance));
     }
 
     /** The same with a pair of one's own choice. */
@@ -84,8 +84,17 @@ public final class NystromPropagator implements Propagator {
         this.tolerance = Math.max(tolerance, LEAST_TOLERANCE);
         this.scale = scale;
         this.pair = pair;
-        // the estimate is that of the lower order; what it stands for is smaller by the orders between
-        this.estimateTolerance = Math.pow(CAUTION * this.tolerance, (pair.lower() + 1.0) / (pair.order() + 1.0));
+        this.estimateTolerance = estimateTolerance(tolerance, pair);
+    }
+
+    /** The pair that serves a tolerance best. */
+    static NystromPair pairFor(double tolerance) {
+        return tolerance < TIGHT ? NystromPair.TWELVE_TEN : NystromPair.EIGHT_SIX;
+    }
+
+    /** What a pair's estimate may be: it is that of the lower order, and what it stands for is smaller by the orders between. */
+    static double estimateTolerance(double tolerance, NystromPair pair) {
+        return Math.pow(CAUTION * Math.max(tolerance, LEAST_TOLERANCE), (pair.lower() + 1.0) / (pair.order() + 1.0));
     }
 
     @Override
