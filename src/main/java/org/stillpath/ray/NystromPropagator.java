@@ -18,7 +18,7 @@ public final class NystromPropagator implements Propagator {
     /** Tolerances below this use the pair of order 12: where it became cheaper on the analytic cases. */
     private static final double TIGHT = 1e-8;
     /** The local error aimed at, as a fraction of the tolerance. */
-    private static final double CAUTION = 0.1;
+    static final double CAUTION = 0.1;
     /** No tolerance asks for less than rounding leaves. */
     private static final double LEAST_TOLERANCE = 1e-16;
 

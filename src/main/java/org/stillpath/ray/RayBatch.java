@@ -18,6 +18,7 @@ final class RayBatch {
     private static final double SAFETY = 0.9;
     private static final double LEAST_FACTOR = 0.1;
     private static final double MOST_FACTOR = 6;
+    private static final double REFUSED = Double.MAX_VALUE;
     private static final long ONE = Double.doubleToRawLongBits(1);
 
     private final NystromPair pair;
@@ -26,6 +27,7 @@ final class RayBatch {
     private final double scale;
     private final double allowed;
     private final double shrink;
+    private final double caution;
 
     private double[][] place;
     private double[][] slope;
@@ -71,6 +73,7 @@ final class RayBatch {
         this.order = columns > 0 ? Order.HESSIAN : Order.GRADIENT;
         this.scale = scale;
         this.allowed = NystromPropagator.estimateTolerance(tolerance, pair);
+        this.caution = NystromPropagator.CAUTION * tolerance;
         this.shrink = -0.5 / (pair.lower() + 1);
         this.place = new double[components][capacity];
         this.slope = new double[components][capacity];
@@ -130,6 +133,43 @@ final class RayBatch {
         return stretch;
     }
 
+    /** Places at the end of the step just made; after {@link #settle}, at its start. Likewise the others. */
+    double[][] endPlace() {
+        return endPlace;
+    }
+
+    double[][] endSlope() {
+        return endSlope;
+    }
+
+    double[] endExcess() {
+        return endExcess;
+    }
+
+    double[] endStretch() {
+        return endStretch;
+    }
+
+    /** A component of the force at the start of the step just made; component 3 is n² − 1. */
+    double startForce(int component, int lane) {
+        return k[component < 3 ? component : components][0][lane];
+    }
+
+    /** The same at its end, where the pair has its last stage there. */
+    double endForce(int component, int lane) {
+        return k[component < 3 ? component : components][pair.stages() - 1][lane];
+    }
+
+    /** Copies the Jacobi columns of a lane into a state. */
+    void columns(int lane, double[][] places, double[][] slopes, double[] state) {
+        for (int s = State.COLUMNS, c = 3; c < components; s += State.COLUMN, c += 3) {
+            for (int i = 0; i < 3; i++) {
+                state[s + i] = places[c + i][lane];
+                state[s + 3 + i] = slopes[c + i][lane];
+            }
+        }
+    }
+
     /** The next steps by lane, to be set by the caller. */
     double[] steps() {
         return h;
@@ -143,6 +183,26 @@ final class RayBatch {
     /** Whether the step just made by a lane is good enough; false also where the field was undefined. */
     boolean good(int lane) {
         return error[lane] <= 1;
+    }
+
+    /** Takes the step just made by a lane back, whatever its error. */
+    void refuse(int lane) {
+        error[lane] = REFUSED;
+    }
+
+    /** Whether it was taken back. */
+    boolean refused(int lane) {
+        return error[lane] == REFUSED;
+    }
+
+    /** The local error that the step just made by a lane is estimated to have, as a fraction of the scale. */
+    double localError(int lane) {
+        double part = 1 / growth[lane];
+        double power = part;
+        for (int i = 0; i < pair.order(); i++) {
+            power *= part;
+        }
+        return caution * power;
     }
 
     /** Whether the field was undefined in the step just made by a lane. */

@@ -1,9 +1,15 @@
 package org.stillpath.ray;
 
+import java.util.ArrayDeque;
 import java.util.ArrayList;
+import java.util.Deque;
+import java.util.HashMap;
+import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
+import java.util.Map;
 import java.util.Objects;
+import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
@@ -37,6 +43,10 @@ public final class Tracer {
     private static final double INTEGRATED = 16 * EPSILON;
 
     private static final int PIECES = 1_000_000;
+    /** Fewer rays than this are traced one by one: making a field ready for bundles takes about as long. */
+    private static final int FEWEST_IN_BUNDLES = 256;
+    /** Rays that share batches; fixed, so that results do not depend on the number of threads. */
+    private static final int CHUNK = 1024;
     /** How far a ray that has passed a point is followed for the next passage, in lengths of the scene. */
     private static final double BACK = 2;
 
@@ -44,6 +54,7 @@ public final class Tracer {
     private final Ending ending;
     private final Settings settings;
     private final Propagator.Maker engine;
+    private final boolean ownEngine;
 
     /**
      * What is asked for besides the end of a ray.
@@ -80,11 +91,16 @@ public final class Tracer {
 
     /** A tracer for one train and ending with the production engine. */
     public Tracer(Train train, Ending ending, Settings settings) {
-        this(train, ending, settings, NystromPropagator::new);
+        this(train, ending, settings, NystromPropagator::new, true);
     }
 
     /** The same with an engine of one's own choice. */
     public Tracer(Train train, Ending ending, Settings settings, Propagator.Maker engine) {
+        this(train, ending, settings, engine, false);
+    }
+
+    private Tracer(Train train, Ending ending, Settings settings, Propagator.Maker engine, boolean ownEngine) {
+        this.ownEngine = ownEngine;
         this.train = train;
         this.ending = ending;
         this.settings = settings;
@@ -95,13 +111,99 @@ public final class Tracer {
         }
     }
 
-    /** Traces rays, in the order given. */
+    /**
+     * Traces rays, in the order given. Many of them go in bundles, on all cores; the digits do not depend on how many these are,
+     * but may differ in the last from those of {@link #trace(RayStart)}.
+     */
     public List<Traced> trace(List<RayStart> starts) {
+        if (starts.size() < FEWEST_IN_BUNDLES || !bundled()) {
+            return starts.stream().map(this::trace).toList();
+        }
+        int chunks = (starts.size() + CHUNK - 1) / CHUNK;
+        Map<IndexField, IndexField> ready = new HashMap<>();
+        ready.put(train.from(), train.from().forBundles());
+        train.elements().forEach(e -> ready.computeIfAbsent(e.into(), IndexField::forBundles));
+        return IntStream.range(0, chunks)
+                .parallel()
+                .mapToObj(i -> bundle(starts.subList(i * CHUNK, Math.min(starts.size(), (i + 1) * CHUNK)), ready))
+                .flatMap(List::stream)
+                .toList();
+    }
+
+    /** Whether rays may go in bundles: places on the way and conjugate points are noted by the ray alone. */
+    private boolean bundled() {
+        return ownEngine && !settings.trail && !settings.columns.conjugates();
+    }
+
+    /** As {@link #trace(RayStart)} for several rays, whose two runs each go in a bundle. */
+    private List<Traced> bundle(List<RayStart> starts, Map<IndexField, IndexField> ready) {
+        double tolerance = 0.1 * settings.accuracy;
+        List<Run> loose = runs(starts, tolerance, 1, ready);
+        List<Run> tight = runs(
+                IntStream.range(0, starts.size())
+                        .filter(i -> loose.get(i).integrated)
+                        .mapToObj(starts::get)
+                        .toList(),
+                TIGHTER * tolerance,
+                STRIDE,
+                ready);
         List<Traced> ends = new ArrayList<>(starts.size());
-        for (RayStart start : starts) {
-            ends.add(trace(start));
+        int next = 0;
+        for (int i = 0; i < starts.size(); i++) {
+            Run first = loose.get(i);
+            if (!first.integrated) {
+                ends.add(first.traced(first.errors(first), 0));
+                continue;
+            }
+            Run second = tight.get(next++);
+            Traced t = second.traced(second.errors(first), first.evaluations + second.evaluations);
+            ends.add(t.accurate() ? t : trace(starts.get(i)));
         }
         return ends;
+    }
+
+    /** One run of each ray. */
+    private List<Run> runs(List<RayStart> starts, double tolerance, double stride, Map<IndexField, IndexField> ready) {
+        List<Run> runs = new ArrayList<>(starts.size());
+        // rays of one scale share a batch engine, and rays in one medium a batch
+        Map<Double, BatchPropagator> engines = new LinkedHashMap<>();
+        Map<BatchPropagator, Map<IndexField, Deque<Run>>> waiting = new LinkedHashMap<>();
+        Deque<Run> moved = new ArrayDeque<>();
+        for (RayStart start : starts) {
+            Run run = new Run(start, tolerance, stride);
+            runs.add(run);
+            if (run.begin()) {
+                moved.add(run);
+            }
+        }
+        while (true) {
+            for (Run run = moved.poll(); run != null; run = moved.poll()) {
+                IndexField bundled = ready.get(run.piece);
+                if (bundled == null) {
+                    run.finishAlone();
+                    continue;
+                }
+                int columns = State.columns(run.y);
+                BatchPropagator engine =
+                        engines.computeIfAbsent(run.scale, s -> new BatchPropagator(columns, tolerance, s, stride));
+                Map<IndexField, Deque<Run>> groups = waiting.computeIfAbsent(engine, e -> new HashMap<>());
+                groups.computeIfAbsent(run.piece, f -> new ArrayDeque<>()).add(run);
+            }
+            if (waiting.isEmpty()) {
+                return runs;
+            }
+            Map.Entry<BatchPropagator, Map<IndexField, Deque<Run>>> group =
+                    waiting.entrySet().iterator().next();
+            waiting.remove(group.getKey());
+            group.getValue().forEach((field, legs) -> {
+                IndexField bundled = ready.getOrDefault(field, field);
+                group.getKey().advance(legs, field, bundled, (run, met) -> {
+                    if (run.resume(met)) {
+                        moved.add(run);
+                    }
+                });
+            });
+        }
     }
 
     /** Traces one ray. */
@@ -113,14 +215,14 @@ public final class Tracer {
         if (!loose.integrated) {
             return loose.traced(loose.errors(loose), 0);
         }
-        long evaluations = loose.propagator.evaluations();
+        long evaluations = loose.evaluations;
         @Nullable Traced result = null;
         for (int i = 0; i <= TIGHTENINGS; i++) {
             tolerance *= TIGHTER;
             stride *= STRIDE;
             Run tight = new Run(start, tolerance, stride);
             tight.go();
-            evaluations += tight.propagator.evaluations();
+            evaluations += tight.evaluations;
             result = tight.traced(tight.errors(loose), evaluations);
             if (result.accurate()) {
                 return result;
@@ -138,7 +240,7 @@ public final class Tracer {
     public Traced glance(RayStart start, double tolerance) {
         Run run = new Run(start, tolerance, 1);
         run.go();
-        return run.traced(run.errors(run), run.propagator.evaluations());
+        return run.traced(run.errors(run), run.evaluations);
     }
 
     /**
@@ -166,7 +268,7 @@ public final class Tracer {
         List<Traced> passed = new ArrayList<>();
         run.passed = passed;
         run.go();
-        return new Passing(passed, run.traced(run.errors(run), run.propagator.evaluations()));
+        return new Passing(passed, run.traced(run.errors(run), run.evaluations));
     }
 
     /** Length of the scene that a ray from this start sees, metres: what positions and steps are judged against. */
@@ -202,12 +304,25 @@ public final class Tracer {
         return scale > 0 ? scale : 1;
     }
 
-    /** One pass of one ray at one tolerance. */
-    private final class Run {
+    /** How an attempt to reach a target went. */
+    private enum Move {
+        REACHED,
+        ENDED,
+        /** An equation has to be integrated first. */
+        WAITS
+    }
+
+    /**
+     * One pass of one ray at one tolerance. It goes as far as it can by itself, and stops where an equation has to be integrated:
+     * it then says through what ({@link #piece}) and to which targets, and is resumed with what was met, so that one engine may
+     * serve it alone or with many others.
+     */
+    private final class Run implements BatchPropagator.Leg {
         private final RayStart start;
         private final double scale;
+        private final double tolerance;
+        private final double stride;
         private double limit;
-        private final Propagator propagator;
         private final Crossing crossing = new Crossing();
         private final Flow flow = new Flow();
         private final Trail trail;
@@ -222,6 +337,19 @@ public final class Tracer {
         private double drift;
         private double placeError;
         private double angleError;
+        private double localErrors;
+        private long evaluations;
+        /** The surface that is looked for, by its number; that of all surfaces when the ending is. */
+        private int stage;
+
+        private Target goal = new Target.AtLength(0);
+        private Target[] targets = {};
+        private IndexField piece;
+        private @Nullable Seams seams;
+        private int pieces;
+        private double legStart;
+        private double pieceStart;
+        private int nearest;
         /** The ray at the passages met so far, where they are asked for. */
         private @Nullable List<Traced> passed;
 
@@ -229,38 +357,117 @@ public final class Tracer {
             this.start = start;
             this.scale = scale(start);
             this.limit = settings.reach * scale;
-            this.propagator = engine.make(tolerance, scale, stride);
+            this.tolerance = tolerance;
+            this.stride = stride;
             this.trail = Trail.of(settings.trail, settings.columns);
             boolean lens = train.elements().stream().anyMatch(e -> e.action() instanceof Action.ThinLens);
             int count = lens ? State.TRANSFER_COLUMNS : settings.transfer ? settings.columns.count() : 0;
             this.y = new double[State.size(count)];
             this.rate = new double[y.length];
             this.field = train.from();
+            this.piece = field;
         }
 
+        /** The whole way, by an engine of its own. */
         void go() {
-            if (!launch()) {
-                return;
+            if (begin()) {
+                finishAlone();
             }
-            List<Element> elements = train.elements();
-            for (int i = 0; i < elements.size(); i++) {
-                element = i;
-                if (!reach(
-                        new Target.OnSurface(elements.get(i).surface()),
-                        i,
-                        elements.get(i).surface())) {
-                    return;
+        }
+
+        /** What is left of the way, by an engine of its own. */
+        void finishAlone() {
+            Propagator propagator = engine.make(tolerance, scale, stride);
+            double errorsBefore = localErrors;
+            long samplesBefore = evaluations;
+            boolean more = true;
+            while (more) {
+                int met = propagator.advance(y, piece, targets, trail);
+                localErrors = errorsBefore + propagator.localErrors();
+                evaluations = samplesBefore + propagator.evaluations();
+                more = resume(met);
+            }
+        }
+
+        @Override
+        public double[] state() {
+            return y;
+        }
+
+        @Override
+        public Target[] targets() {
+            return targets;
+        }
+
+        @Override
+        public void spent(long samples, double errors) {
+            evaluations += samples;
+            localErrors += errors;
+        }
+
+        /** Sets out; whether an equation has to be integrated. */
+        boolean begin() {
+            return launch() && seek();
+        }
+
+        /** Goes on from a target that was met; whether an equation has to be integrated again. */
+        boolean resume(int met) {
+            return switch (met(met)) {
+                case ENDED -> false;
+                case WAITS -> true;
+                case REACHED -> reached() && seek();
+            };
+        }
+
+        /** Goes from surface to surface as long as no equation has to be integrated; whether one has to be. */
+        private boolean seek() {
+            while (true) {
+                if (!aim()) {
+                    return false;
                 }
-                if (i == elements.size() - 1 && ending instanceof Ending.AtLastSurface) {
-                    arrive();
-                    return;
+                switch (reach(goal, surface())) {
+                    case ENDED -> {
+                        return false;
+                    }
+                    case WAITS -> {
+                        return true;
+                    }
+                    case REACHED -> {
+                        if (!reached()) {
+                            return false;
+                        }
+                    }
                 }
-                if (!act(elements.get(i), i)) {
-                    return;
-                }
+            }
+        }
+
+        private @Nullable Surface surface() {
+            return stage < train.elements().size() ? train.elements().get(stage).surface() : null;
+        }
+
+        /** Chooses what is to be met next; false if the ray has ended. */
+        private boolean aim() {
+            Surface surface = surface();
+            if (surface != null) {
+                element = stage;
+                goal = new Target.OnSurface(surface);
+                return true;
             }
             element = -1;
-            finish();
+            return aimAtEnding();
+        }
+
+        /** Deals with what was met; whether the ray goes on. */
+        private boolean reached() {
+            List<Element> elements = train.elements();
+            if (stage < elements.size()) {
+                if (stage == elements.size() - 1 && ending instanceof Ending.AtLastSurface) {
+                    arrive();
+                    return false;
+                }
+                return act(elements.get(stage), stage++);
+            }
+            return !ends();
         }
 
         private boolean launch() {
@@ -340,15 +547,19 @@ public final class Tracer {
             }
         }
 
-        /** Brings the ray to a target; says so, or ends it. {@code index} is that of the surface, −1 for the ending. */
-        private boolean reach(Target target, int index, @Nullable Surface surface) {
-            if (surface != null && !leaves(index) && standsOn(target)) {
-                return true;
+        /** Brings the ray to a target, or asks for the integration that it takes. */
+        private Move reach(Target target, @Nullable Surface surface) {
+            if (surface != null && !leaves(stage) && standsOn(target)) {
+                return Move.REACHED;
             }
             if (field.uniform() && field.limits().isEmpty()) {
-                return straight(target, surface);
+                return straight(target, surface) ? Move.REACHED : Move.ENDED;
             }
-            return curved(target, surface);
+            integrated = true;
+            seams = new Seams(field, y, rate, flow, scale);
+            legStart = y[State.LENGTH];
+            pieces = 0;
+            return piece(seams);
         }
 
         /**
@@ -398,7 +609,7 @@ public final class Tracer {
             if (!(s <= limit)) {
                 flow.shift(y, rate, scale / n);
                 trail.add(y[0], y[1], y[2]);
-                end(surface != null ? Status.MISSED : Status.LOST, surface != null ? missed() : lost());
+                lostOn(surface);
                 return false;
             }
             if (s < 0) {
@@ -428,49 +639,59 @@ public final class Tracer {
             }
         }
 
-        private boolean curved(Target target, @Nullable Surface surface) {
-            integrated = true;
-            Seams seams = new Seams(field, y, rate, flow, scale);
-            double travelledBefore = y[State.LENGTH];
-            for (int piece = 0; piece < PIECES; piece++) {
-                Target[] targets = seams.targets(target, y[State.LENGTH] + limit);
-                double pieceStart = y[State.LENGTH];
-                int met = propagator.advance(y, field.piece(seams.cells()), targets, trail);
-                if (met > 1 && y[State.LENGTH] - pieceStart > Departure.ON * scale && standsOn(target)) {
-                    // a surface on the very edge or knot of a table: rounding decides which is met first
-                    flow.polish(y, field, target, rate);
-                    met = 0;
-                }
-                if (met == 0) {
-                    double s = y[State.LENGTH] - travelledBefore;
-                    travelled(s);
-                    placeError += INTEGRATED * (Math.abs(y[0]) + Math.abs(y[1]) + Math.abs(y[2]) + s);
-                    angleError += INTEGRATED;
-                    drifted();
-                    return true;
-                }
-                if (met == 1) {
-                    end(surface != null ? Status.MISSED : Status.LOST, surface != null ? missed() : lost());
-                    return false;
-                }
-                if (met < 0) {
-                    end(
-                            met == Propagator.UNDEFINED ? Status.OUTSIDE : Status.LOST,
-                            met == Propagator.UNDEFINED ? undefined() : "the step became too small " + where());
-                    return false;
-                }
-                if (met < 2 + seams.limits()) {
-                    if (field.limits().get(met - 2) instanceof GroundLevel) {
-                        end(Status.GROUNDED, "it meets the ground " + where());
-                        return false;
-                    }
-                    end(Status.OUTSIDE, "it left " + ((Target.OnLevel) targets[met]).describe() + " " + where());
-                    return false;
-                }
-                seams.enter(y, rate);
+        /** Asks for the way through one smooth piece of the field. */
+        private Move piece(Seams cells) {
+            targets = cells.targets(goal, y[State.LENGTH] + limit);
+            piece = field.piece(cells.cells());
+            pieceStart = y[State.LENGTH];
+            return Move.WAITS;
+        }
+
+        /** Deals with what an engine has met. */
+        private Move met(int target) {
+            Seams cells = Objects.requireNonNull(seams);
+            int met = target;
+            if (met > 1 && y[State.LENGTH] - pieceStart > Departure.ON * scale && standsOn(goal)) {
+                // a surface on the very edge or knot of a table: rounding decides which is met first
+                flow.polish(y, field, goal, rate);
+                met = 0;
             }
-            end(Status.LOST, "it crossed more than " + PIECES + " seams of its medium");
-            return false;
+            if (met == 0) {
+                double s = y[State.LENGTH] - legStart;
+                travelled(s);
+                placeError += INTEGRATED * (Math.abs(y[0]) + Math.abs(y[1]) + Math.abs(y[2]) + s);
+                angleError += INTEGRATED;
+                drifted();
+                return Move.REACHED;
+            }
+            if (met == 1) {
+                lostOn(surface());
+                return Move.ENDED;
+            }
+            if (met < 0) {
+                end(
+                        met == Propagator.UNDEFINED ? Status.OUTSIDE : Status.LOST,
+                        met == Propagator.UNDEFINED ? undefined() : "the step became too small " + where());
+                return Move.ENDED;
+            }
+            if (met < 2 + cells.limits()) {
+                if (field.limits().get(met - 2) instanceof GroundLevel) {
+                    end(Status.GROUNDED, "it meets the ground " + where());
+                } else {
+                    end(Status.OUTSIDE, "it left " + ((Target.OnLevel) targets[met]).describe() + " " + where());
+                }
+                return Move.ENDED;
+            }
+            if (++pieces == PIECES) {
+                end(Status.LOST, "it crossed more than " + PIECES + " seams of its medium");
+                return Move.ENDED;
+            }
+            cells.enter(y, rate);
+            return piece(cells);
+        }
+
+        private void lostOn(@Nullable Surface surface) {
+            end(surface != null ? Status.MISSED : Status.LOST, surface != null ? missed() : lost());
         }
 
         private boolean standsOn(Target target) {
@@ -531,73 +752,67 @@ public final class Tracer {
             return true;
         }
 
-        private void finish() {
+        /** Chooses the target that stands for the ending; false if the ray has ended already. */
+        private boolean aimAtEnding() {
             if (ending instanceof Ending.BehindLastSurface) {
                 arrive();
-                return;
+                return false;
             }
             if (ending instanceof Ending.Nearest at) {
-                approach(at);
-                return;
-            }
-            if (ending instanceof Ending.AtLowest at) {
-                descend(at);
-                return;
-            }
-            Target target;
-            if (ending instanceof Ending.AtZ at) {
-                target = new Target.AtZ(at.z());
+                goal = goal instanceof Target.Nearest ? goal : new Target.Nearest(at.to());
+            } else if (ending instanceof Ending.AtLowest at) {
+                goal = goal instanceof Target.AtLowest ? goal : new Target.AtLowest(at.chart());
+            } else if (ending instanceof Ending.AtZ at) {
+                goal = new Target.AtZ(at.z());
             } else if (ending instanceof Ending.AtVertical at) {
-                target = new Target.AtVertical(at.chart(), at.distance());
+                goal = new Target.AtVertical(at.chart(), at.distance());
             } else if (ending instanceof Ending.AtLength at) {
-                target = new Target.AtLength(at.length());
+                goal = new Target.AtLength(at.length());
             } else if (ending instanceof Ending.AtOpticalLength at) {
-                target = new Target.AtOpticalLength(at.opticalLength());
+                goal = new Target.AtOpticalLength(at.opticalLength());
             } else {
                 throw new IllegalStateException("an ending at the last surface needs a surface");
             }
-            boolean ofLength = !(ending instanceof Ending.AtZ || ending instanceof Ending.AtVertical);
-            if (ofLength && target.value(y) > 0) {
+            boolean ofLength = goal instanceof Target.AtLength || goal instanceof Target.AtOpticalLength;
+            if (ofLength && goal.value(y) > 0) {
                 end(Status.LOST, "the length at which the ray was to end was passed before its last surface");
-                return;
+                return false;
             }
-            if (reach(target, -1, null)) {
+            return true;
+        }
+
+        /** Whether the ray ends where it has met the target of its ending, or goes on to the next such place. */
+        private boolean ends() {
+            if (goal instanceof Target.Nearest target) {
+                return endsNearest(target);
+            }
+            if (goal instanceof Target.AtLowest target) {
+                boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
+                if (!defined || !target.isLowest(y, flow.samples())) {
+                    return false;
+                }
+            }
+            arrive();
+            return true;
+        }
+
+        /** Counts the places where the distance does not change and is least. */
+        private boolean endsNearest(Target.Nearest target) {
+            boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
+            if (!defined || !target.isNearest(y, flow.samples())) {
+                return false;
+            }
+            if (passed != null) {
+                status = Status.ARRIVED;
+                passed.add(traced(errors(this), evaluations));
+                status = Status.LOST;
+            }
+            if (++nearest == ((Ending.Nearest) ending).which()) {
                 arrive();
+                return true;
             }
-        }
-
-        /** Goes from one place where the distance does not change to the next, and counts those where it is least. */
-        private void approach(Ending.Nearest at) {
-            Target.Nearest target = new Target.Nearest(at.to());
-            int met = 0;
-            while (reach(target, -1, null)) {
-                boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
-                if (!defined || !target.isNearest(y, flow.samples())) {
-                    continue;
-                }
-                if (passed != null) {
-                    status = Status.ARRIVED;
-                    passed.add(traced(errors(this), propagator.evaluations()));
-                    status = Status.LOST;
-                }
-                if (++met == at.which()) {
-                    arrive();
-                    return;
-                }
-                limit = Math.min(limit, BACK * scale);
-            }
-        }
-
-        /** Goes to the first place where the clearance is least. */
-        private void descend(Ending.AtLowest at) {
-            Target.AtLowest target = new Target.AtLowest(at.chart());
-            while (reach(target, -1, null)) {
-                boolean defined = flow.sample(field, y[0], y[1], y[2], Order.GRADIENT);
-                if (defined && target.isLowest(y, flow.samples())) {
-                    arrive();
-                    return;
-                }
-            }
+            limit = Math.min(limit, BACK * scale);
+            return false;
         }
 
         private void arrive() {
@@ -664,7 +879,7 @@ public final class Tracer {
                 optical = SAFETY * Math.abs(State.opticalLength(y) - State.opticalLength(other.y));
                 length = SAFETY * Math.abs(y[State.LENGTH] - other.y[State.LENGTH]);
                 // two runs may agree by accident; their steps' own estimates do not
-                double local = LOCAL * propagator.localErrors();
+                double local = LOCAL * localErrors;
                 place += local * scale;
                 angle += local;
                 optical += local * scale;
