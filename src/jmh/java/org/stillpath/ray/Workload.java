@@ -3,6 +3,7 @@ package org.stillpath.ray;
 import java.util.Map;
 import java.util.Random;
 import java.util.stream.Collectors;
+import org.apache.commons.math3.ode.FirstOrderDifferentialEquations;
 import org.hipparchus.exception.MathRuntimeException;
 import org.hipparchus.ode.ODEState;
 import org.hipparchus.ode.OrdinaryDifferentialEquation;
@@ -153,6 +154,57 @@ public enum Workload {
             ends[i] = reference.end(starts[i], end);
         }
         return ends;
+    }
+
+    /** Apache Commons Math's DormandPrince853 on q and p alone, likewise. */
+    static final class CommonsMath implements FirstOrderDifferentialEquations {
+        private final IndexField field;
+        private final org.apache.commons.math3.ode.nonstiff.DormandPrince853Integrator integrator;
+        private final double[] x = new double[1];
+        private final double[] y = new double[1];
+        private final double[] z = new double[1];
+        private final Samples s = new Samples(1);
+
+        CommonsMath(IndexField field, double scale, double tolerance) {
+            this.field = field;
+            double[] absolute = new double[6];
+            for (int i = 0; i < 6; i++) {
+                absolute[i] = i < 3 ? tolerance * scale : tolerance;
+            }
+            this.integrator = new org.apache.commons.math3.ode.nonstiff.DormandPrince853Integrator(
+                    1e-15 * scale, scale, absolute, new double[6]);
+        }
+
+        /** The end of a ray; NaN where steps were so long that they left the field's domain. */
+        double[] end(double[] start, double end) {
+            double[] state = new double[6];
+            try {
+                integrator.integrate(this, 0, start, end, state);
+            } catch (org.apache.commons.math3.exception.MathIllegalStateException
+                    | org.apache.commons.math3.exception.MathIllegalArgumentException e) {
+                state[0] = Double.NaN;
+            }
+            return state;
+        }
+
+        @Override
+        public int getDimension() {
+            return 6;
+        }
+
+        @Override
+        public void computeDerivatives(double t, double[] state, double[] rate) {
+            x[0] = state[0];
+            y[0] = state[1];
+            z[0] = state[2];
+            field.sample(x, y, z, 1, Order.GRADIENT, s);
+            rate[0] = state[3];
+            rate[1] = state[4];
+            rate[2] = state[5];
+            rate[3] = s.gx[0];
+            rate[4] = s.gy[0];
+            rate[5] = s.gz[0];
+        }
     }
 
     /** Hipparchus' DormandPrince853 on q and p alone, the shortest way to use it: no events, no optical length. */

@@ -9,7 +9,7 @@ import org.stillpath.medium.IndexField;
  * Steps of many rays at once through one smooth field, by the pairs of {@link NystromPropagator}: each number of a state is a row
  * over the rays (lanes), each lane has its own step, and all work that depends on the place is done in loops over a row
  * ({@link Rows}, the field's own). Against a ray at a time this keeps the processor's vector units busy and spares the calls;
- * {@code RayBenchmark} holds the two against each other.
+ * {@code BundleBenchmark} holds the two against each other.
  *
  * <p>A lane's numbers do not depend on the lanes beside it. Besides place, momentum and Jacobi columns it carries ∫(n² − 1) dτ,
  * the optical length less τ, and if asked for, which costs a root a sample, ∫(n − 1) dτ, the length less τ. Mutable, one a thread; nothing is allocated once it is made.
