@@ -90,6 +90,11 @@ final class SweepStudy implements Study {
         public void bind(Bench bench, Problems problems) {}
 
         @Override
+        public long runs() {
+            return ranges.stream().mapToLong(r -> r.values().length).reduce(1, (a, b) -> a * b);
+        }
+
+        @Override
         public Finding run(Bench bench) {
             List<Input> inputs = ranges.stream().map(Range::input).toList();
             int inner = ranges.size() == 2 ? ranges.get(1).values().length : 1;
@@ -119,7 +124,7 @@ final class SweepStudy implements Study {
             List<Watched> watch = table.watched(i -> bench.with(inputs, values(i, inner)));
             List<Doc> rows = Doc.list();
             for (int i = 0; i < runs; i++) {
-                Doc.Builder row = new Doc.Builder().put("inputs", new Doc.Amounts(values(i, inner)));
+                Doc.Builder row = new Doc.Builder().put("inputs", Doc.Items.numbers(values(i, inner)));
                 table.finishRow(row, i);
                 rows.add(row.build());
             }

@@ -241,7 +241,7 @@ final class LensTask implements Task {
             quantities.put("image-kind", new Quantity.Word(kind));
             quantities.put("image-orientation", new Quantity.Word(orientation));
             boolean real = kind.equals("real");
-            String distance = Display.of(Math.abs(image), "m", at.error()).toString();
+            String distance = Display.brief(Math.abs(image), "m", at.error()).toString();
             return Optional.of((real ? "Real, " : "Virtual, ") + orientation + " image " + distance
                     + (real ? " behind" : " before") + " the last vertex, magnification " + said(ratio));
         }
@@ -346,7 +346,7 @@ final class LensTask implements Task {
         }
 
         private static String said(Quantity.Amount q) {
-            return Display.of(q.value(), q.unit(), q.error()).toString();
+            return Display.brief(q.value(), q.unit(), q.error()).toString();
         }
     }
 

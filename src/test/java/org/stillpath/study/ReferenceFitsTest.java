@@ -55,9 +55,8 @@ class ReferenceFitsTest {
             if (rows == null) {
                 throw new AssertionError("no set " + set);
             }
-            double[][] x = rows.stream()
-                    .map(r -> Arrays.copyOfRange(r, 1, r.length))
-                    .toArray(double[][]::new);
+            double[][] x =
+                    rows.stream().map(r -> Arrays.copyOfRange(r, 1, r.length)).toArray(double[][]::new);
             double[] y = rows.stream().mapToDouble(r -> r[0]).toArray();
             return new Case(name, x, y, curve, starts, certified, deviations, squares);
         }
@@ -80,11 +79,17 @@ class ReferenceFitsTest {
         Map<String, List<double[]>> sets = new HashMap<>();
         try (InputStream in = Objects.requireNonNull(ReferenceFitsTest.class.getResourceAsStream("strd.csv"));
                 BufferedReader lines = new BufferedReader(new InputStreamReader(in, StandardCharsets.UTF_8))) {
-            lines.lines().filter(l -> !l.startsWith("#") && !l.startsWith("set,")).forEach(l -> {
-                List<String> cells = List.of(l.split(",", -1));
-                double[] row = cells.stream().skip(1).mapToDouble(Double::parseDouble).toArray();
-                sets.computeIfAbsent(cells.get(0), k -> new ArrayList<>()).add(row);
-            });
+            lines.lines()
+                    .filter(l -> !l.startsWith("#") && !l.startsWith("set,"))
+                    .forEach(l -> {
+                        List<String> cells = List.of(l.split(",", -1));
+                        double[] row = cells.stream()
+                                .skip(1)
+                                .mapToDouble(Double::parseDouble)
+                                .toArray();
+                        sets.computeIfAbsent(cells.get(0), k -> new ArrayList<>())
+                                .add(row);
+                    });
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }
@@ -193,8 +198,14 @@ class ReferenceFitsTest {
                         ReferenceFitsTest::twoPeaks,
                         new double[][] {{97, 0.009, 100, 65, 20, 70, 178, 16.5}, {94, 0.0105, 99, 63, 25, 71, 180, 20}},
                         new double[] {
-                            9.8778210871E+01, 1.0497276517E-02, 1.0048990633E+02, 6.7481111276E+01, 2.3129773360E+01,
-                            7.1994503004E+01, 1.7899805021E+02, 1.8389389025E+01
+                            9.8778210871E+01,
+                            1.0497276517E-02,
+                            1.0048990633E+02,
+                            6.7481111276E+01,
+                            2.3129773360E+01,
+                            7.1994503004E+01,
+                            1.7899805021E+02,
+                            1.8389389025E+01
                         },
                         UNKNOWN,
                         1.3158222432E+03),
@@ -202,12 +213,17 @@ class ReferenceFitsTest {
                         "Gauss2 (lower)",
                         "Gauss2",
                         ReferenceFitsTest::twoPeaks,
-                        new double[][] {
-                            {96, 0.009, 103, 106, 18, 72, 151, 18}, {98, 0.0105, 103, 105, 20, 73, 150, 20}
+                        new double[][] {{96, 0.009, 103, 106, 18, 72, 151, 18}, {98, 0.0105, 103, 105, 20, 73, 150, 20}
                         },
                         new double[] {
-                            9.9018328406E+01, 1.0994945399E-02, 1.0188022528E+02, 1.0703095519E+02, 2.3578584029E+01,
-                            7.2045589471E+01, 1.5327010194E+02, 1.9525972636E+01
+                            9.9018328406E+01,
+                            1.0994945399E-02,
+                            1.0188022528E+02,
+                            1.0703095519E+02,
+                            2.3578584029E+01,
+                            7.2045589471E+01,
+                            1.5327010194E+02,
+                            1.9525972636E+01
                         },
                         UNKNOWN,
                         1.2475282092E+03),
@@ -219,8 +235,14 @@ class ReferenceFitsTest {
                             {94.9, 0.009, 90.1, 113, 20, 73.8, 140, 20}, {96, 0.0096, 80, 110, 25, 74, 139, 25}
                         },
                         new double[] {
-                            9.8940368970E+01, 1.0945879335E-02, 1.0069553078E+02, 1.1163619459E+02, 2.3300500029E+01,
-                            7.3705031418E+01, 1.4776164251E+02, 1.9668221230E+01
+                            9.8940368970E+01,
+                            1.0945879335E-02,
+                            1.0069553078E+02,
+                            1.1163619459E+02,
+                            2.3300500029E+01,
+                            7.3705031418E+01,
+                            1.4776164251E+02,
+                            1.9668221230E+01
                         },
                         UNKNOWN,
                         1.2444846360E+03),

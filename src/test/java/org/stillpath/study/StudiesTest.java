@@ -85,6 +85,13 @@ class StudiesTest {
         return ((Doc.Amount) found).value();
     }
 
+    private static double[] numbers(Doc doc, Object... path) {
+        Doc found = at(doc, path);
+        assertThat(found).isInstanceOf(Doc.Items.class);
+        return ((Doc.Items) found)
+                .values().stream().mapToDouble(v -> ((Doc.Amount) v).value()).toArray();
+    }
+
     /** Back focal distance of the rod in closed form: cos(g l)/(n0 g sin(g l)), the paraxial constant of such a rod. */
     private static double focus(double n0, double g, double length) {
         return 1 / (n0 * g * Math.tan(g * length));
@@ -98,8 +105,8 @@ class StudiesTest {
                   watch: [quantities.back-focal-distance]
                 """);
         for (int i = 0; i < 5; i++) {
-            double[] in = ((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "inputs")).values();
-            double[] out = ((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "results")).values();
+            double[] in = numbers(o.doc(), "sweep", "rows", i, "inputs");
+            double[] out = numbers(o.doc(), "sweep", "rows", i, "results");
             assertThat(in[0]).isCloseTo(280 + 10 * i, within(1e-9));
             assertThat(out[0]).isCloseTo(focus(1.6, in[0], 2.5e-3), within(1e-12));
         }
@@ -120,9 +127,9 @@ class StudiesTest {
         double[] lengths = {2e-3, 2e-3, 2e-3, 3e-3, 3e-3, 3e-3};
         double[] g = {280, 300, 310, 280, 300, 310};
         for (int i = 0; i < 6; i++) {
-            assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "inputs")).values())
+            assertThat(numbers(o.doc(), "sweep", "rows", i, "inputs"))
                     .containsExactly(new double[] {lengths[i], g[i]}, within(1e-12));
-            assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "results")).values()[0])
+            assertThat(numbers(o.doc(), "sweep", "rows", i, "results")[0])
                     .isCloseTo(focus(1.6, g[i], lengths[i]), within(1e-12));
         }
     }
@@ -134,11 +141,9 @@ class StudiesTest {
                   sweep: {"train.surfaces[1].at": {values: [-1 mm, 1 mm, 2 mm]}}
                   watch: [quantities.back-focal-distance]
                 """);
-        assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", 0, "results")).values()[0])
-                .isNaN();
+        assertThat(numbers(o.doc(), "sweep", "rows", 0, "results")[0]).isNaN();
         assertThat(at(o.doc(), "sweep", "rows", 0, "fault").toString()).contains("put them in order");
-        assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", 2, "results")).values()[0])
-                .isCloseTo(focus(1.6, 300, 2e-3), within(1e-12));
+        assertThat(numbers(o.doc(), "sweep", "rows", 2, "results")[0]).isCloseTo(focus(1.6, 300, 2e-3), within(1e-12));
         assertThat(o.result().warnings().toString()).contains("1 of 3 runs could not be computed");
     }
 
@@ -205,7 +210,7 @@ class StudiesTest {
                         """), Sources.none(), new Tasks.Options(false), Studies.Means.plain());
         double[] wanted = {0, 0.5e-3, 1e-3, Double.NaN, Double.NaN};
         for (int i = 0; i < 5; i++) {
-            double got = ((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "results")).values()[0];
+            double got = numbers(o.doc(), "sweep", "rows", i, "results")[0];
             if (i != 2) {
                 // the third ray grazes the rim
                 assertThat(Double.valueOf(got)).isEqualTo(Double.valueOf(wanted[i]));
@@ -291,6 +296,30 @@ class StudiesTest {
         Doc four = run(study, new Studies.Means(4, Store.none(), Progress.SILENT, ""))
                 .doc();
         assertThat(four).isEqualTo(one);
+    }
+
+    @Test
+    void saysHowLongItWillTakeBeforeItBegins() {
+        List<String> told = new ArrayList<>();
+        Progress progress = new Progress() {
+            @Override
+            public void ahead(long runs, double seconds) {
+                assertThat(seconds).isBetween(1e-6, 600.0);
+                told.add(runs + " ahead");
+            }
+
+            @Override
+            public void at(String stage, long done, long total) {
+                told.add(stage + " " + done + " of " + total);
+            }
+        };
+        run("""
+                study:
+                  budget: {inputs: {media.rod.with.g: {standard: 0.003 1/mm}}, samples: 400}
+                  watch: [quantities.power]
+                """, new Studies.Means(1, Store.none(), progress, ""));
+        assertThat(told).startsWith("408 ahead", "sensitivities 0 of 8");
+        assertThat(told).endsWith("samples 400 of 400");
     }
 
     /** Keeps parts in memory and fails after some of them, as a killed process would. */
@@ -506,7 +535,7 @@ class StudiesTest {
             ""
         };
         for (int i = 0; i < wanted.length; i++) {
-            double got = ((Doc.Amounts) at(o.doc(), "batch", "rows", i, "results")).values()[0];
+            double got = numbers(o.doc(), "batch", "rows", i, "results")[0];
             if (Double.isNaN(wanted[i])) {
                 assertThat(got).isNaN();
                 assertThat(((Doc.Text) at(o.doc(), "batch", "rows", i, "fault")).value())
