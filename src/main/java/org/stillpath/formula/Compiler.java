@@ -8,6 +8,7 @@ import java.util.Collections;
 import java.util.Deque;
 import java.util.List;
 import java.util.Optional;
+import java.util.function.IntConsumer;
 import org.objectweb.asm.ClassWriter;
 import org.objectweb.asm.Label;
 import org.objectweb.asm.MethodVisitor;
@@ -81,8 +82,7 @@ final class Compiler {
     private static final int FIRST_FREE = 11;
 
     /** Names of the arrays of {@link Samples}, in the order of a program's outputs. */
-    private static final List<String> COMPONENTS =
-            List.of("value", "gx", "gy", "gz", "hxx", "hxy", "hxz", "hyy", "hyz", "hzz");
+    static final List<String> COMPONENTS = List.of("value", "gx", "gy", "gz", "hxx", "hxy", "hxz", "hyy", "hyz", "hzz");
 
     /**
      * A translated program.
@@ -393,7 +393,7 @@ final class Compiler {
                 code.visitVarInsn(Opcodes.DSTORE, locals[i]);
                 if (cells[i] >= 0) {
                     code.visitVarInsn(Opcodes.ALOAD, SCRATCH);
-                    push(cells[i]);
+                    push(code, cells[i]);
                     code.visitVarInsn(Opcodes.DLOAD, locals[i]);
                     code.visitInsn(Opcodes.DASTORE);
                 }
@@ -409,7 +409,7 @@ final class Compiler {
         private void fetch(int o) {
             if (locals[o] < 0 && o < start && cells[o] >= 0) {
                 code.visitVarInsn(Opcodes.ALOAD, SCRATCH);
-                push(cells[o]);
+                push(code, cells[o]);
                 code.visitInsn(Opcodes.DALOAD);
                 locals[o] = free.isEmpty() ? fresh() : free.pop();
                 code.visitVarInsn(Opcodes.DSTORE, locals[o]);
@@ -428,28 +428,9 @@ final class Compiler {
         private void load(int o) {
             Program.Instruction in = program.instructions().get(o);
             if (in.op() == Op.CONSTANT) {
-                number(in.value());
+                number(code, in.value());
             } else {
                 code.visitVarInsn(Opcodes.DLOAD, locals[o]);
-            }
-        }
-
-        private void number(double v) {
-            long bits = Double.doubleToRawLongBits(v);
-            if (bits == 0) {
-                code.visitInsn(Opcodes.DCONST_0);
-            } else if (v == 1) {
-                code.visitInsn(Opcodes.DCONST_1);
-            } else {
-                code.visitLdcInsn(v);
-            }
-        }
-
-        private void push(int n) {
-            if (n <= Byte.MAX_VALUE) {
-                code.visitIntInsn(Opcodes.BIPUSH, n);
-            } else {
-                code.visitIntInsn(Opcodes.SIPUSH, n);
             }
         }
 
@@ -468,7 +449,7 @@ final class Compiler {
             code.visitVarInsn(Opcodes.ILOAD, point);
             load(o);
             if (output == 0) {
-                number(0);
+                number(code, 0);
                 load(o);
                 code.visitInsn(Opcodes.DMUL);
                 code.visitInsn(Opcodes.DADD);
@@ -477,16 +458,10 @@ final class Compiler {
         }
 
         private void operation(Program.Instruction in) {
-            if (in.op() == Op.RECIPROCAL) {
-                number(1);
-            }
-            for (int k = 0; k < in.operands(); k++) {
-                load(in.operand(k));
-            }
             switch (in.op()) {
                 case ARGUMENT -> {
                     code.visitVarInsn(Opcodes.ALOAD, ARGUMENTS);
-                    push(in.index());
+                    push(code, in.index());
                     code.visitInsn(Opcodes.DALOAD);
                 }
                 case WAVELENGTH -> code.visitVarInsn(Opcodes.DLOAD, WAVELENGTH);
@@ -495,44 +470,13 @@ final class Compiler {
                 case Z -> coordinate(Z);
                 case CHART -> {
                     code.visitVarInsn(Opcodes.ALOAD, CHARTS);
-                    push(in.index() / 10);
+                    push(code, in.index() / 10);
                     code.visitInsn(Opcodes.AALOAD);
                     code.visitFieldInsn(Opcodes.GETFIELD, SAMPLES, COMPONENTS.get(in.index() % 10), "[D");
                     code.visitVarInsn(Opcodes.ILOAD, point);
                     code.visitInsn(Opcodes.DALOAD);
                 }
-                case ADD -> code.visitInsn(Opcodes.DADD);
-                case SUBTRACT -> code.visitInsn(Opcodes.DSUB);
-                case MULTIPLY -> code.visitInsn(Opcodes.DMUL);
-                case NEGATE -> code.visitInsn(Opcodes.DNEG);
-                case RECIPROCAL -> code.visitInsn(Opcodes.DDIV);
-                case RECIPROCAL_OR_ZERO -> call(Special.class, "reciprocalOrZero", in);
-                case UNLESS_ZERO -> call(Special.class, "unlessZero", in);
-                case IF_LESS -> call(Special.class, "ifLess", in);
-                case POWER -> call(Math.class, "pow", in);
-                case SQRT -> call(Math.class, "sqrt", in);
-                case EXP -> call(Math.class, "exp", in);
-                case LOG -> call(Math.class, "log", in);
-                case LOG10 -> call(Math.class, "log10", in);
-                case SIN -> call(Math.class, "sin", in);
-                case COS -> call(Math.class, "cos", in);
-                case TAN -> call(Math.class, "tan", in);
-                case ASIN -> call(Math.class, "asin", in);
-                case ACOS -> call(Math.class, "acos", in);
-                case ATAN -> call(Math.class, "atan", in);
-                case ATAN2 -> call(Math.class, "atan2", in);
-                case SINH -> call(Math.class, "sinh", in);
-                case COSH -> call(Math.class, "cosh", in);
-                case TANH -> call(Math.class, "tanh", in);
-                case SECH -> call(Special.class, "sech", in);
-                case ERF -> call(Special.class, "erf", in);
-                case E1 -> call(Special.class, "e1", in);
-                case ABS -> call(Math.class, "abs", in);
-                case SIGN -> call(Math.class, "signum", in);
-                case MIN -> call(Math.class, "min", in);
-                case MAX -> call(Math.class, "max", in);
-                case CONSTANT, SQUARE_R, SQUARE_RHO, SCALE, PRODUCT, TIMES, NORM ->
-                    throw new IllegalArgumentException("no operation of a program: " + in.op());
+                default -> operate(code, in, this::load);
             }
         }
 
@@ -541,10 +485,74 @@ final class Compiler {
             code.visitVarInsn(Opcodes.ILOAD, point);
             code.visitInsn(Opcodes.DALOAD);
         }
+    }
 
-        private void call(Class<?> owner, String name, Program.Instruction in) {
-            String descriptor = "(" + "D".repeat(in.operands()) + ")D";
-            code.visitMethodInsn(Opcodes.INVOKESTATIC, Type.getInternalName(owner), name, descriptor, false);
+    /** Pushes a number. */
+    static void number(MethodVisitor code, double v) {
+        long bits = Double.doubleToRawLongBits(v);
+        if (bits == 0) {
+            code.visitInsn(Opcodes.DCONST_0);
+        } else if (v == 1) {
+            code.visitInsn(Opcodes.DCONST_1);
+        } else {
+            code.visitLdcInsn(v);
         }
+    }
+
+    /** Pushes a small whole number. */
+    static void push(MethodVisitor code, int n) {
+        if (n <= Byte.MAX_VALUE) {
+            code.visitIntInsn(Opcodes.BIPUSH, n);
+        } else {
+            code.visitIntInsn(Opcodes.SIPUSH, n);
+        }
+    }
+
+    /** Writes an operation on operands, each brought to the stack by {@code load}. */
+    static void operate(MethodVisitor code, Program.Instruction in, IntConsumer load) {
+        if (in.op() == Op.RECIPROCAL) {
+            number(code, 1);
+        }
+        for (int k = 0; k < in.operands(); k++) {
+            load.accept(in.operand(k));
+        }
+        switch (in.op()) {
+            case ADD -> code.visitInsn(Opcodes.DADD);
+            case SUBTRACT -> code.visitInsn(Opcodes.DSUB);
+            case MULTIPLY -> code.visitInsn(Opcodes.DMUL);
+            case NEGATE -> code.visitInsn(Opcodes.DNEG);
+            case RECIPROCAL -> code.visitInsn(Opcodes.DDIV);
+            case RECIPROCAL_OR_ZERO -> call(code, Special.class, "reciprocalOrZero", in);
+            case UNLESS_ZERO -> call(code, Special.class, "unlessZero", in);
+            case IF_LESS -> call(code, Special.class, "ifLess", in);
+            case POWER -> call(code, Math.class, "pow", in);
+            case SQRT -> call(code, Math.class, "sqrt", in);
+            case EXP -> call(code, Math.class, "exp", in);
+            case LOG -> call(code, Math.class, "log", in);
+            case LOG10 -> call(code, Math.class, "log10", in);
+            case SIN -> call(code, Math.class, "sin", in);
+            case COS -> call(code, Math.class, "cos", in);
+            case TAN -> call(code, Math.class, "tan", in);
+            case ASIN -> call(code, Math.class, "asin", in);
+            case ACOS -> call(code, Math.class, "acos", in);
+            case ATAN -> call(code, Math.class, "atan", in);
+            case ATAN2 -> call(code, Math.class, "atan2", in);
+            case SINH -> call(code, Math.class, "sinh", in);
+            case COSH -> call(code, Math.class, "cosh", in);
+            case TANH -> call(code, Math.class, "tanh", in);
+            case SECH -> call(code, Special.class, "sech", in);
+            case ERF -> call(code, Special.class, "erf", in);
+            case E1 -> call(code, Special.class, "e1", in);
+            case ABS -> call(code, Math.class, "abs", in);
+            case SIGN -> call(code, Math.class, "signum", in);
+            case MIN -> call(code, Math.class, "min", in);
+            case MAX -> call(code, Math.class, "max", in);
+            default -> throw new IllegalArgumentException("no operation of a program: " + in.op());
+        }
+    }
+
+    private static void call(MethodVisitor code, Class<?> owner, String name, Program.Instruction in) {
+        String descriptor = "(" + "D".repeat(in.operands()) + ")D";
+        code.visitMethodInsn(Opcodes.INVOKESTATIC, Type.getInternalName(owner), name, descriptor, false);
     }
 }

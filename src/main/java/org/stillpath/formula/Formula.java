@@ -174,7 +174,7 @@ public final class Formula {
     }
 
     /** The tree as nodes of a graph; the number of its root. */
-    private int build(Graph g) {
+    int build(Graph g) {
         int[] ids = new int[tree.size()];
         for (int i = 0; i < ids.length; i++) {
             ids[i] = node(g, tree.terms().get(i), ids);

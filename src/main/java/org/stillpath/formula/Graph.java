@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.Optional;
 import java.util.TreeMap;
 
 /**
@@ -484,6 +485,28 @@ final class Graph {
         int invariant = isNumber(outer) ? one : bare(outer);
         int inner = bare(id);
         return level(id) == Level.PLACE && value(number) > 0 && evenPowers(invariant) && evenPowers(inner);
+    }
+
+    /** The square of an expression that is a root, without the root; none if it is not. */
+    Optional<Integer> squareOfRoot(int a) {
+        Node root = node(bare(a));
+        if (root.op() != Op.SQRT && root.op() != Op.NORM) {
+            return Optional.empty();
+        }
+        return Optional.of(multiply(power(coefficient(a), 2), root.operand(0)));
+    }
+
+    /** The expression less 1, taken from a term that does not depend on the place, where it has one, so that no digits are lost. */
+    int lessOne(int a) {
+        Node n = node(a);
+        if (n.op() == Op.ADD) {
+            for (int k = 0; k < 2; k++) {
+                if (level(n.operand(k)) != Level.PLACE) {
+                    return add(add(n.operand(k), minusOne), n.operand(1 - k));
+                }
+            }
+        }
+        return add(a, minusOne);
     }
 
     int abs(int a) {

@@ -44,6 +44,21 @@ public final class Samples {
         hzz = new double[capacity];
     }
 
+    /** Room for as many points as another has, whose second derivatives it shares. */
+    public Samples(Samples other) {
+        int capacity = other.capacity();
+        value = new double[capacity];
+        gx = new double[capacity];
+        gy = new double[capacity];
+        gz = new double[capacity];
+        hxx = other.hxx;
+        hxy = other.hxy;
+        hxz = other.hxz;
+        hyy = other.hyy;
+        hyz = other.hyz;
+        hzz = other.hzz;
+    }
+
     /** Makes a point undefined: NaN in all arrays that {@code order} asks for. */
     public void undefine(Order order, int point) {
         value[point] = Double.NaN;

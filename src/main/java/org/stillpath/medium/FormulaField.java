@@ -9,6 +9,7 @@ import java.util.concurrent.ConcurrentHashMap;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Formula;
+import org.stillpath.formula.IndexBlocks;
 import org.stillpath.formula.Kink;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
@@ -43,6 +44,13 @@ public final class FormulaField implements ScalarField {
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
         formula.sample(x, y, z, count, arguments, wavelength, chart, order, out);
+    }
+
+    @Override
+    public Optional<ManyPoints> manyPoints(boolean fromOne) {
+        return IndexBlocks.of(formula, fromOne)
+                .map(blocks -> (x, y, z, count, wavelength, order, out) ->
+                        blocks.sample(x, y, z, count, arguments, wavelength, chart, order, out));
     }
 
     @Override

@@ -56,6 +56,15 @@ public interface IndexField {
         return this;
     }
 
+    /**
+     * The same field made ready for bundles of rays, which sample many points at once: it may be quicker for those, dear to make,
+     * and differ in the last digit. This field itself where nothing is gained. What a point gives never depends on the points
+     * beside it.
+     */
+    default IndexField forBundles() {
+        return this;
+    }
+
     /** Says in words why the field is undefined at a point (metres), with the place; empty text where it is defined. */
     default String explain(double x, double y, double z) {
         return "";

@@ -32,6 +32,8 @@ final class PlacedIndex implements IndexField {
      * one; all its fields are final, so that either serves.
      */
     private final @Nullable PlacedIndex[] pieces;
+    /** Samples many points of this field at once; null where it was not made ready for that. */
+    private final ScalarField.@Nullable ManyPoints many;
 
     /**
      * Places a scalar field.
@@ -70,10 +72,15 @@ final class PlacedIndex implements IndexField {
                 .toList();
         this.scratch = ThreadLocal.withInitial(Scratch::new);
         this.pieces = new PlacedIndex[seams.size() == 1 ? seams.get(0).count() + 1 : 0];
+        this.many = null;
     }
 
     /** A piece of a field: the same but for its scalar, and smooth. */
     private PlacedIndex(PlacedIndex whole, ScalarField piece) {
+        this(whole, piece, null);
+    }
+
+    private PlacedIndex(PlacedIndex whole, ScalarField piece, ScalarField.@Nullable ManyPoints many) {
         this.scalar = piece;
         this.fromOne = whole.fromOne;
         this.excessFactor = whole.excessFactor;
@@ -85,10 +92,34 @@ final class PlacedIndex implements IndexField {
         this.seams = List.of();
         this.scratch = whole.scratch;
         this.pieces = new PlacedIndex[0];
+        this.many = many;
+    }
+
+    @Override
+    public IndexField forBundles() {
+        if (!seams.isEmpty() || excessFactor != 0) {
+            return this;
+        }
+        return scalar.manyPoints(fromOne)
+                .map(ready -> new PlacedIndex(this, scalar, ready))
+                .orElse(this);
     }
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
+        if (many != null && order != Order.VALUE) {
+            if (moved) {
+                Scratch s = scratch.get().with(count);
+                carry(x, y, z, count, s);
+                many.sample(s.x, s.y, s.z, count, wavelength, order, out);
+                for (int i = 0; turned && i < count; i++) {
+                    turn(order, out, i);
+                }
+            } else {
+                many.sample(x, y, z, count, wavelength, order, out);
+            }
+            return;
+        }
         if (moved) {
             Scratch s = scratch.get().with(count);
             carry(x, y, z, count, s);

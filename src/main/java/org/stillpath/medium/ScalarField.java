@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.List;
+import java.util.Optional;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
@@ -27,6 +28,22 @@ public interface ScalarField {
      */
     default ScalarField on(Chart chart) {
         return this;
+    }
+
+    /**
+     * The same quantity, taken as an index n or as n − 1, made ready for many points at once; none where that gains nothing.
+     *
+     * @param fromOne whether the quantity is n − 1
+     */
+    default Optional<ManyPoints> manyPoints(boolean fromOne) {
+        return Optional.empty();
+    }
+
+    /** Samples n² − 1 and half the derivatives of n² at many points. Immutable, for any number of threads. */
+    @FunctionalInterface
+    interface ManyPoints {
+        /** As {@link ScalarField#sample}, {@code order} being gradient or Hessian. */
+        void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out);
     }
 
     /** Whether the quantity depends on the height alone, or on nothing. */

@@ -27,7 +27,7 @@ public final class FanSearch {
     /** The same where a change of sign with slopes of one sign at both ends is all there is to see. */
     private static final double PLAIN = 5e-2;
     /** Tolerance at which the fan is shot, and at which zeros are narrowed. */
-    private static final double LOOSE = 1e-6;
+    private static final double LOOSE = 3e-6;
 
     private static final double TIGHT = 1e-10;
     /** What a narrowed zero may miss by, as a part of the scale; what misses by more was a jump. */

@@ -28,7 +28,7 @@ public final class PathSearch {
     /** Most rays of a search. */
     static final int MOST_SHOTS = 20_000;
 
-    private static final int FAN = 12;
+    private static final int FAN = 8;
     /** What a path may miss by, as a part of the chord, to be worth mending by multiple shooting. */
     private static final double MENDABLE = 1e-3;
 
@@ -37,7 +37,7 @@ public final class PathSearch {
 
     private static final double NULL_DIRECTION = 1e-6;
     /** The fan crowds toward its axis down to this angle, rad. */
-    private static final double INNERMOST = 1e-5;
+    private static final double INNERMOST = 1e-4;
 
     private final Query query;
     private final double chord;

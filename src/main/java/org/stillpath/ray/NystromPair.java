@@ -1,5 +1,8 @@
 package org.stillpath.ray;
 
+import java.util.Arrays;
+import java.util.stream.IntStream;
+
 /**
  * Coefficients of an explicit Runge-Kutta-Nyström pair for q'' = f(q):
  *
@@ -20,6 +23,11 @@ package org.stillpath.ray;
  * @param bp weights of the momentum
  * @param be differences of {@code b} to the lower formula
  * @param bpe differences of {@code bp} to the lower formula
+ * @param used for each stage the stages whose weights in it are not 0
+ * @param usedInPlace the stages that the place needs, with its error
+ * @param usedInMomentum the stages that the momentum needs, with its error
+ * @param inPlace those that it needs without its error
+ * @param inMomentum likewise
  */
 record NystromPair(
         int order,
@@ -30,7 +38,45 @@ record NystromPair(
         double[] b,
         double[] bp,
         double[] be,
-        double[] bpe) {
+        double[] bpe,
+        int[][] used,
+        int[] usedInPlace,
+        int[] usedInMomentum,
+        int[] inPlace,
+        int[] inMomentum) {
+    private NystromPair(
+            int order,
+            int lower,
+            boolean last,
+            double[] c,
+            double[][] a,
+            double[] b,
+            double[] bp,
+            double[] be,
+            double[] bpe) {
+        this(
+                order,
+                lower,
+                last,
+                c,
+                a,
+                b,
+                bp,
+                be,
+                bpe,
+                Arrays.stream(a).map(row -> used(row)).toArray(int[][]::new),
+                used(b, be),
+                used(bp, bpe),
+                used(b),
+                used(bp));
+    }
+
+    private static int[] used(double[]... weights) {
+        return IntStream.range(0, weights[0].length)
+                .filter(j -> Arrays.stream(weights).anyMatch(w -> w[j] != 0))
+                .toArray();
+    }
+
     /** 6(4)6FM. */
     static final NystromPair SIX_FOUR = new NystromPair(
             6,

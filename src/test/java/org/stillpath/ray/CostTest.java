@@ -17,7 +17,7 @@ class CostTest {
     @CsvSource({
         "ROD, 1e-6, 67", "ROD, 1e-9, 114", "ROD, 1e-12, 127",
         "SPHERE, 1e-6, 67", "SPHERE, 1e-9, 118", "SPHERE, 1e-12, 125",
-        "SLOPE, 1e-6, 51", "SLOPE, 1e-9, 89", "SLOPE, 1e-12, 89",
+        "SLOPE, 1e-6, 52", "SLOPE, 1e-9, 89", "SLOPE, 1e-12, 89",
         "FISHEYE, 1e-6, 132", "FISHEYE, 1e-9, 204", "FISHEYE, 1e-12, 274",
         "KEPLER, 1e-6, 138", "KEPLER, 1e-9, 213", "KEPLER, 1e-12, 288"
     })
