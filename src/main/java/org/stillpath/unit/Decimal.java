@@ -89,7 +89,8 @@ public final class Decimal {
         double top = digits * numerator;
         double bottom = denominator * POWERS[scale];
         // a product is exact where nothing is left of it
-        boolean exact = Math.fma((double) digits, numerator, -top) == 0 && Math.fma(denominator, POWERS[scale], -bottom) == 0;
+        boolean exact =
+                Math.fma((double) digits, numerator, -top) == 0 && Math.fma(denominator, POWERS[scale], -bottom) == 0;
         return !exact ? Double.NaN : start == 1 && number.charAt(0) != '+' ? -top / bottom : top / bottom;
     }
 

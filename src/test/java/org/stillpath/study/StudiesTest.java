@@ -248,8 +248,7 @@ class StudiesTest {
      */
     @Test
     void aSightNearACausticContradictsItsLinearBudget() {
-        Outcome near =
-                Studies.run(read(HOT_ROAD), Sources.none(), new Tasks.Options(false), Studies.Means.plain());
+        Outcome near = Studies.run(read(HOT_ROAD), Sources.none(), new Tasks.Options(false), Studies.Means.plain());
         Doc mc = at(near.doc(), "budget", "images[0].launch-elevation", "monte-carlo");
         assertThat(at(mc, "agrees")).isEqualTo(new Doc.Flag(false));
         long missing = ((Doc.Count) at(mc, "missing")).value();
@@ -289,7 +288,11 @@ class StudiesTest {
             // k = 503 p/T² (0.0343 + dT/dh), p in hPa (geodesists' usual formula, from memory)
             assertThat(image.coefficient().orElseThrow())
                     .isCloseTo(503 * 1013.25 / (288.15 * 288.15) * (0.0343 - 0.0082), within(0.006));
-            variants.append("    line").append(i).append(": {to.distance: ").append(lines[i]).append("}\n");
+            variants.append("    line")
+                    .append(i)
+                    .append(": {to.distance: ")
+                    .append(lines[i])
+                    .append("}\n");
             double[] both = {image.launch(), -image.arrival()};
             String[] names = {"launch-elevation", "back-elevation"};
             for (int k = 0; k < 2; k++) {
@@ -306,7 +309,8 @@ class StudiesTest {
                 Studies.Means.plain());
         String unknown = "media.field.with.lapse";
         assertThat(number(o.doc(), "fit", "unknowns", unknown, "value")).isCloseTo(8.2e-3, within(1e-8));
-        // both refraction angles of a line of length S are k S/(2R): six of them, each known to 1 arcsec, give by the formula
+        // both refraction angles of a line of length S are k S/(2R): six of them, each known to 1 arcsec, give by the
+        // formula
         double slope = 503 * 1013.25 / (288.15 * 288.15) / (2 * 6371e3) * Math.sqrt(2 * (9e6 + 25e6 + 64e6));
         double u = Math.PI / 648_000 / slope;
         assertThat(number(o.doc(), "fit", "unknowns", unknown, "standard-uncertainty"))
