@@ -216,7 +216,7 @@ class StudiesTest {
                 assertThat(Double.valueOf(got)).isEqualTo(Double.valueOf(wanted[i]));
             }
         }
-        assertThat(o.result().warnings().toString()).contains("have no rays 0 position 1");
+        assertThat(o.result().warnings().toString()).contains("have no position 1 of ray 0");
     }
 
     private static final String HOT_ROAD = """
