@@ -5,12 +5,16 @@ import java.util.Locale;
 import org.stillpath.study.Progress;
 
 /**
- * A progress bar on one line of a terminal's standard error, with the time that remains at the rate so far. Shown after a
- * second of work at the earliest and a few times a second at most; wiped away at the end.
+ * A progress bar on one line of a terminal's standard error, with the time that remains at the rate so far; before that, how
+ * long it will all take at most. Shown after a second of work at the earliest and a few times a second at most; wiped away
+ * at the end.
  */
 final class ProgressBar implements Progress, AutoCloseable {
     private static final long FIRST = 1_000_000_000L;
     private static final long EACH = 200_000_000L;
+    /** Shorter work is not announced, seconds. */
+    private static final double WORTH_TELLING = 2;
+
     private static final int CELLS = 30;
     private static final int WIDTH = 79;
 
@@ -29,6 +33,15 @@ final class ProgressBar implements Progress, AutoCloseable {
     /** Whether standard error is a terminal: the launcher asks the shell, since Java cannot. */
     static boolean isTerminal() {
         return Boolean.getBoolean("stillpath.terminal");
+    }
+
+    @Override
+    public synchronized void ahead(long runs, double seconds) {
+        if (seconds > WORTH_TELLING) {
+            shown = true;
+            err.print("\r" + padded(runs + " runs, about " + time(seconds) + " at most"));
+            err.flush();
+        }
     }
 
     @Override

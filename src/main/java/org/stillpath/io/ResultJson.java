@@ -179,8 +179,6 @@ public final class ResultJson {
                 doc(item);
             }
             json.writeEndArray();
-        } else if (doc instanceof Doc.Amounts amounts) {
-            array(amounts.values());
         } else if (doc instanceof Doc.Amount amount) {
             if (Double.isFinite(amount.value())) {
                 json.writeNumber(amount.value());

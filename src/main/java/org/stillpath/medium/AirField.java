@@ -17,7 +17,7 @@ final class AirField implements ScalarField {
     private final Pressure pressure;
     private final Humidity humidity;
     private final MergedSeams seams;
-    private final ThreadLocal<Work> work;
+    private final Spare<Work> work;
 
     private static final class Work {
         Samples t = new Samples(1);
@@ -38,7 +38,7 @@ final class AirField implements ScalarField {
     }
 
     AirField(AirLaw law, AirLaw.Dispersion dispersion, ScalarField temperature, Pressure pressure, Humidity humidity) {
-        this(law, dispersion, temperature, pressure, humidity, ThreadLocal.withInitial(Work::new));
+        this(law, dispersion, temperature, pressure, humidity, new Spare<>(Work::new));
     }
 
     private AirField(
@@ -47,7 +47,7 @@ final class AirField implements ScalarField {
             ScalarField temperature,
             Pressure pressure,
             Humidity humidity,
-            ThreadLocal<Work> work) {
+            Spare<Work> work) {
         this.law = law;
         this.dispersion = dispersion;
         this.temperature = temperature;
@@ -62,7 +62,7 @@ final class AirField implements ScalarField {
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
-        Work k = work.get().with(count);
+        Work k = work.take().with(count);
         temperature.sample(x, y, z, count, Double.NaN, order, k.t);
         humidity.quantity().sample(x, y, z, count, Double.NaN, order, k.w);
         pressure.sample(x, y, z, count, k.t, k.w, order, k.p);
@@ -88,6 +88,7 @@ final class AirField implements ScalarField {
                 spread(k, !dry, order, out, i);
             }
         }
+        work.give(k);
     }
 
     /** Turns derivatives by T, p, e into derivatives by T, p and the humidity's quantity, in place. */
@@ -229,7 +230,7 @@ final class AirField implements ScalarField {
                 return why;
             }
         }
-        Work k = work.get().with(1);
+        Work k = new Work();
         double[] xs = {x};
         double[] ys = {y};
         double[] zs = {z};

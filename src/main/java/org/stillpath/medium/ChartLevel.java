@@ -8,7 +8,7 @@ import org.stillpath.formula.Order;
 final class ChartLevel implements Level {
     private final Coordinate coordinate;
     private final Chart chart;
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final Spare<Scratch> scratch = new Spare<>(Scratch::new);
 
     ChartLevel(Coordinate coordinate, Chart chart) {
         this.coordinate = coordinate;
@@ -17,12 +17,14 @@ final class ChartLevel implements Level {
 
     @Override
     public double value(double x, double y, double z, double[] gradient) {
-        Scratch s = scratch.get().point(x, y, z);
+        Scratch s = scratch.take().point(x, y, z);
         chart.sample(coordinate, s.x, s.y, s.z, 1, Order.GRADIENT, s.samples);
         gradient[0] = s.samples.gx[0];
         gradient[1] = s.samples.gy[0];
         gradient[2] = s.samples.gz[0];
-        return s.samples.value[0];
+        double value = s.samples.value[0];
+        scratch.give(s);
+        return value;
     }
 
     @Override

@@ -37,7 +37,7 @@ final class Hydrostatic implements Pressure {
     private final ScalarField temperature;
     private final double low;
     private final double high;
-    private final ThreadLocal<Work> work;
+    private final Spare<Work> work;
 
     private static final class Work {
         final double[] saturated = new double[Saturation.JET];
@@ -56,7 +56,7 @@ final class Hydrostatic implements Pressure {
             ScalarField temperature,
             double low,
             double high,
-            ThreadLocal<Work> work) {
+            Spare<Work> work) {
         this.table = table;
         this.full = full;
         this.humidity = humidity;
@@ -93,8 +93,7 @@ final class Hydrostatic implements Pressure {
                 pressure,
                 height,
                 breaks.stream().mapToDouble(Double::doubleValue).toArray());
-        return new Hydrostatic(
-                table, full, moist, Chart.FLAT, t, table.low(), table.high(), ThreadLocal.withInitial(Work::new));
+        return new Hydrostatic(table, full, moist, Chart.FLAT, t, table.low(), table.high(), new Spare<>(Work::new));
     }
 
     private static HydrostaticTable.Rate rate(ScalarField t, Humidity moist, boolean full) {
@@ -141,7 +140,7 @@ final class Hydrostatic implements Pressure {
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, Samples t, Samples w, Order order, Samples out) {
-        Work work = this.work.get();
+        Work work = this.work.take();
         boolean dry = humidity.isNone();
         for (int i = 0; i < count; i++) {
             double h = z[i];
@@ -177,6 +176,7 @@ final class Hydrostatic implements Pressure {
                 out.hzz[i] = over * (-kSlope * m - k * rise + k * m * over * t.gz[i]);
             }
         }
+        this.work.give(work);
     }
 
     /**

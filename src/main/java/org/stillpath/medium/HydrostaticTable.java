@@ -30,6 +30,11 @@ final class HydrostaticTable {
     private static final int MOST_PIECES = 20_000;
     private static final double COLDEST = 1;
     private static final double HOTTEST = 1e4;
+    /** cos(π j k/DEGREE). */
+    private static final double[][] COSINES = cosines();
+
+    private static final double[][] FROM_LOW = integrals(true);
+    private static final double[][] FROM_HIGH = integrals(false);
 
     /** What the equation is. */
     interface Rate {
@@ -137,8 +142,8 @@ final class HydrostaticTable {
         private final Rate rate;
         private final double origin;
         private final double[] breaks;
-        /** cos(π j k/DEGREE). */
-        private final double[][] cosines = new double[DEGREE + 1][DEGREE + 1];
+        /** Rate at the end of the last piece, for a first guess of the next; 0 where nothing is known. */
+        private double slope;
 
         private final double[] heights = new double[DEGREE + 1];
         private final double[] pressures = new double[DEGREE + 1];
@@ -152,11 +157,6 @@ final class HydrostaticTable {
             this.origin = origin;
             this.breaks = breaks.clone();
             Arrays.sort(this.breaks);
-            for (int j = 0; j <= DEGREE; j++) {
-                for (int k = 0; k <= DEGREE; k++) {
-                    cosines[j][k] = Math.cos(Math.PI * ((j * k) % (2 * DEGREE)) / DEGREE);
-                }
-            }
         }
 
         /** Pieces from the origin on, up (1) or down (−1). */
@@ -166,6 +166,7 @@ final class HydrostaticTable {
             double p = pressure;
             double last = direction > 0 ? HIGHEST : LOWEST;
             double width = SHORTEST_USUAL;
+            slope = 0;
             while (direction * (last - at) > 0 && list.size() < MOST_PIECES) {
                 double size = Math.min(Math.abs(at), Math.abs(at - origin));
                 double usual = Math.max(SHORTEST_USUAL, Math.min(LONGEST, 0.2 * size));
@@ -181,8 +182,9 @@ final class HydrostaticTable {
                     return list;
                 }
                 width = Math.abs(end - at);
+                slope = rates[direction > 0 ? 0 : DEGREE];
                 list.add(new Piece(Math.min(at, end), Math.max(at, end), p, trimmed()));
-                p *= Math.exp(sum(direction > 0 ? 1 : -1));
+                p *= Math.exp(sum(integral, direction > 0 ? 1 : -1));
                 at = end;
             }
             return list;
@@ -205,9 +207,10 @@ final class HydrostaticTable {
             double half = (high - low) / 2;
             double middle = (high + low) / 2;
             for (int j = 0; j <= DEGREE; j++) {
-                heights[j] = j == 0 ? high : j == DEGREE ? low : middle + half * cosines[1][j];
-                pressures[j] = p;
+                heights[j] = j == 0 ? high : j == DEGREE ? low : middle + half * COSINES[1][j];
+                pressures[j] = rate.coupled() ? p * Math.exp(slope * (heights[j] - known)) : p;
             }
+            double[][] integrals = known == low ? FROM_LOW : FROM_HIGH;
             double change = Double.POSITIVE_INFINITY;
             for (int turn = 0; turn < (rate.coupled() ? 30 : 1) && change > 4e-16 * p; turn++) {
                 rate.at(heights, pressures, rates);
@@ -218,48 +221,22 @@ final class HydrostaticTable {
                 if (unsound) {
                     return false;
                 }
-                integrate(half, known == low);
                 change = 0;
                 for (int j = 0; j <= DEGREE; j++) {
+                    double[] row = integrals[j];
                     double y = 0;
                     for (int k = 0; k <= DEGREE; k++) {
-                        y += integral[k] * cosines[k][j];
+                        y += row[k] * rates[k];
                     }
-                    y += integral[DEGREE + 1] * cosines[1][j] * cosines[DEGREE][j];
-                    double fresh = p * Math.exp(y);
+                    double fresh = p * Math.exp(half * y);
                     change = Math.max(change, Math.abs(fresh - pressures[j]));
                     pressures[j] = fresh;
                 }
             }
+            integrate(rates, half, known == low, terms, integral);
             double tail = Math.max(
                     Math.abs(terms[DEGREE]), Math.max(Math.abs(terms[DEGREE - 1]), Math.abs(terms[DEGREE - 2])));
             return half * tail / DEGREE <= TOLERANCE;
-        }
-
-        private void integrate(double half, boolean fromLow) {
-            for (int k = 0; k <= DEGREE; k++) {
-                double sum = 0.5 * (rates[0] + rates[DEGREE] * cosines[k][DEGREE]);
-                for (int j = 1; j < DEGREE; j++) {
-                    sum += rates[j] * cosines[k][j];
-                }
-                terms[k] = sum * (k == 0 || k == DEGREE ? 1.0 : 2.0) / DEGREE;
-            }
-            Arrays.fill(integral, 0);
-            integral[1] = half * (terms[0] - terms[2] / 2);
-            for (int k = 2; k <= DEGREE + 1; k++) {
-                double above = k + 1 <= DEGREE ? terms[k + 1] : 0;
-                integral[k] = half * (terms[k - 1] - above) / (2 * k);
-            }
-            integral[0] = -sum(fromLow ? -1 : 1);
-        }
-
-        /** The value of {@link #integral} at an end, s = ±1. */
-        private double sum(int s) {
-            double sum = 0;
-            for (int k = DEGREE + 1; k >= 0; k--) {
-                sum += s < 0 && k % 2 == 1 ? -integral[k] : integral[k];
-            }
-            return sum;
         }
 
         private double[] trimmed() {
@@ -269,6 +246,66 @@ final class HydrostaticTable {
             }
             return Arrays.copyOf(integral, n);
         }
+    }
+
+    private static double[][] cosines() {
+        double[][] cosines = new double[DEGREE + 1][DEGREE + 1];
+        for (int j = 0; j <= DEGREE; j++) {
+            for (int k = 0; k <= DEGREE; k++) {
+                cosines[j][k] = Math.cos(Math.PI * ((j * k) % (2 * DEGREE)) / DEGREE);
+            }
+        }
+        return cosines;
+    }
+
+    /**
+     * What each value at a Chebyshev point adds to the integral up to each of them, over -1..1: the way over the
+     * coefficients once and for all, since every turn of every piece takes it.
+     */
+    private static double[][] integrals(boolean fromLow) {
+        double[][] matrix = new double[DEGREE + 1][DEGREE + 1];
+        double[] terms = new double[DEGREE + 1];
+        double[] integral = new double[DEGREE + 2];
+        for (int i = 0; i <= DEGREE; i++) {
+            double[] one = new double[DEGREE + 1];
+            one[i] = 1;
+            integrate(one, 1, fromLow, terms, integral);
+            for (int j = 0; j <= DEGREE; j++) {
+                double y = integral[DEGREE + 1] * COSINES[1][j] * COSINES[DEGREE][j];
+                for (int k = 0; k <= DEGREE; k++) {
+                    y += integral[k] * COSINES[k][j];
+                }
+                matrix[j][i] = y;
+            }
+        }
+        return matrix;
+    }
+
+    /** Chebyshev coefficients of values and of their integral from one end. */
+    private static void integrate(double[] values, double half, boolean fromLow, double[] terms, double[] integral) {
+        for (int k = 0; k <= DEGREE; k++) {
+            double sum = 0.5 * (values[0] + values[DEGREE] * COSINES[k][DEGREE]);
+            for (int j = 1; j < DEGREE; j++) {
+                sum += values[j] * COSINES[k][j];
+            }
+            terms[k] = sum * (k == 0 || k == DEGREE ? 1.0 : 2.0) / DEGREE;
+        }
+        Arrays.fill(integral, 0);
+        integral[1] = half * (terms[0] - terms[2] / 2);
+        for (int k = 2; k <= DEGREE + 1; k++) {
+            double above = k + 1 <= DEGREE ? terms[k + 1] : 0;
+            integral[k] = half * (terms[k - 1] - above) / (2 * k);
+        }
+        integral[0] = -sum(integral, fromLow ? -1 : 1);
+    }
+
+    /** The value of an integral at an end, s = ±1. */
+    private static double sum(double[] integral, int s) {
+        double sum = 0;
+        for (int k = DEGREE + 1; k >= 0; k--) {
+            sum += s < 0 && k % 2 == 1 ? -integral[k] : integral[k];
+        }
+        return sum;
     }
 
     /** Whether a temperature is one that air may have, so that the equation goes on. */

@@ -26,7 +26,7 @@ final class PlacedIndex implements IndexField {
     private final boolean turned;
     private final List<Level> limits;
     private final List<Seam> seams;
-    private final ThreadLocal<Scratch> scratch;
+    private final Spare<Scratch> scratch;
     /**
      * Pieces between the knots of a single seam, made when they are first asked for. Several threads may make the same
      * one; all its fields are final, so that either serves.
@@ -70,7 +70,7 @@ final class PlacedIndex implements IndexField {
         this.seams = scalar.seams(wavelength).stream()
                 .map(s -> new Seam(FramedLevel.of(s.coordinate(), frame), s.knots()))
                 .toList();
-        this.scratch = ThreadLocal.withInitial(Scratch::new);
+        this.scratch = new Spare<>(Scratch::new);
         this.pieces = new PlacedIndex[seams.size() == 1 ? seams.get(0).count() + 1 : 0];
         this.many = null;
     }
@@ -109,9 +109,10 @@ final class PlacedIndex implements IndexField {
     public void sample(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
         if (many != null && order != Order.VALUE) {
             if (moved) {
-                Scratch s = scratch.get().with(count);
+                Scratch s = scratch.take().with(count);
                 carry(x, y, z, count, s);
                 many.sample(s.x, s.y, s.z, count, wavelength, order, out);
+                scratch.give(s);
                 for (int i = 0; turned && i < count; i++) {
                     turn(order, out, i);
                 }
@@ -121,9 +122,10 @@ final class PlacedIndex implements IndexField {
             return;
         }
         if (moved) {
-            Scratch s = scratch.get().with(count);
+            Scratch s = scratch.take().with(count);
             carry(x, y, z, count, s);
             scalar.sample(s.x, s.y, s.z, count, wavelength, order, out);
+            scratch.give(s);
         } else {
             scalar.sample(x, y, z, count, wavelength, order, out);
         }
@@ -167,7 +169,7 @@ final class PlacedIndex implements IndexField {
         if (!why.isEmpty()) {
             return why + at(x, y, z);
         }
-        Scratch s = scratch.get().with(1).point(p.x(), p.y(), p.z());
+        Scratch s = new Scratch().point(p.x(), p.y(), p.z());
         scalar.sample(s.x, s.y, s.z, 1, wavelength, Order.VALUE, s.samples);
         double n = s.samples.value[0] + (fromOne ? 1 : 0);
         if (n > 0 && Double.isFinite(n)) {

@@ -82,11 +82,6 @@ public final class Tracer {
                 throw new IllegalArgumentException("reach must be positive: " + reach);
             }
         }
-
-        /** The same with another choice about the trail. */
-        public Settings withTrail(boolean kept) {
-            return new Settings(accuracy, transfer, kept, columns, reach);
-        }
     }
 
     /** A tracer for one train and ending with the production engine. */

@@ -43,7 +43,9 @@ final class Column {
         for (double error : errors) {
             decimals = Math.max(decimals, decimals(readable.fromSi(largest), readable.fromSi(error)));
         }
-        int places = decimals;
+        // exact numbers, such as counts and what a job gives, have no digits that say nothing
+        boolean exact = Arrays.stream(errors).allMatch(e -> e == 0);
+        int places = exact ? needed(values, readable, decimals) : decimals;
         List<String> texts = Arrays.stream(values)
                 .mapToObj(v -> Double.isFinite(v) ? fixed(readable.fromSi(v), places) : "")
                 .toList();
@@ -80,6 +82,18 @@ final class Column {
             return most;
         }
         return Math.max(0, Math.min(most, (int) -Math.ceil(Math.log10(error))));
+    }
+
+    /** Decimals without the zeros that all numbers end with. */
+    private static int needed(double[] values, Unit readable, int most) {
+        int needed = 0;
+        for (double v : values) {
+            if (Double.isFinite(v)) {
+                BigDecimal shown = new BigDecimal(readable.fromSi(v)).setScale(most, RoundingMode.HALF_EVEN);
+                needed = Math.max(needed, shown.stripTrailingZeros().scale());
+            }
+        }
+        return needed;
     }
 
     private static String fixed(double value, int decimals) {

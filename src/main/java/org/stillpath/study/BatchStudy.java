@@ -176,6 +176,11 @@ final class BatchStudy implements Study {
         public void bind(Bench bench, Problems problems) {}
 
         @Override
+        public long runs() {
+            return cells.rows().size();
+        }
+
+        @Override
         public boolean isForEachVariant() {
             return false;
         }

@@ -36,6 +36,8 @@ record Bench(
         List<Watched> watch,
         List<String> figures) {
     private static final Tasks.Options NUMBERS = new Tasks.Options(false);
+    private static final int MOST_TRIALS = 20;
+    private static final long TRIAL_NANOSECONDS = 100_000_000;
 
     /** Name of a stage of this job, for the store. */
     String stage(String name) {
@@ -89,6 +91,21 @@ record Bench(
     /** The result of a job like this one. */
     Result result(Node.Mapping job) {
         return Tasks.read(job, sources, memory).run(NUMBERS);
+    }
+
+    /**
+     * Time that a run of a job like this one takes, seconds: the least of a few, since the first ones also wait for the
+     * compiler.
+     */
+    double secondsARun(Node.Mapping job) {
+        long start = System.nanoTime();
+        long least = Long.MAX_VALUE;
+        for (int i = 0; i < MOST_TRIALS && System.nanoTime() - start < TRIAL_NANOSECONDS; i++) {
+            long before = System.nanoTime();
+            result(job);
+            least = Math.min(least, System.nanoTime() - before);
+        }
+        return least * 1e-9;
     }
 
     private boolean warnsAnew(Result r) {

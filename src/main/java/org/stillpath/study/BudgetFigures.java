@@ -123,17 +123,23 @@ final class BudgetFigures {
         String interval = Display.in(coverage, "%", 0) + " interval";
         series.add(new ChartFigure.Series(ChartFigure.Style.MARKS, interval, mc.shortest(), new double[2]));
         boolean agrees = mc.agrees(linear);
-        String answer = linear.isComplete()
-                ? BudgetText.said(w, linear.value(), half) + ": Monte Carlo "
-                        + (agrees ? "agrees with the linear budget" : "and the linear budget disagree")
-                : "The linear budget fails here; the samples tell";
+        // where the two disagree the samples are to be believed
+        String answer = agrees
+                ? BudgetText.said(w, linear.value(), half) + ": Monte Carlo agrees with the linear budget"
+                : BudgetText.interval(w, mc.shortest(), mc.standardUncertainty()) + ": the linear budget "
+                        + (linear.isComplete() ? "disagrees" : "fails");
+        String counted =
+                count(n) + " samples" + (mc.missing() > 0 ? "; " + count(mc.missing()) + " more have none" : "");
         return new ChartFigure(
                 name,
-                "Distribution of the " + w.path().label() + ", "
-                        + String.format(Locale.ROOT, "%,d", n).replace(',', ' ') + " samples" + variant,
-                SweepStudy.capital(w.path().label()) + " " + answer,
+                "Distribution of the " + w.path().label() + ", " + counted + variant,
+                SweepStudy.capital(w.path().label()) + " is " + answer,
                 new ChartFigure.Axis(w.path().label(), w.unitOrOne(), ""),
                 new ChartFigure.Axis("samples in each bar", "1", "%"),
                 series);
+    }
+
+    private static String count(int n) {
+        return String.format(Locale.ROOT, "%,d", n).replace(',', ' ');
     }
 }

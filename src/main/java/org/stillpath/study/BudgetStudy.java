@@ -293,6 +293,11 @@ final class BudgetStudy implements Study {
             }
         }
 
+        @Override
+        public long runs() {
+            return (long) order.inputs().size() * Slopes.RUNS + order.wanted().most();
+        }
+
         private static Optional<Watched> find(Bench bench, String key) {
             return bench.watch().stream()
                     .filter(w ->
@@ -433,8 +438,8 @@ final class BudgetStudy implements Study {
                     .put("samples", new Doc.Count((long) mc.samples() + mc.missing()))
                     .put("mean", mc.mean())
                     .put("standard-uncertainty", mc.standardUncertainty())
-                    .put("interval", new Doc.Amounts(mc.shortest()))
-                    .put("symmetric-interval", new Doc.Amounts(mc.symmetric()))
+                    .put("interval", Doc.Items.numbers(mc.shortest()))
+                    .put("symmetric-interval", Doc.Items.numbers(mc.symmetric()))
                     .put("agrees", new Doc.Flag(mc.agrees(linear)))
                     .put("tolerance", mc.tolerance())
                     .put("stable", new Doc.Flag(mc.stable()))
@@ -655,7 +660,8 @@ final class BudgetStudy implements Study {
             }
             if (!mc.stable()) {
                 warnings.add("the samples of the budget were used up (" + all + ") before its figures were stable to "
-                        + order.wanted().digits() + " digits (JCGM 101, 7.9); raise `samples`");
+                        + order.wanted().digits() + " digit" + (order.wanted().digits() == 1 ? "" : "s")
+                        + " (JCGM 101, 7.9); raise `samples`");
             }
             if (linear.isComplete() && !mc.agrees(linear)) {
                 double u = linear.expandedUncertainty();

@@ -1,6 +1,7 @@
 package org.stillpath.study;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.Collections;
 import java.util.LinkedHashMap;
 import java.util.List;
@@ -17,33 +18,6 @@ public sealed interface Doc {
      * @param value the number
      */
     record Amount(double value) implements Doc {}
-
-    /**
-     * Numbers in SI; those that are not finite are null.
-     *
-     * @param values the numbers
-     */
-    record Amounts(double[] values) implements Doc {
-        public Amounts {
-            values = values.clone();
-        }
-
-        /** A copy. */
-        @Override
-        public double[] values() {
-            return values.clone();
-        }
-
-        @Override
-        public boolean equals(Object o) {
-            return o instanceof Amounts a && java.util.Arrays.equals(values, a.values);
-        }
-
-        @Override
-        public int hashCode() {
-            return java.util.Arrays.hashCode(values);
-        }
-    }
 
     /**
      * A whole number.
@@ -74,6 +48,12 @@ public sealed interface Doc {
     record Items(List<Doc> values) implements Doc {
         public Items {
             values = List.copyOf(values);
+        }
+
+        /** A list of numbers in SI. */
+        static Items numbers(double... numbers) {
+            return new Items(
+                    Arrays.stream(numbers).mapToObj(v -> (Doc) new Amount(v)).toList());
         }
 
         /** A list of texts. */

@@ -186,6 +186,12 @@ final class FitStudy implements Study {
         /** What is to be matched, in SI. */
         private record Target(String[] units, double[] values, double[] standards, boolean weighted, double noise) {}
 
+        /** It goes on until it has found the least. */
+        @Override
+        public long runs() {
+            return 0;
+        }
+
         @Override
         public void bind(Bench bench, Problems problems) {
             target(bench, problems);
@@ -558,7 +564,7 @@ final class FitStudy implements Study {
             }
             List<Doc> rows = Doc.list();
             for (double[] row : correlation) {
-                rows.add(new Doc.Amounts(row));
+                rows.add(Doc.Items.numbers(row));
             }
             List<Doc> compared = Doc.list();
             for (int i = 0; i < matches.size(); i++) {
@@ -578,7 +584,7 @@ final class FitStudy implements Study {
                     .put("chi-square", best.chiSquare())
                     .put("degrees-of-freedom", new Doc.Count(freedom))
                     .put("correlation", new Doc.Items(rows))
-                    .put("residuals", new Doc.Amounts(residuals))
+                    .put("residuals", Doc.Items.numbers(residuals))
                     .put("matches", new Doc.Items(compared))
                     .put("converged", new Doc.Flag(best.converged()))
                     .build();

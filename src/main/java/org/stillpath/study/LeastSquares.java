@@ -252,7 +252,8 @@ final class LeastSquares {
     /** Values at a point; fills the derivatives in. */
     private double[] derivatives(double[] x, double[] scale, double[][] jacobian) {
         int n = x.length;
-        double relative = Math.min(LONGEST_STEP, Math.max(SHORTEST_STEP, 10 * Math.pow(noise, 0.2)));
+        // of fourth order: what is cut off goes with h⁴, the noise with 1/h
+        double relative = Math.min(LONGEST_STEP, Math.max(SHORTEST_STEP, Math.pow(noise, 0.2)));
         double[][] points = new double[1 + 4 * n][];
         points[0] = x;
         double[] step = new double[n];

@@ -7,6 +7,14 @@ public interface Progress {
     Progress SILENT = (stage, done, total) -> {};
 
     /**
+     * The work is about to begin.
+     *
+     * @param runs runs that it takes at most
+     * @param seconds time that they take at most, guessed from a few runs at the job's own values
+     */
+    default void ahead(long runs, double seconds) {}
+
+    /**
      * Runs were done.
      *
      * @param stage what is being done, in a few words

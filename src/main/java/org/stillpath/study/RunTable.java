@@ -63,7 +63,7 @@ final class RunTable {
 
     /** Adds results and fault of a run to its row of the document. */
     void finishRow(Doc.Builder row, int number) {
-        row.put("results", new Doc.Amounts(runs.results(number)));
+        row.put("results", Doc.Items.numbers(runs.results(number)));
         if (!runs.fault(number).isEmpty()) {
             row.put("fault", runs.fault(number));
         }

@@ -11,6 +11,7 @@ import org.stillpath.job.Section;
 import org.stillpath.job.Sources;
 import org.stillpath.job.Value;
 import org.stillpath.medium.MediaMemory;
+import org.stillpath.problem.Problem;
 import org.stillpath.problem.ProblemException;
 import org.stillpath.problem.Problems;
 import org.stillpath.problem.Words;
@@ -26,6 +27,10 @@ public final class Studies {
     private static final String STUDY = "study";
     private static final String FIGURES = "figures";
     private static final int MOST_VARIANTS = 100;
+    /** Fewer runs are done before their time is known. */
+    private static final int WORTH_GUESSING = 100;
+    /** Longest study, seconds. */
+    private static final double LONGEST = 30 * 86_400.0;
 
     private Studies() {}
 
@@ -84,6 +89,7 @@ public final class Studies {
         memory.keep(false);
         try (Crew crew = new Crew(means.threads(), means.store(), means.progress())) {
             Bench bench = order.bench(result, memory, crew, options.figures());
+            order.ahead(nominal, bench, means);
             // only now: a job at fault leaves nothing behind
             means.store().open(fingerprint.text());
             return order.outcome(nominal, bench);
@@ -234,6 +240,27 @@ public final class Studies {
             }
             wrong.throwIfAny();
             return bench;
+        }
+
+        /** Says how long it will take at most; throws where that is more than anybody waits. */
+        void ahead(Nominal nominal, Bench bench, Means means) {
+            long runs = 0;
+            for (Planned p : plans) {
+                runs += p.plan().runs() * (p.plan().isForEachVariant() ? 1 + variants.size() : 1);
+            }
+            if (runs < WORTH_GUESSING) {
+                return;
+            }
+            double seconds = runs * bench.secondsARun(nominal.tree()) / means.threads();
+            if (seconds > LONGEST) {
+                throw new ProblemException(Problem.input(
+                        root.find(STUDY).map(Node::place).orElse(root.place()),
+                        STUDY,
+                        "time: " + runs + " runs would take about " + Math.round(seconds / 86_400) + " days on "
+                                + means.threads() + (means.threads() == 1 ? " core" : " cores") + ", and the limit is "
+                                + Math.round(LONGEST / 86_400) + " days; ask for fewer runs"));
+            }
+            means.progress().ahead(runs, seconds);
         }
 
         Outcome outcome(Nominal nominal, Bench bench) {

@@ -33,6 +33,9 @@ interface Study {
         /** Runs. */
         Finding run(Bench bench);
 
+        /** How many runs of the job it takes at most; 0 where nobody can say beforehand. */
+        long runs();
+
         /** Whether each variant gets a study of its own. */
         default boolean isForEachVariant() {
             return true;

@@ -82,8 +82,7 @@ final class SweepFigures {
     }
 
     private static String said(double value, Watched w, SweepStudy.Span span) {
-        double error = Math.max(w.error(), 1e-3 * (span.high() - span.low()));
-        return Display.of(value, w.unitOrOne(), error).toString();
+        return Display.of(value, w.unitOrOne(), span.said(w.error(), 1e-3)).toString();
     }
 
     private static Figure map(

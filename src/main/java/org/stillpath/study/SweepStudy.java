@@ -90,6 +90,11 @@ final class SweepStudy implements Study {
         public void bind(Bench bench, Problems problems) {}
 
         @Override
+        public long runs() {
+            return ranges.stream().mapToLong(r -> r.values().length).reduce(1, (a, b) -> a * b);
+        }
+
+        @Override
         public Finding run(Bench bench) {
             List<Input> inputs = ranges.stream().map(Range::input).toList();
             int inner = ranges.size() == 2 ? ranges.get(1).values().length : 1;
@@ -119,7 +124,7 @@ final class SweepStudy implements Study {
             List<Watched> watch = table.watched(i -> bench.with(inputs, values(i, inner)));
             List<Doc> rows = Doc.list();
             for (int i = 0; i < runs; i++) {
-                Doc.Builder row = new Doc.Builder().put("inputs", new Doc.Amounts(values(i, inner)));
+                Doc.Builder row = new Doc.Builder().put("inputs", Doc.Items.numbers(values(i, inner)));
                 table.finishRow(row, i);
                 rows.add(row.build());
             }
@@ -174,7 +179,7 @@ final class SweepStudy implements Study {
             if (span.count() == 0) {
                 return "No run gave " + watch.get(0).path().label() + " over " + range;
             }
-            double error = Math.max(watch.get(0).error(), 1e-4 * (span.high() - span.low()));
+            double error = span.said(watch.get(0).error(), 1e-4);
             String unit = watch.get(0).unitOrOne();
             String label = capital(watch.get(0).path().label());
             if (inputs.size() == 1 && span.isFirst() && span.isLast()) {
@@ -190,20 +195,27 @@ final class SweepStudy implements Study {
         return text.isEmpty() ? text : Character.toUpperCase(text.charAt(0)) + text.substring(1);
     }
 
-    /** First, last, least and greatest of numbers, those that are there. */
-    record Span(int count, double first, double last, double low, double high) {
+    /** First, last, least and greatest of numbers, those that are there, and whether all are whole. */
+    record Span(int count, double first, double last, double low, double high, boolean whole) {
         static Span of(double[] values) {
             int n = 0;
             double low = Double.POSITIVE_INFINITY;
             double high = Double.NEGATIVE_INFINITY;
+            boolean whole = true;
             for (double v : values) {
                 if (!Double.isNaN(v)) {
                     n++;
+                    whole &= v == Math.rint(v);
                     low = Math.min(low, v);
                     high = Math.max(high, v);
                 }
             }
-            return new Span(n, values[0], values[values.length - 1], low, high);
+            return new Span(n, values[0], values[values.length - 1], low, high, whole);
+        }
+
+        /** To what a number of them is said: a part of their spread, unless they are counts. */
+        double said(double error, double part) {
+            return whole ? error : Math.max(error, part * (high - low));
         }
 
         boolean isFirst() {

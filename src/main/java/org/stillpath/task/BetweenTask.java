@@ -303,7 +303,7 @@ final class BetweenTask implements Task {
             return "No stationary path was found in the searched cone";
         }
         PathRow first = rows.get(0);
-        String length = Display.of(first.opticalLength(), "m", first.errors().getOrDefault("optical-length", 0.0))
+        String length = Display.brief(first.opticalLength(), "m", first.errors().getOrDefault("optical-length", 0.0))
                 .toString();
         String what = first.kind().equals("minimum")
                 ? "a minimum"

@@ -86,6 +86,8 @@ final class LensTask implements Task {
     /** One computation. */
     private static final class Run {
         private static final double ROUNDING = 4e-16;
+        /** Tolerance of the pass that the ray-transfer is compared with, over the accuracy: ten times that of the ray's own. */
+        private static final double ROUGHER = 0.1;
 
         private final Scene scene;
         private final Optional<Thing> object;
@@ -112,7 +114,6 @@ final class LensTask implements Task {
             Gaussian g = axial.mean();
             double scale = axial.scale();
             boolean afocal = g.afocal(scale);
-            constants(axial, afocal);
             String headline = constants(axial, afocal);
             if (object.isPresent()) {
                 headline = conjugates(axial, object.get(), afocal).orElse(headline);
@@ -240,7 +241,7 @@ final class LensTask implements Task {
             quantities.put("image-kind", new Quantity.Word(kind));
             quantities.put("image-orientation", new Quantity.Word(orientation));
             boolean real = kind.equals("real");
-            String distance = Display.of(Math.abs(image), "m", at.error()).toString();
+            String distance = Display.brief(Math.abs(image), "m", at.error()).toString();
             return Optional.of((real ? "Real, " : "Virtual, ") + orientation + " image " + distance
                     + (real ? " behind" : " before") + " the last vertex, magnification " + said(ratio));
         }
@@ -272,8 +273,12 @@ final class LensTask implements Task {
         /** Both meridians of a train about its axis, and how far they can be trusted. */
         private Axial axial(Train of) {
             double asked = scene.accuracy();
-            Traced rough = axialRay(of, Math.min(0.1, 10 * asked));
-            Traced fine = axialRay(of, asked);
+            Tracer tracer = new Tracer(of, new Ending.BehindLastSurface(), new Tracer.Settings(asked, true, false));
+            Vector first = of.elements().get(0).surface().vertex();
+            RayStart start = RayStart.of(new Vector(0, 0, first.z()), Vector.Z);
+            Traced fine = through(tracer.trace(start));
+            // one pass is enough to compare with: its steps are others than those of the fine ray
+            Traced rough = through(tracer.glance(start, ROUGHER * asked));
             double[][] m = fine.transfer();
             double[][] r = rough.transfer();
             double before = norm(fine.start());
@@ -305,11 +310,7 @@ final class LensTask implements Task {
             return new Gaussian(m[i][i], m[i][i + 2], m[i + 2][i], m[i + 2][i + 2], before, behind);
         }
 
-        private Traced axialRay(Train of, double accuracy) {
-            Tracer.Settings settings = new Tracer.Settings(accuracy, true, false);
-            Vector first = of.elements().get(0).surface().vertex();
-            RayStart start = RayStart.of(new Vector(0, 0, first.z()), Vector.Z);
-            Traced t = new Tracer(of, new Ending.BehindLastSurface(), settings).trace(start);
+        private Traced through(Traced t) {
             if (t.status() != Status.ARRIVED) {
                 throw new ProblemException(Problem.input(
                         place,
@@ -345,7 +346,7 @@ final class LensTask implements Task {
         }
 
         private static String said(Quantity.Amount q) {
-            return Display.of(q.value(), q.unit(), q.error()).toString();
+            return Display.brief(q.value(), q.unit(), q.error()).toString();
         }
     }
 

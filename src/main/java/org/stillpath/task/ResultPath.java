@@ -56,10 +56,15 @@ public final class ResultPath {
         return text;
     }
 
-    /** What the number is, in a few words: {@code back focal distance}, {@code rays 0 position 1}. */
+    /** What the number is, in a few words: {@code back focal distance}, {@code position 1 of ray 0}. */
     public String label() {
-        List<String> said = parts.get(0).equals("quantities") ? parts.subList(1, parts.size()) : parts;
-        return String.join(" ", said).replace('-', ' ');
+        boolean quantity = parts.get(0).equals("quantities");
+        String said =
+                String.join(" ", parts.subList(quantity ? 1 : 2, parts.size())).replace('-', ' ');
+        // rays, images, stars, paths: one of them
+        String list = parts.get(0);
+        String one = quantity ? "" : list.substring(0, list.length() - 1) + " " + parts.get(1);
+        return quantity ? said : said.isEmpty() ? one : said + " of " + one;
     }
 
     /** A word for names of files: {@code back-focal-distance}. */

@@ -30,11 +30,6 @@ public final class Tasks {
         return ALL.stream().map(Task::name).toList();
     }
 
-    /** Names of tasks that the job file knows and this version has not got yet. */
-    public static List<String> planned() {
-        return PLANNED;
-    }
-
     /**
      * Reads a job and says what is wrong with it; computes nothing.
      *

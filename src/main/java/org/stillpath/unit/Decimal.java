@@ -14,6 +14,7 @@ public final class Decimal {
     private static final long MOST_EXACT = 1L << 53;
 
     private static final int MOST_EXACT_POWER = 22;
+    private static final long FIFTEEN_DIGITS = 1_000_000_000_000_000L;
     /** Powers of ten that are exact as doubles. */
     private static final double[] POWERS = {
         1e0, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15, 1e16, 1e17, 1e18, 1e19,
@@ -53,6 +54,44 @@ public final class Decimal {
             }
         }
         return i;
+    }
+
+    /**
+     * A short plain number times {@code numerator / denominator}, as the nearest double: where both products are exact
+     * their quotient is rounded once. NaN where this way cannot tell, which is so for exponents and more than 15 digits.
+     *
+     * @param number digits with at most one point and a sign
+     * @param numerator whole
+     * @param denominator whole, above 0
+     */
+    static double quotient(String number, double numerator, double denominator) {
+        int start = !number.isEmpty() && isSign(number.charAt(0)) ? 1 : 0;
+        long digits = 0;
+        int scale = 0;
+        boolean point = false;
+        for (int i = start; i < number.length(); i++) {
+            char c = number.charAt(i);
+            if (c >= '0' && c <= '9') {
+                digits = 10 * digits + (c - '0');
+                scale += point ? 1 : 0;
+            } else if (c == '.' && !point) {
+                point = true;
+            } else {
+                return Double.NaN;
+            }
+            if (digits >= FIFTEEN_DIGITS) {
+                return Double.NaN;
+            }
+        }
+        if (scale > MOST_EXACT_POWER) {
+            return Double.NaN;
+        }
+        double top = digits * numerator;
+        double bottom = denominator * POWERS[scale];
+        // a product is exact where nothing is left of it
+        boolean exact =
+                Math.fma((double) digits, numerator, -top) == 0 && Math.fma(denominator, POWERS[scale], -bottom) == 0;
+        return !exact ? Double.NaN : start == 1 && number.charAt(0) != '+' ? -top / bottom : top / bottom;
     }
 
     /** The number that the whole text is, if it is one and not beyond the range of a double. */

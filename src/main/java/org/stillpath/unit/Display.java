@@ -11,6 +11,8 @@ import java.math.RoundingMode;
 public final class Display {
     /** More digits than this help nobody. */
     private static final int MOST_DIGITS = 10;
+    /** More digits than this do not fit a sentence or a title; the table beside it has them. */
+    private static final int MOST_SAID = 7;
 
     private Display() {}
 
@@ -42,6 +44,17 @@ public final class Display {
     }
 
     /**
+     * The same for headlines and the titles of figures, with seven digits at most.
+     *
+     * @param si value in {@code siUnit}
+     * @param siUnit as in {@link #of}
+     * @param error as in {@link #of}
+     */
+    public static Reading brief(double si, String siUnit, double error) {
+        return in(si, chosen(Math.abs(si), siUnit), error, MOST_SAID);
+    }
+
+    /**
      * In a unit of one's own choice, such as {@code dpt} for a power or {@code arcsec} for an angle.
      *
      * @param si value in SI
@@ -50,13 +63,20 @@ public final class Display {
      * @throws IllegalArgumentException if the unit is not known
      */
     public static Reading in(double si, String unit, double error) {
+        return in(si, unit, error, MOST_DIGITS);
+    }
+
+    private static Reading in(double si, String unit, double error, int most) {
         Unit u = Units.parse(unit).orElseThrow(() -> new IllegalArgumentException("unknown unit: " + unit));
         String shown = unit.equals("1") ? "" : unit;
         if (!Double.isFinite(si)) {
             return new Reading(Double.isNaN(si) ? "unknown" : si > 0 ? "infinite" : "-infinite", shown);
         }
         return new Reading(
-                number(u.fromSi(si), Math.abs(error * u.denominator() / u.numerator()) / Math.pow(Math.PI, u.pi())),
+                number(
+                        u.fromSi(si),
+                        Math.abs(error * u.denominator() / u.numerator()) / Math.pow(Math.PI, u.pi()),
+                        most),
                 shown);
     }
 
@@ -73,17 +93,17 @@ public final class Display {
     }
 
     /** Decimal text of {@code x} to the place of the leading digit of its error. */
-    private static String number(double x, double error) {
+    private static String number(double x, double error, int most) {
         if (x == 0) {
             return "0";
         }
         BigDecimal exact = new BigDecimal(x);
-        BigDecimal rounded = exact.round(new MathContext(MOST_DIGITS, RoundingMode.HALF_EVEN));
+        BigDecimal rounded = exact.round(new MathContext(most, RoundingMode.HALF_EVEN));
         boolean known = error > 0 && Double.isFinite(error);
         if (known) {
             int place = (int) Math.floor(Math.log10(error));
             int leading = rounded.precision() - rounded.scale() - 1;
-            int digits = Math.min(MOST_DIGITS, Math.max(1, leading - place + 1));
+            int digits = Math.min(most, Math.max(1, leading - place + 1));
             rounded = exact.round(new MathContext(digits, RoundingMode.HALF_EVEN));
             // a value that rounding shortened keeps the zeros that its error supports
             if (rounded.precision() < digits) {

@@ -59,6 +59,12 @@ public record Unit(
         if (!Double.isFinite(plain) || (plain == 0 && offset == 0)) {
             return plain;
         }
+        if (pi == 0 && offset == 0) {
+            double quotient = Decimal.quotient(number, numerator, denominator);
+            if (!Double.isNaN(quotient)) {
+                return quotient;
+            }
+        }
         return toSi(new BigDecimal(number, DIGITS));
     }
 

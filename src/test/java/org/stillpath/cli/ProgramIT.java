@@ -42,7 +42,7 @@ class ProgramIT {
     @Test
     void saysTheAnswerFirst() throws Exception {
         Packaged.Ended end = Packaged.run(folder, "run", DEMO);
-        assertThat(end.out().lines().findFirst()).hasValue("Effective focal length 2.971261227 mm");
+        assertThat(end.out().lines().findFirst()).hasValue("Effective focal length 2.971261 mm");
         assertThat(end.out()).contains("back focal distance").contains("caution:");
         assertThat(end.out().lines().mapToInt(String::length).max().orElse(0)).isLessThanOrEqualTo(80);
     }

@@ -6,6 +6,7 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.Objects;
+import java.util.SplittableRandom;
 import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
@@ -32,19 +33,64 @@ class StudyIT {
     @TempDir
     Path folder;
 
-    private void killAfterSomeRuns() throws Exception {
-        Path kept = folder.resolve("out/study.unfinished");
-        Process process = new ProcessBuilder(
+    private Process start(String into) throws Exception {
+        return new ProcessBuilder(
                         Objects.requireNonNull(System.getProperty("stillpath.launcher")),
                         "run",
                         "job.yaml",
                         "--quiet",
                         "--out",
-                        "out")
+                        into)
                 .directory(folder.toFile())
                 .redirectErrorStream(true)
                 .redirectOutput(folder.resolve("log.txt").toFile())
                 .start();
+    }
+
+    private void runToTheEnd(String into) throws Exception {
+        assertThat(Packaged.run(folder, "run", "job.yaml", "--quiet", "--out", into)
+                        .status())
+                .isZero();
+    }
+
+    private void hasTheSameBytes(String one, String other) {
+        for (String name : List.of("result.json", "sweep.csv")) {
+            assertThat(folder.resolve(one).resolve(name))
+                    .hasSameBinaryContentAs(folder.resolve(other).resolve(name));
+        }
+        assertThat(folder.resolve(one).resolve("study.unfinished")).doesNotExist();
+    }
+
+    /**
+     * Killed (kill -9) at random moments of its whole run, start-up and writing included, each time in a folder of its own; each
+     * is taken up again and ends with the bytes of a run that was left alone. {@code -Dstillpath.kills=20} does it twenty times.
+     */
+    @Test
+    void everyKilledRunGoesOnToTheSameBytes() throws Exception {
+        int kills = Integer.getInteger("stillpath.kills", 3);
+        Files.writeString(folder.resolve("job.yaml"), SWEEP);
+        runToTheEnd("first"); // warms the launcher's archive
+        long start = System.nanoTime();
+        runToTheEnd("whole");
+        long whole = (System.nanoTime() - start) / 1_000_000;
+        SplittableRandom random = new SplittableRandom(20_261_201);
+        int unfinished = 0;
+        for (int k = 0; k < kills; k++) {
+            String into = "killed" + k;
+            Process process = start(into);
+            boolean ended = process.waitFor(random.nextLong(whole), TimeUnit.MILLISECONDS);
+            process.destroyForcibly().waitFor(10, TimeUnit.SECONDS);
+            unfinished += !ended && Files.exists(folder.resolve(into).resolve("study.unfinished")) ? 1 : 0;
+            runToTheEnd(into);
+            hasTheSameBytes(into, "whole");
+        }
+        // of three one at least was at work on its runs, of twenty most
+        assertThat(unfinished).isGreaterThanOrEqualTo(Math.max(1, kills / 3));
+    }
+
+    private void killAfterSomeRuns() throws Exception {
+        Path kept = folder.resolve("out/study.unfinished");
+        Process process = start("out");
         long before = Files.exists(kept) ? Files.size(kept) : 0;
         while (process.isAlive() && (!Files.exists(kept) || Files.size(kept) < before + 20_000)) {
             Thread.sleep(20);
@@ -55,25 +101,17 @@ class StudyIT {
     }
 
     @Test
-    void goesOnAfterBeingKilled() throws Exception {
+    void goesOnAfterBeingKilledTwiceAndRefusesAnotherJob() throws Exception {
         Files.writeString(folder.resolve("job.yaml"), SWEEP);
-        assertThat(Packaged.run(folder, "run", "job.yaml", "--quiet", "--out", "whole")
-                        .status())
-                .isZero();
+        runToTheEnd("whole");
         killAfterSomeRuns();
         killAfterSomeRuns();
         Files.writeString(folder.resolve("other.yaml"), SWEEP.replace("0.28", "0.29"));
         Packaged.Ended refused = Packaged.run(folder, "run", "other.yaml", "--quiet", "--out", "out");
         assertThat(refused.status()).isEqualTo(2);
         assertThat(refused.err()).contains("unfinished study of another job").contains("study.unfinished");
-        assertThat(Packaged.run(folder, "run", "job.yaml", "--quiet", "--out", "out")
-                        .status())
-                .isZero();
-        for (String name : List.of("result.json", "sweep.csv")) {
-            assertThat(folder.resolve("out").resolve(name))
-                    .hasSameBinaryContentAs(folder.resolve("whole").resolve(name));
-        }
-        assertThat(folder.resolve("out/study.unfinished")).doesNotExist();
+        runToTheEnd("out");
+        hasTheSameBytes("out", "whole");
     }
 
     /** The studies that a starter shows as comments are sound once their # is gone. */

@@ -85,6 +85,13 @@ class StudiesTest {
         return ((Doc.Amount) found).value();
     }
 
+    private static double[] numbers(Doc doc, Object... path) {
+        Doc found = at(doc, path);
+        assertThat(found).isInstanceOf(Doc.Items.class);
+        return ((Doc.Items) found)
+                .values().stream().mapToDouble(v -> ((Doc.Amount) v).value()).toArray();
+    }
+
     /** Back focal distance of the rod in closed form: cos(g l)/(n0 g sin(g l)), the paraxial constant of such a rod. */
     private static double focus(double n0, double g, double length) {
         return 1 / (n0 * g * Math.tan(g * length));
@@ -98,8 +105,8 @@ class StudiesTest {
                   watch: [quantities.back-focal-distance]
                 """);
         for (int i = 0; i < 5; i++) {
-            double[] in = ((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "inputs")).values();
-            double[] out = ((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "results")).values();
+            double[] in = numbers(o.doc(), "sweep", "rows", i, "inputs");
+            double[] out = numbers(o.doc(), "sweep", "rows", i, "results");
             assertThat(in[0]).isCloseTo(280 + 10 * i, within(1e-9));
             assertThat(out[0]).isCloseTo(focus(1.6, in[0], 2.5e-3), within(1e-12));
         }
@@ -120,9 +127,9 @@ class StudiesTest {
         double[] lengths = {2e-3, 2e-3, 2e-3, 3e-3, 3e-3, 3e-3};
         double[] g = {280, 300, 310, 280, 300, 310};
         for (int i = 0; i < 6; i++) {
-            assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "inputs")).values())
+            assertThat(numbers(o.doc(), "sweep", "rows", i, "inputs"))
                     .containsExactly(new double[] {lengths[i], g[i]}, within(1e-12));
-            assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "results")).values()[0])
+            assertThat(numbers(o.doc(), "sweep", "rows", i, "results")[0])
                     .isCloseTo(focus(1.6, g[i], lengths[i]), within(1e-12));
         }
     }
@@ -134,11 +141,9 @@ class StudiesTest {
                   sweep: {"train.surfaces[1].at": {values: [-1 mm, 1 mm, 2 mm]}}
                   watch: [quantities.back-focal-distance]
                 """);
-        assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", 0, "results")).values()[0])
-                .isNaN();
+        assertThat(numbers(o.doc(), "sweep", "rows", 0, "results")[0]).isNaN();
         assertThat(at(o.doc(), "sweep", "rows", 0, "fault").toString()).contains("put them in order");
-        assertThat(((Doc.Amounts) at(o.doc(), "sweep", "rows", 2, "results")).values()[0])
-                .isCloseTo(focus(1.6, 300, 2e-3), within(1e-12));
+        assertThat(numbers(o.doc(), "sweep", "rows", 2, "results")[0]).isCloseTo(focus(1.6, 300, 2e-3), within(1e-12));
         assertThat(o.result().warnings().toString()).contains("1 of 3 runs could not be computed");
     }
 
@@ -205,13 +210,112 @@ class StudiesTest {
                         """), Sources.none(), new Tasks.Options(false), Studies.Means.plain());
         double[] wanted = {0, 0.5e-3, 1e-3, Double.NaN, Double.NaN};
         for (int i = 0; i < 5; i++) {
-            double got = ((Doc.Amounts) at(o.doc(), "sweep", "rows", i, "results")).values()[0];
+            double got = numbers(o.doc(), "sweep", "rows", i, "results")[0];
             if (i != 2) {
                 // the third ray grazes the rim
                 assertThat(Double.valueOf(got)).isEqualTo(Double.valueOf(wanted[i]));
             }
         }
-        assertThat(o.result().warnings().toString()).contains("have no rays 0 position 1");
+        assertThat(o.result().warnings().toString()).contains("have no position 1 of ray 0");
+    }
+
+    private static final String HOT_ROAD = """
+            task: sightline
+            wavelength: 550 nm
+            media:
+              field:
+                air:
+                  law: iag-1999
+                  temperature: T0 + gamma*height + dTs*exp(-height/delta)
+                  pressure: {value: 1013.25 hPa, at-height: 0 m, hydrostatic: standard}
+                  humidity: 0 %
+                with: {T0: 293.15 K, gamma: -0.0098 K/m, dTs: 20 K, delta: 0.1 m}
+            through: field
+            ground: {height: 0 m}
+            from: {height: 1.5 m}
+            to: {distance: 400 m, height: 0.1 m}
+            study:
+              budget:
+                inputs: {to.height: {standard: 0.02 m}}
+                samples: 150
+              watch: ["images[0].launch-elevation"]
+            """;
+
+    /**
+     * Over a hot road the two images of a target meet where it stands on the caustic, some 8 cm above the road, and there are
+     * none below: there the samples contradict the linear budget, and it is said how many have no image. Well above it
+     * they agree.
+     */
+    @Test
+    void aSightNearACausticContradictsItsLinearBudget() {
+        Outcome near = Studies.run(read(HOT_ROAD), Sources.none(), new Tasks.Options(false), Studies.Means.plain());
+        Doc mc = at(near.doc(), "budget", "images[0].launch-elevation", "monte-carlo");
+        assertThat(at(mc, "agrees")).isEqualTo(new Doc.Flag(false));
+        long missing = ((Doc.Count) at(mc, "missing")).value();
+        assertThat(missing).isBetween(5L, 60L);
+        assertThat(near.result().warnings())
+                .anyMatch(w -> w.startsWith("in " + missing + " of 150 samples") && w.contains("there is no"))
+                .anyMatch(w -> w.contains("the linear budget") && w.contains("is not valid here"));
+    }
+
+    private static final String LINES = """
+            task: sightline
+            wavelength: 850 nm
+            media:
+              field:
+                air:
+                  law: ciddor-1996
+                  temperature: T0 - lapse*height
+                  pressure: {value: 1013.25 hPa, at-height: 0 m}
+                  humidity: 50 %%
+                with: {T0: 288.15 K, lapse: %s}
+            through: field
+            from: {height: 20 m}
+            to: {distance: 3 km, height: 35 m}
+            """;
+
+    /** Zenith angles observed at both ends of three lines give the lapse of temperature; observed here: those of 8.2 K/km. */
+    @Test
+    void fitsTheLapseFromReciprocalZenithAngles() {
+        StringBuilder match = new StringBuilder();
+        StringBuilder variants = new StringBuilder();
+        String[] lines = {"3 km", "5 km", "8 km"};
+        for (int i = 0; i < lines.length; i++) {
+            String job = LINES.formatted("8.2 K/km").replace("3 km", lines[i]);
+            org.stillpath.task.ImageRow image = Tasks.run(read(job), Sources.none(), new Tasks.Options(false))
+                    .images()
+                    .get(0);
+            // k = 503 p/T² (0.0343 + dT/dh), p in hPa (geodesists' usual formula, from memory)
+            assertThat(image.coefficient().orElseThrow())
+                    .isCloseTo(503 * 1013.25 / (288.15 * 288.15) * (0.0343 - 0.0082), within(0.006));
+            variants.append("    line")
+                    .append(i)
+                    .append(": {to.distance: ")
+                    .append(lines[i])
+                    .append("}\n");
+            double[] both = {image.launch(), -image.arrival()};
+            String[] names = {"launch-elevation", "back-elevation"};
+            for (int k = 0; k < 2; k++) {
+                match.append("      - {variant: line%d, result: \"images[0].%s\", value: %s rad, standard: 1 arcsec}\n"
+                        .formatted(i, names[k], both[k]));
+            }
+        }
+        Outcome o = Studies.run(
+                read(LINES.formatted("6.5 K/km") + "study:\n  fit:\n    unknowns:\n"
+                        + "      media.field.with.lapse: {start: 6.5 K/km, low: -20 K/km, high: 30 K/km}\n"
+                        + "    match:\n" + match + "    starts: 1\n  variants:\n" + variants),
+                Sources.none(),
+                new Tasks.Options(false),
+                Studies.Means.plain());
+        String unknown = "media.field.with.lapse";
+        assertThat(number(o.doc(), "fit", "unknowns", unknown, "value")).isCloseTo(8.2e-3, within(1e-8));
+        // both refraction angles of a line of length S are k S/(2R): six of them, each known to 1 arcsec, give by the
+        // formula
+        double slope = 503 * 1013.25 / (288.15 * 288.15) / (2 * 6371e3) * Math.sqrt(2 * (9e6 + 25e6 + 64e6));
+        double u = Math.PI / 648_000 / slope;
+        assertThat(number(o.doc(), "fit", "unknowns", unknown, "standard-uncertainty"))
+                .isCloseTo(u, within(0.02 * u));
+        assertThat(at(o.doc(), "fit", "degrees-of-freedom")).isEqualTo(new Doc.Count(5));
     }
 
     private static final String FIT = """
@@ -291,6 +395,30 @@ class StudiesTest {
         Doc four = run(study, new Studies.Means(4, Store.none(), Progress.SILENT, ""))
                 .doc();
         assertThat(four).isEqualTo(one);
+    }
+
+    @Test
+    void saysHowLongItWillTakeBeforeItBegins() {
+        List<String> told = new ArrayList<>();
+        Progress progress = new Progress() {
+            @Override
+            public void ahead(long runs, double seconds) {
+                assertThat(seconds).isBetween(1e-6, 600.0);
+                told.add(runs + " ahead");
+            }
+
+            @Override
+            public void at(String stage, long done, long total) {
+                told.add(stage + " " + done + " of " + total);
+            }
+        };
+        run("""
+                study:
+                  budget: {inputs: {media.rod.with.g: {standard: 0.003 1/mm}}, samples: 400}
+                  watch: [quantities.power]
+                """, new Studies.Means(1, Store.none(), progress, ""));
+        assertThat(told).startsWith("408 ahead", "sensitivities 0 of 8");
+        assertThat(told).endsWith("samples 400 of 400");
     }
 
     /** Keeps parts in memory and fails after some of them, as a killed process would. */
@@ -506,7 +634,7 @@ class StudiesTest {
             ""
         };
         for (int i = 0; i < wanted.length; i++) {
-            double got = ((Doc.Amounts) at(o.doc(), "batch", "rows", i, "results")).values()[0];
+            double got = numbers(o.doc(), "batch", "rows", i, "results")[0];
             if (Double.isNaN(wanted[i])) {
                 assertThat(got).isNaN();
                 assertThat(((Doc.Text) at(o.doc(), "batch", "rows", i, "fault")).value())

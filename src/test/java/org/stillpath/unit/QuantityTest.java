@@ -197,6 +197,13 @@ class QuantityTest {
     }
 
     @Test
+    void saysSevenDigitsAtMost() {
+        assertThat(Display.brief(0.003056359843, "m", 1e-12)).hasToString("3.056360 mm");
+        assertThat(Display.brief(0.003056359843, "m", 3e-6)).hasToString("3.056 mm");
+        assertThat(Display.brief(1234567.8, "K", 0)).hasToString("1234568 K");
+    }
+
+    @Test
     void showsInAChosenUnit() {
         assertThat(Display.in(487.8, "dpt", 0)).hasToString("487.8 dpt");
         assertThat(Display.in(Math.PI / 648000, "arcsec", Math.PI / 648000 * 0.01))
