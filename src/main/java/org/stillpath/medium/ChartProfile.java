@@ -66,6 +66,11 @@ final class ChartProfile implements ScalarField {
     }
 
     @Override
+    public Optional<ScalarField> joinedOtherwise() {
+        return spline.joinedOtherwise().map(s -> new ChartProfile(along, s, chart, warnings, cell, scratch));
+    }
+
+    @Override
     public boolean ofHeightAlone() {
         return along == Coordinate.HEIGHT;
     }

@@ -30,7 +30,11 @@ final class Hydrostatic implements Pressure {
         0.3626837833783620, 0.3137066458778873, 0.2223810344533745, 0.1012285362903763
     };
 
+    /** Where the pressure was given, and what it is there. */
+    private record Given(double pressure, double height) {}
+
     private final HydrostaticTable table;
+    private final Given given;
     private final boolean full;
     private final Humidity humidity;
     private final Chart chart;
@@ -50,6 +54,7 @@ final class Hydrostatic implements Pressure {
 
     private Hydrostatic(
             HydrostaticTable table,
+            Given given,
             boolean full,
             Humidity humidity,
             Chart chart,
@@ -58,6 +63,7 @@ final class Hydrostatic implements Pressure {
             double high,
             ThreadLocal<Work> work) {
         this.table = table;
+        this.given = given;
         this.full = full;
         this.humidity = humidity;
         this.chart = chart;
@@ -94,7 +100,15 @@ final class Hydrostatic implements Pressure {
                 height,
                 breaks.stream().mapToDouble(Double::doubleValue).toArray());
         return new Hydrostatic(
-                table, full, moist, Chart.FLAT, t, table.low(), table.high(), ThreadLocal.withInitial(Work::new));
+                table,
+                new Given(pressure, height),
+                full,
+                moist,
+                Chart.FLAT,
+                t,
+                table.low(),
+                table.high(),
+                ThreadLocal.withInitial(Work::new));
     }
 
     private static HydrostaticTable.Rate rate(ScalarField t, Humidity moist, boolean full) {
@@ -212,7 +226,12 @@ final class Hydrostatic implements Pressure {
 
     @Override
     public Pressure on(Chart other) {
-        return new Hydrostatic(table, full, humidity, other, temperature, low, high, work);
+        return new Hydrostatic(table, given, full, humidity, other, temperature, low, high, work);
+    }
+
+    @Override
+    public Pressure joinedOtherwise(ScalarField other, Humidity moist) {
+        return of(other, moist, given.pressure, given.height, full);
     }
 
     @Override
@@ -232,6 +251,7 @@ final class Hydrostatic implements Pressure {
     public Pressure piece(int[] cells, ScalarField t, ScalarField w, double from, double to) {
         return new Hydrostatic(
                 table,
+                given,
                 full,
                 humidity.isNone() ? humidity : humidity.with(w),
                 chart,

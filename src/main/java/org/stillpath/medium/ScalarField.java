@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.List;
+import java.util.Optional;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
@@ -27,6 +28,14 @@ public interface ScalarField {
      */
     default ScalarField on(Chart chart) {
         return this;
+    }
+
+    /**
+     * The same quantity with its table joined by another interpolant: what the table leaves open between its rows. Empty where
+     * there is no table, or its nodes leave no choice.
+     */
+    default Optional<ScalarField> joinedOtherwise() {
+        return Optional.empty();
     }
 
     /** Whether the quantity depends on the height alone, or on nothing. */

@@ -204,6 +204,11 @@ final class Us1976 implements ScalarField {
         }
 
         @Override
+        public Pressure joinedOtherwise(ScalarField temperature, Humidity humidity) {
+            return this;
+        }
+
+        @Override
         public boolean ofHeightAlone() {
             return true;
         }

@@ -1011,7 +1011,10 @@ public final class Sightings {
             // a turn so near to an end that the noted places step over it shows in the signs of the elevations
             double way = Math.signum(launch);
             for (int i = 1; i < n; i++) {
-                double rise = Math.signum(points[2 * i + 1] - points[2 * i - 1]);
+                double climbed = points[2 * i + 1] - points[2 * i - 1];
+                // two places noted at one seam differ by rounding
+                boolean still = Math.abs(climbed) <= 1e-12 * (1 + Math.abs(points[2 * i + 1]));
+                double rise = still ? 0 : Math.signum(climbed);
                 if (rise != 0 && way != 0 && rise != way) {
                     turns.add(points[2 * i - 1]);
                 }
