@@ -163,7 +163,7 @@ public final class Sightings {
      * A layer in which a level ray bends more than the earth curves.
      *
      * @param low its lower edge, metres
-     * @param high its upper edge, metres
+     * @param high its upper edge, metres; infinite where it goes on past the heights that the search looks at
      * @param kept rays that leave the eye within this elevation cannot pass its upper edge, rad; NaN where the eye's rays can
      */
     public record Duct(double low, double high, double kept) {}
@@ -892,6 +892,9 @@ public final class Sightings {
                     ducts.add(new Duct(low, high, e));
                     low = Double.NaN;
                 }
+            }
+            if (!Double.isNaN(low)) {
+                ducts.add(new Duct(low, Double.POSITIVE_INFINITY, Double.NaN));
             }
         }
 

@@ -367,7 +367,10 @@ final class SightlineTask implements Task {
             warnings.add("no ray got to the target's distance: " + seen.note());
         }
         for (Sightings.Duct d : seen.ducts()) {
-            warnings.add("between " + length(d.low()) + " and " + length(d.high())
+            boolean open = Double.isInfinite(d.high());
+            warnings.add((open
+                            ? "from " + length(d.low()) + " on, as far up as was looked,"
+                            : "between " + length(d.low()) + " and " + length(d.high()))
                     + " the air bends level rays more than the earth curves: a duct"
                     + (Double.isNaN(d.kept())
                             ? ""
