@@ -381,9 +381,10 @@ public final class Sightings {
         if (low.height > ground) {
             return Optional.of(new Horizon(dip, 1e-12, Double.NaN, Double.NaN));
         }
-        Optional<Tangent> t = tangent(from, -dip, 1e-9);
+        Optional<Tangent> t = tangent(from, -dip, 1e-9, 0.1);
+        // the ray only tells where it touches, and how far it is from Bouguer's closed form
         return t.map(g -> new Horizon(
-                -g.elevation,
+                dip,
                 g.error + 0.1 * Math.abs(dip + g.elevation),
                 g.contact,
                 g.contactError + 2 * Math.abs(dip + g.elevation) * g.spread));
@@ -440,7 +441,7 @@ public final class Sightings {
                 high = middle;
             }
         }
-        return tangent(from, high, 1e-2)
+        return tangent(from, high, 1e-2, 0.01)
                 .filter(t -> t.contact < far * (1 - 1e-9))
                 .map(t -> new Horizon(-t.elevation, t.error, t.contact, t.contactError));
     }
@@ -465,14 +466,15 @@ public final class Sightings {
      * The ray that touches the ground near a launch elevation: Newton's method on its least clearance.
      *
      * @param within how far from the guess it may lie, rad
+     * @param share of the asked accuracy that the rays themselves may use
      */
-    private Optional<Tangent> tangent(double from, double guess, double within) {
+    private Optional<Tangent> tangent(double from, double guess, double within, double share) {
         double above = Math.max(from - chart.ground().height(0), 0.1);
         double scale = Double.isInfinite(chart.radius())
                 ? above / Math.max(Math.abs(guess), 1e-4)
                 : Math.sqrt(2 * above * chart.radius());
         Tracer down = tracer(new Ending.AtLowest(chart, scale), true, false);
-        double tight = Math.max(1e-15, 0.01 * accuracy);
+        double tight = Math.max(1e-15, share * accuracy);
         double e = guess;
         double before = Double.NaN;
         double step = Double.NaN;
@@ -488,7 +490,9 @@ public final class Sightings {
             double[] y = t.state();
             double[] c = clearance(y, t);
             step = (1e-10 - c[0]) / c[1];
-            if (Math.abs(step) <= Math.max(1e-16 + 1e-13 * Math.abs(e), 0.01 * accuracy * Math.abs(e))
+            // what the ray's own error leaves of the clearance is no reason for another one
+            double noise = scale * tight / Math.abs(c[1]);
+            if (Math.abs(step) <= Math.max(1e-16 + 1e-13 * Math.abs(e), Math.max(0.01 * accuracy * Math.abs(e), noise))
                     || Math.abs(step) >= 0.5 * Math.abs(before)) {
                 double error = 2e-16 + Math.abs(step) + (2e-10 + scale * accuracy * 0.1) / Math.abs(c[1]);
                 double bend = Math.abs(c[2]);
@@ -704,7 +708,8 @@ public final class Sightings {
                 double[] lifts = new double[heights.length];
                 double nu1 = air.refractivity(h1);
                 for (int i = 0; i < heights.length; i++) {
-                    double g = air.steepness(heights[i]);
+                    double[] here = air.refractivityAndSteepness(heights[i]);
+                    double g = here[1];
                     if (Double.isNaN(g)) {
                         lifts[i] = Double.NaN;
                         continue;
@@ -713,7 +718,7 @@ public final class Sightings {
                     if (heights[i] >= h1) {
                         mostUp = Math.max(mostUp, g);
                     }
-                    lifts[i] = air.lift(heights[i], air.refractivity(heights[i]), h1, nu1);
+                    lifts[i] = air.lift(heights[i], here[0], h1, nu1);
                 }
                 for (double h : new double[] {h1, 0.5 * (h1 + h2)}) {
                     // over rising ground the eye's height may lie under it farther on, where there is no air
@@ -1186,7 +1191,7 @@ public final class Sightings {
             Optional<Tangent> found = horizon.filter(h -> Math.abs(h.dip() + in.angle) < 1e-5)
                     .filter(h -> !Double.isNaN(h.distance()))
                     .map(h -> new Tangent(-h.dip(), h.dipError(), h.distance(), h.distanceError(), 0))
-                    .or(() -> tangent(chord.fromHeight(), in.angle, 1e-5))
+                    .or(() -> tangent(chord.fromHeight(), in.angle, 1e-5, 0.01))
                     .filter(t -> t.contact < chord.distance());
             if (found.isEmpty()) {
                 return new Limb(in.height, doubt, in.angle, Bound.GROUND, Double.NaN, Double.NaN);
