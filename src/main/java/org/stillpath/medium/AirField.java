@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -17,7 +18,7 @@ final class AirField implements ScalarField {
     private final Pressure pressure;
     private final Humidity humidity;
     private final MergedSeams seams;
-    private final ThreadLocal<Work> work;
+    private final PerThread<Work> work;
 
     private static final class Work {
         Samples t = new Samples(1);
@@ -38,7 +39,7 @@ final class AirField implements ScalarField {
     }
 
     AirField(AirLaw law, AirLaw.Dispersion dispersion, ScalarField temperature, Pressure pressure, Humidity humidity) {
-        this(law, dispersion, temperature, pressure, humidity, ThreadLocal.withInitial(Work::new));
+        this(law, dispersion, temperature, pressure, humidity, PerThread.of(Work::new));
     }
 
     private AirField(
@@ -47,7 +48,7 @@ final class AirField implements ScalarField {
             ScalarField temperature,
             Pressure pressure,
             Humidity humidity,
-            ThreadLocal<Work> work) {
+            PerThread<Work> work) {
         this.law = law;
         this.dispersion = dispersion;
         this.temperature = temperature;

@@ -4,6 +4,7 @@ import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -18,9 +19,9 @@ final class AlongHeight implements ScalarField {
     private final ScalarField column;
 
     private final Chart chart;
-    private final ThreadLocal<Scratch> scratch;
+    private final PerThread<Scratch> scratch;
 
-    private AlongHeight(ScalarField whole, ScalarField column, Chart chart, ThreadLocal<Scratch> scratch) {
+    private AlongHeight(ScalarField whole, ScalarField column, Chart chart, PerThread<Scratch> scratch) {
         this.whole = whole;
         this.column = column;
         this.chart = chart;
@@ -35,7 +36,7 @@ final class AlongHeight implements ScalarField {
         ScalarField column = quantity.on(Chart.FLAT);
         return chart == Chart.FLAT
                 ? column
-                : new AlongHeight(quantity.on(chart), column, chart, ThreadLocal.withInitial(Scratch::new));
+                : new AlongHeight(quantity.on(chart), column, chart, PerThread.of(Scratch::new));
     }
 
     @Override

@@ -3,12 +3,13 @@ package org.stillpath.medium;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 
 /** A coordinate that a chart gives, as a level: for seams and edges at heights. Equal where both its parts are. */
 final class ChartLevel implements Level {
     private final Coordinate coordinate;
     private final Chart chart;
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final PerThread<Scratch> scratch = PerThread.of(Scratch::new);
 
     ChartLevel(Coordinate coordinate, Chart chart) {
         this.coordinate = coordinate;

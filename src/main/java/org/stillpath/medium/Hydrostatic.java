@@ -6,6 +6,7 @@ import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -41,7 +42,7 @@ final class Hydrostatic implements Pressure {
     private final ScalarField temperature;
     private final double low;
     private final double high;
-    private final ThreadLocal<Work> work;
+    private final PerThread<Work> work;
 
     private static final class Work {
         final double[] saturated = new double[Saturation.JET];
@@ -61,7 +62,7 @@ final class Hydrostatic implements Pressure {
             ScalarField temperature,
             double low,
             double high,
-            ThreadLocal<Work> work) {
+            PerThread<Work> work) {
         this.table = table;
         this.given = given;
         this.full = full;
@@ -108,7 +109,7 @@ final class Hydrostatic implements Pressure {
                 t,
                 table.low(),
                 table.high(),
-                ThreadLocal.withInitial(Work::new));
+                PerThread.of(Work::new));
     }
 
     private static HydrostaticTable.Rate rate(ScalarField t, Humidity moist, boolean full) {

@@ -5,6 +5,7 @@ import java.util.List;
 import java.util.Locale;
 import org.jspecify.annotations.Nullable;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Vector;
@@ -26,7 +27,7 @@ final class PlacedIndex implements IndexField {
     private final boolean turned;
     private final List<Level> limits;
     private final List<Seam> seams;
-    private final ThreadLocal<Scratch> scratch;
+    private final PerThread<Scratch> scratch;
     /**
      * Pieces between the knots of a single seam, made when they are first asked for. Several threads may make the same
      * one; all its fields are final, so that either serves.
@@ -68,7 +69,7 @@ final class PlacedIndex implements IndexField {
         this.seams = scalar.seams(wavelength).stream()
                 .map(s -> new Seam(FramedLevel.of(s.coordinate(), frame), s.knots()))
                 .toList();
-        this.scratch = ThreadLocal.withInitial(Scratch::new);
+        this.scratch = PerThread.of(Scratch::new);
         this.pieces = new PlacedIndex[seams.size() == 1 ? seams.get(0).count() + 1 : 0];
     }
 
