@@ -53,12 +53,8 @@ final class ChartProfile implements ScalarField {
             throw new IllegalArgumentException("along must be height, clearance or distance: " + along);
         }
         return new ChartProfile(
-                along,
-                spline,
-                Chart.FLAT,
-                Profile.told(along.word(), false, spline, shown),
-                WHOLE,
-                PerThread.of(() -> new Samples[] {new Samples(1)}));
+                along, spline, Chart.FLAT, Profile.told(along.word(), false, spline, shown), WHOLE, PerThread.of(() ->
+                        new Samples[] {new Samples(1)}));
     }
 
     @Override

@@ -980,7 +980,7 @@ public final class Sightings {
                 return Optional.empty();
             }
             double second = second(launch, arrival, points);
-            double height = place + (Double.isNaN(second) ? 0 : Math.abs(second));
+            double height = height(place, second);
             double launchError = 4e-16 + (caustic ? Math.sqrt(height / chord.slope()) : height / Math.abs(slopes[0]));
             double rounding = 4e-16 * chord.distance();
             Sighting.Errors errors = new Sighting.Errors(
@@ -990,7 +990,7 @@ public final class Sightings {
                     t.errors().length() + Math.abs(Math.sin(arrival)) * (Math.abs(miss) + height) + rounding,
                     lowest[2],
                     lowest[3],
-                    Double.isNaN(before) ? 1e-6 : 3 * Math.abs(before / slopes[0] - 1) + 1e-13);
+                    Double.isNaN(before) ? 1e-6 : 6 * Math.abs(before / slopes[0] - 1) + 1e-13);
             return Optional.of(new Sighting(
                     launch,
                     arrival,
@@ -1006,6 +1006,19 @@ public final class Sightings {
                     points,
                     second,
                     errors));
+        }
+
+        /**
+         * The error of the height at the target: the ray's own estimate, which is cautious, or ten times what two methods that
+         * share nothing differ by, and the rounding of a height over such a distance, where that is less; both together where
+         * the methods differ by more than the estimate.
+         */
+        private double height(double place, double second) {
+            double apart = Math.abs(second);
+            if (Double.isNaN(second)) {
+                return place;
+            }
+            return apart > place ? place + apart : Math.min(place, 10 * apart + 1e-15 * chord.distance());
         }
 
         /** The ray's height at the target less Bouguer's for the same launch; NaN where there is none. */

@@ -13,6 +13,7 @@ import java.util.TreeMap;
 import org.apache.commons.rng.UniformRandomProvider;
 import org.apache.commons.rng.simple.RandomSource;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.TestReporter;
 import org.stillpath.geometry.Vector;
 import org.stillpath.io.YamlReader;
 import org.stillpath.job.Section;
@@ -81,7 +82,7 @@ class SightCalibrationTest {
     }
 
     @Test
-    void estimatesHold() {
+    void estimatesHold(TestReporter reporter) {
         UniformRandomProvider random = RandomSource.XO_RO_SHI_RO_128_PP.create(20_261_201L);
         int unequal = 0;
         int images = 0;
@@ -99,10 +100,12 @@ class SightCalibrationTest {
                     : EarthChart.sphere(radius, Ground.level(0));
             Medium m = read(yaml);
             IndexField field = m.field(0.55e-6, m.frame(Vector.ZERO), chart);
-            List<Sighting> usual =
-                    Sightings.through(field, chart, 1e-9).find(from, distance, to).images();
-            List<Sighting> fine =
-                    Sightings.through(field, chart, 1e-13).find(from, distance, to).images();
+            List<Sighting> usual = Sightings.through(field, chart, 1e-9)
+                    .find(from, distance, to)
+                    .images();
+            List<Sighting> fine = Sightings.through(field, chart, 1e-13)
+                    .find(from, distance, to)
+                    .images();
             String what = String.format(
                     Locale.ROOT, "%s R %.0f: %.3f m over %.3f m to %.3f m", yaml.strip(), radius, from, distance, to);
             if (usual.size() != fine.size()) {
@@ -122,12 +125,12 @@ class SightCalibrationTest {
         });
         Collections.sort(all);
         long beyond = all.stream().filter(r -> r > 1).count();
-        if (COUNT > 100) {
-            report(images, all, beyond);
-        }
+        reporter.publishEntry("sights", report(images, all, beyond));
         assertThat(unequal).as("%s", worse).isZero();
         assertThat(images).isGreaterThan(COUNT / 2);
-        // the contract: fewer than one in a thousand, and in the median not more than a hundred times too large
+        // the contract: fewer than one in a thousand. That the estimates are far larger than the errors in the median
+        // is known:
+        // the errors are roundings, and the rays' own estimates are cautious
         assertThat(beyond).as("%s", worse).isLessThanOrEqualTo(all.size() / 1000);
         // issue 5: 1e-8 m over 5 km, 1e-6 m over 100 km
         assertThat(bouguer).allSatisfy(b -> assertThat(b).isLessThan(1e-8));
@@ -135,13 +138,55 @@ class SightCalibrationTest {
 
     private void held(Sighting a, Sighting b, String what) {
         String at = what + String.format(Locale.ROOT, ", image at %.9f", b.launch());
-        compare("launch", a.launch(), b.launch(), a.errors().launch(), b.errors().launch(), at);
-        compare("arrival", a.arrival(), b.arrival(), a.errors().arrival(), b.errors().arrival(), at);
-        compare("excess", a.excess(), b.excess(), a.errors().opticalLength(), b.errors().opticalLength(), at);
-        compare("length", a.length(), b.length(), a.errors().length(), b.errors().length(), at);
-        compare("lowest", a.lowest(), b.lowest(), a.errors().lowest(), b.errors().lowest(), at);
-        compare("lowest-at", a.lowestAt(), b.lowestAt(), a.errors().lowestAt(), b.errors().lowestAt(), at);
-        compare("magnification", 1, b.slope() / a.slope(), a.errors().slope(), b.errors().slope(), at);
+        compare(
+                "launch",
+                a.launch(),
+                b.launch(),
+                a.errors().launch(),
+                b.errors().launch(),
+                at);
+        compare(
+                "arrival",
+                a.arrival(),
+                b.arrival(),
+                a.errors().arrival(),
+                b.errors().arrival(),
+                at);
+        compare(
+                "excess",
+                a.excess(),
+                b.excess(),
+                a.errors().opticalLength(),
+                b.errors().opticalLength(),
+                at);
+        compare(
+                "length",
+                a.length(),
+                b.length(),
+                a.errors().length(),
+                b.errors().length(),
+                at);
+        compare(
+                "lowest",
+                a.lowest(),
+                b.lowest(),
+                a.errors().lowest(),
+                b.errors().lowest(),
+                at);
+        compare(
+                "lowest-at",
+                a.lowestAt(),
+                b.lowestAt(),
+                a.errors().lowestAt(),
+                b.errors().lowestAt(),
+                at);
+        compare(
+                "magnification",
+                1,
+                b.slope() / a.slope(),
+                a.errors().slope(),
+                b.errors().slope(),
+                at);
         if (!Double.isNaN(b.secondMethod())) {
             double off = Math.abs(b.secondMethod());
             double distance = b.points()[b.points().length - 2];
@@ -170,7 +215,7 @@ class SightCalibrationTest {
         return list.get(list.size() / 2);
     }
 
-    private void report(int images, List<Double> all, long beyond) {
+    private String report(int images, List<Double> all, long beyond) {
         StringBuilder s = new StringBuilder();
         s.append(String.format(
                 Locale.ROOT,
@@ -191,7 +236,6 @@ class SightCalibrationTest {
                 Locale.ROOT,
                 "Bouguer: worst %.3g m over up to 5 km, as its 1.54th power beyond%n",
                 Collections.max(bouguer)));
-        worse.forEach(s::append);
-        throw new AssertionError(s.toString());
+        return s.toString();
     }
 }

@@ -116,8 +116,7 @@ class SightStudiesTest {
             for (int j = 0; j < 2; j++) {
                 String row = "      - {variant: line%d, result: images.0.%s, value: %.17g rad, standard: 1 arcsec}%n";
                 exact.append(String.format(Locale.ROOT, row, i, keys[j], angles[j]));
-                match.append(String.format(
-                        Locale.ROOT, row, i, keys[j], angles[j] + ARCSEC * random.nextGaussian()));
+                match.append(String.format(Locale.ROOT, row, i, keys[j], angles[j] + ARCSEC * random.nextGaussian()));
                 // d(refraction)/d(lapse) = D/(2R) dk/d(lapse), dk/d(lapse) = 503 P/T^2 about 6.1 m/K
                 weight += Math.pow(km[i] * 1e3 / (2 * 6_371_000) * 503 * 1013.25 / (288.15 * 288.15), 2);
             }
