@@ -33,7 +33,7 @@ final class Executable {
     private final Order order;
     private final Supplier<Program> maker;
     private final AtomicLong walked = new AtomicLong();
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final PerThread<Scratch> scratch = PerThread.of(Scratch::new);
     private volatile @Nullable Plan plan;
 
     Executable(Order order, Supplier<Program> maker) {

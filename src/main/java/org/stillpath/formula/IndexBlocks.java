@@ -21,7 +21,7 @@ public final class IndexBlocks {
     private static final Samples[] NO_CHARTS = {};
 
     private final Map<Order, Block> blocks = new EnumMap<>(Order.class);
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final PerThread<Scratch> scratch = PerThread.of(Scratch::new);
 
     private record Block(Coordinate[] charted, BlockCompiler.Compiled code) {}
 

@@ -19,6 +19,7 @@ import org.jspecify.annotations.Nullable;
 import org.stillpath.job.Cells;
 import org.stillpath.job.Lattice;
 import org.stillpath.job.Node;
+import org.stillpath.job.Sounding;
 import org.stillpath.job.Sources;
 import org.stillpath.job.Table;
 import org.stillpath.problem.Place;
@@ -62,10 +63,11 @@ public final class FileSources implements Sources {
     public static FileSources of(Path job, boolean allowOutside) {
         Path parent = job.getParent();
         Path absolute = job.toAbsolutePath().normalize().getParent();
-        return new FileSources(
-                absolute == null ? job.toAbsolutePath() : absolute,
-                parent == null ? "" : parent.toString(),
-                allowOutside);
+        Path folder = absolute == null ? job.toAbsolutePath() : absolute;
+        FileSources sources = new FileSources(folder, parent == null ? "" : parent.toString(), allowOutside);
+        // a job that lies in a folder of one's own called media-models is no shipped document
+        sources.folders.put(job.toString(), folder);
+        return sources;
     }
 
     @Override
@@ -109,6 +111,12 @@ public final class FileSources implements Sources {
             return VtkXml.read(content.bytes(), content.shown(), wanted, asked);
         }
         return CsvReader.lattice(content.bytes(), content.shown(), wanted, asked);
+    }
+
+    @Override
+    public Sounding sounding(String name, Sounding.Wanted wanted, Place asked) {
+        Content content = content(name, CsvReader.MOST_LATTICE_BYTES, asked);
+        return IgraReader.read(content.bytes(), content.shown(), wanted, asked);
     }
 
     /** The bytes of a file and its name as the user would write it. */

@@ -1,6 +1,8 @@
 package org.stillpath.job;
 
 import org.stillpath.problem.Place;
+import org.stillpath.problem.Problem;
+import org.stillpath.problem.ProblemException;
 
 /**
  * What a job may name besides itself: shipped media and the user's own files. Implemented by the floor that reads files;
@@ -49,6 +51,21 @@ public interface Sources {
      * @throws org.stillpath.problem.ProblemException if it may not be read, or does not hold such a grid
      */
     Lattice lattice(String name, Lattice.Wanted wanted, Place asked);
+
+    /**
+     * One ascent of a radiosonde from a file in the layout of the archive IGRA, version 2.
+     *
+     * @param name path relative to the document that names it, as it stands there
+     * @param wanted which of its soundings is taken
+     * @param asked where it stands
+     * @return the sounding, in SI
+     * @throws org.stillpath.problem.ProblemException if it may not be read, is not in that layout, or none or several of its
+     *     soundings fit
+     */
+    default Sounding sounding(String name, Sounding.Wanted wanted, Place asked) {
+        throw new ProblemException(
+                Problem.input(asked, "", "\"" + name + "\" cannot be read: no soundings are at hand here"));
+    }
 
     /** Sources for callers without files: whatever is asked for is a fault that says so. */
     static Sources none() {

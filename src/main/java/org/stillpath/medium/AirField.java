@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -17,7 +18,7 @@ final class AirField implements ScalarField {
     private final Pressure pressure;
     private final Humidity humidity;
     private final MergedSeams seams;
-    private final Spare<Work> work;
+    private final PerThread<Work> work;
 
     private static final class Work {
         Samples t = new Samples(1);
@@ -38,7 +39,7 @@ final class AirField implements ScalarField {
     }
 
     AirField(AirLaw law, AirLaw.Dispersion dispersion, ScalarField temperature, Pressure pressure, Humidity humidity) {
-        this(law, dispersion, temperature, pressure, humidity, new Spare<>(Work::new));
+        this(law, dispersion, temperature, pressure, humidity, PerThread.of(Work::new));
     }
 
     private AirField(
@@ -47,7 +48,7 @@ final class AirField implements ScalarField {
             ScalarField temperature,
             Pressure pressure,
             Humidity humidity,
-            Spare<Work> work) {
+            PerThread<Work> work) {
         this.law = law;
         this.dispersion = dispersion;
         this.temperature = temperature;
@@ -62,7 +63,7 @@ final class AirField implements ScalarField {
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
-        Work k = work.take().with(count);
+        Work k = work.get().with(count);
         temperature.sample(x, y, z, count, Double.NaN, order, k.t);
         humidity.quantity().sample(x, y, z, count, Double.NaN, order, k.w);
         pressure.sample(x, y, z, count, k.t, k.w, order, k.p);
@@ -88,7 +89,6 @@ final class AirField implements ScalarField {
                 spread(k, !dry, order, out, i);
             }
         }
-        work.give(k);
     }
 
     /** Turns derivatives by T, p, e into derivatives by T, p and the humidity's quantity, in place. */

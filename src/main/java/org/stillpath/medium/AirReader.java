@@ -13,7 +13,9 @@ import org.stillpath.formula.FormulaException;
 import org.stillpath.formula.Names;
 import org.stillpath.formula.Order;
 import org.stillpath.job.Section;
+import org.stillpath.job.Sources;
 import org.stillpath.job.Value;
+import org.stillpath.problem.Problems;
 import org.stillpath.problem.Words;
 import org.stillpath.unit.Kind;
 
@@ -27,6 +29,11 @@ final class AirReader {
     /** A pressure off the standard atmosphere's by more than this is not weather; the largest departures are 5 %. */
     private static final double WEATHER = 0.06;
 
+    /** Part of the pressure that rounded heights and the mean of two temperatures leave open over a whole ascent. */
+    private static final double LIKELY_DEPARTURE = 0.01;
+
+    private final Sources sources;
+    private final Problems problems;
     private final TableReader tables;
     private final FormulaCache cache;
     private final Names names;
@@ -36,7 +43,16 @@ final class AirReader {
 
     private final List<String> notes = new ArrayList<>();
 
-    AirReader(TableReader tables, FormulaCache cache, Names names, Map<String, Double> with, boolean sound) {
+    AirReader(
+            Sources sources,
+            Problems problems,
+            TableReader tables,
+            FormulaCache cache,
+            Names names,
+            Map<String, Double> with,
+            boolean sound) {
+        this.sources = sources;
+        this.problems = problems;
         this.tables = tables;
         this.cache = cache;
         this.names = names;
@@ -56,9 +72,21 @@ final class AirReader {
             notes.add(known.title() + " is for " + Told.number(known.fixedCo2().get() * 1e6)
                     + " ppm of carbon dioxide whatever `co2` says; ciddor-1996 takes it into account");
         }
+        boolean sounded = !s.has("atmosphere") && isSounding(s);
+        Optional<SoundingReader.Column> sounding = sounded
+                ? SoundingReader.read(s.at("temperature"), sources, problems, known.saturation())
+                : Optional.empty();
+        Humidity usual = sounding.flatMap(SoundingReader.Column::humidity)
+                .map(f -> new Humidity(Humidity.Kind.RELATIVE, f, known.saturation()))
+                .orElse(Humidity.none(known.saturation()));
         Optional<Humidity> humidity =
-                s.find("humidity").map(v -> humidity(v, known)).orElse(Optional.of(Humidity.none(known.saturation())));
-        Optional<State> state = s.has("atmosphere") ? standard(s) : own(s, humidity);
+                s.find("humidity").map(v -> humidity(v, known)).orElse(Optional.of(usual));
+        Optional<State> state = s.has("atmosphere")
+                ? standard(s)
+                : sounded && !s.has("pressure")
+                        ? sounding.flatMap(c -> through(c, humidity, s))
+                        : own(s, sounded, sounding.map(SoundingReader.Column::temperature), humidity);
+        sounding.ifPresent(c -> notes.addAll(c.notes()));
         s.finish();
         if (law.isEmpty() || humidity.isEmpty() || state.isEmpty() || Double.isNaN(co2)) {
             return Optional.empty();
@@ -100,9 +128,41 @@ final class AirReader {
                 : Optional.of(new State(Us1976.temperature(), Us1976.pressure(), 0));
     }
 
-    private Optional<State> own(Section s, Optional<Humidity> humidity) {
+    private static boolean isSounding(Section s) {
+        return s.has("temperature")
+                && s.at("temperature").isSection()
+                && s.at("temperature").section().has("sounding");
+    }
+
+    /** The state of a sounding's air, its pressure from the lowest level that has one. */
+    private Optional<State> through(SoundingReader.Column c, Optional<Humidity> humidity, Section s) {
+        int at = c.ground();
+        if (at < 0) {
+            s.fault("temperature", "no level of the sounding has a pressure; give `pressure` beside it");
+            return Optional.empty();
+        }
+        if (humidity.isPresent() && !humidity.get().quantity().ofHeightAlone()) {
+            s.fault("humidity", "the pressure follows from the sounding, and needs a humidity of `height` alone");
+            return Optional.empty();
+        }
+        return humidity.map(w -> {
+            double height = c.heights()[at];
+            Hydrostatic air = Hydrostatic.of(c.temperature(), w, c.pressures()[at], height, true);
+            double[] off = SoundingReader.departure(c, air);
+            if (off[0] > LIKELY_DEPARTURE) {
+                notes.add("the pressure of the sounding at height " + Told.length(Math.rint(off[1])) + " is "
+                        + Told.number(Math.rint(1e3 * off[0]) / 10)
+                        + " % off the one that follows from its temperatures: a height, a pressure or a temperature of it "
+                        + "is wrong");
+            }
+            return new State(c.temperature(), air, height);
+        });
+    }
+
+    private Optional<State> own(
+            Section s, boolean sounded, Optional<ScalarField> sounding, Optional<Humidity> humidity) {
         Optional<ScalarField> temperature =
-                field(s.need("temperature", "288.15 K - 6.5 K/km * height"), Kind.TEMPERATURE);
+                sounded ? sounding : field(s.need("temperature", "288.15 K - 6.5 K/km * height"), Kind.TEMPERATURE);
         Value p = s.need("pressure", "{value: 1013.25 hPa, at-height: 0 m}");
         boolean hydrostatic =
                 p.isSection() && !p.section().has("profile") && !p.section().has("grid");

@@ -4,6 +4,7 @@ import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -18,9 +19,9 @@ final class AlongHeight implements ScalarField {
     private final ScalarField column;
 
     private final Chart chart;
-    private final Spare<Scratch> scratch;
+    private final PerThread<Scratch> scratch;
 
-    private AlongHeight(ScalarField whole, ScalarField column, Chart chart, Spare<Scratch> scratch) {
+    private AlongHeight(ScalarField whole, ScalarField column, Chart chart, PerThread<Scratch> scratch) {
         this.whole = whole;
         this.column = column;
         this.chart = chart;
@@ -35,12 +36,12 @@ final class AlongHeight implements ScalarField {
         ScalarField column = quantity.on(Chart.FLAT);
         return chart == Chart.FLAT
                 ? column
-                : new AlongHeight(quantity.on(chart), column, chart, new Spare<>(Scratch::new));
+                : new AlongHeight(quantity.on(chart), column, chart, PerThread.of(Scratch::new));
     }
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out) {
-        Scratch s = scratch.take().with(count);
+        Scratch s = scratch.get().with(count);
         Samples u = s.samples;
         chart.sample(Coordinate.HEIGHT, x, y, z, count, order, u);
         // s.x and s.y stay 0: the column stands on the origin
@@ -50,7 +51,6 @@ final class AlongHeight implements ScalarField {
                 chain(out.gz[i], order == Order.HESSIAN ? out.hzz[i] : 0, u, order, out, i);
             }
         }
-        scratch.give(s);
     }
 
     /**

@@ -70,6 +70,20 @@ public final class AtmosphereMedium implements Medium {
         return Optional.of(placed(dispersion(wavelength, true), frame, FramedChart.of(chart, frame)));
     }
 
+    @Override
+    public Optional<Medium> joinedOtherwise() {
+        Optional<ScalarField> t = temperature.joinedOtherwise();
+        Optional<Humidity> w = humidity.quantity().joinedOtherwise().map(humidity::with);
+        boolean tabled = pressure instanceof Pressure.Given g
+                && g.quantity().joinedOtherwise().isPresent();
+        if (t.isEmpty() && w.isEmpty() && !tabled) {
+            return Optional.empty();
+        }
+        ScalarField warm = t.orElse(temperature);
+        Humidity moist = w.orElse(humidity);
+        return Optional.of(new AtmosphereMedium(declaration, law, warm, pressure.joinedOtherwise(warm, moist), moist));
+    }
+
     private AirLaw.Dispersion dispersion(double wavelength, boolean group) {
         if (law.dispersive() && !(wavelength > 0)) {
             throw new IllegalArgumentException("medium " + name() + " needs a wavelength above 0 m: " + wavelength);

@@ -3,12 +3,13 @@ package org.stillpath.medium;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 
 /** A coordinate that a chart gives, as a level: for seams and edges at heights. Equal where both its parts are. */
 final class ChartLevel implements Level {
     private final Coordinate coordinate;
     private final Chart chart;
-    private final Spare<Scratch> scratch = new Spare<>(Scratch::new);
+    private final PerThread<Scratch> scratch = PerThread.of(Scratch::new);
 
     ChartLevel(Coordinate coordinate, Chart chart) {
         this.coordinate = coordinate;
@@ -17,13 +18,12 @@ final class ChartLevel implements Level {
 
     @Override
     public double value(double x, double y, double z, double[] gradient) {
-        Scratch s = scratch.take().point(x, y, z);
+        Scratch s = scratch.get().point(x, y, z);
         chart.sample(coordinate, s.x, s.y, s.z, 1, Order.GRADIENT, s.samples);
         gradient[0] = s.samples.gx[0];
         gradient[1] = s.samples.gy[0];
         gradient[2] = s.samples.gz[0];
         double value = s.samples.value[0];
-        scratch.give(s);
         return value;
     }
 

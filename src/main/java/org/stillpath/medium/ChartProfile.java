@@ -6,6 +6,7 @@ import java.util.Optional;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -23,7 +24,7 @@ final class ChartProfile implements ScalarField {
     /** The spline's cell that holds everywhere, or {@link #WHOLE}. */
     private final int cell;
 
-    private final ThreadLocal<Samples[]> scratch;
+    private final PerThread<Samples[]> scratch;
 
     private ChartProfile(
             Coordinate along,
@@ -31,7 +32,7 @@ final class ChartProfile implements ScalarField {
             Chart chart,
             List<String> warnings,
             int cell,
-            ThreadLocal<Samples[]> scratch) {
+            PerThread<Samples[]> scratch) {
         this.along = along;
         this.spline = spline;
         this.chart = chart;
@@ -52,17 +53,18 @@ final class ChartProfile implements ScalarField {
             throw new IllegalArgumentException("along must be height, clearance or distance: " + along);
         }
         return new ChartProfile(
-                along,
-                spline,
-                Chart.FLAT,
-                Profile.told(along.word(), false, spline, shown),
-                WHOLE,
-                ThreadLocal.withInitial(() -> new Samples[] {new Samples(1)}));
+                along, spline, Chart.FLAT, Profile.told(along.word(), false, spline, shown), WHOLE, PerThread.of(() ->
+                        new Samples[] {new Samples(1)}));
     }
 
     @Override
     public ScalarField on(Chart other) {
         return new ChartProfile(along, spline, other, warnings, cell, scratch);
+    }
+
+    @Override
+    public Optional<ScalarField> joinedOtherwise() {
+        return spline.joinedOtherwise().map(s -> new ChartProfile(along, s, chart, warnings, cell, scratch));
     }
 
     @Override

@@ -2,6 +2,7 @@ package org.stillpath.medium;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
 import org.stillpath.geometry.Frame;
@@ -35,6 +36,11 @@ public record FieldMedium(Declaration declaration, ScalarField scalar, boolean f
             }
         }
         return placed;
+    }
+
+    @Override
+    public Optional<Medium> joinedOtherwise() {
+        return scalar.joinedOtherwise().map(s -> new FieldMedium(declaration, s, fromOne, relativeToAir));
     }
 
     @Override

@@ -4,6 +4,7 @@ import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Formula;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 
 /** A formula as a level in a medium's frame: the margin of a condition, or the difference that switches a kink. */
 final class FormulaLevel implements Level {
@@ -12,7 +13,7 @@ final class FormulaLevel implements Level {
     private final double wavelength;
     private final String text;
     private final Chart chart;
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final PerThread<Scratch> scratch = PerThread.of(Scratch::new);
 
     FormulaLevel(Formula formula, double[] arguments, double wavelength, String text, Chart chart) {
         this.chart = chart;

@@ -4,6 +4,7 @@ import java.util.Optional;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Vector;
@@ -12,7 +13,7 @@ import org.stillpath.geometry.Vector;
 final class FramedChart implements GroundChart {
     private final Chart chart;
     private final Frame frame;
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final PerThread<Scratch> scratch = PerThread.of(Scratch::new);
 
     private FramedChart(Chart chart, Frame frame) {
         this.chart = chart;

@@ -3,6 +3,7 @@ package org.stillpath.medium;
 import java.util.ArrayList;
 import java.util.List;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -21,7 +22,7 @@ public final class Grid implements ScalarField {
     private final KnotBasis bz;
     private final double[] coefficients;
     private final boolean hold;
-    private final ThreadLocal<double[]> weights = ThreadLocal.withInitial(() -> new double[36]);
+    private final PerThread<double[]> weights = PerThread.of(() -> new double[36]);
 
     private Grid(KnotBasis bx, KnotBasis by, KnotBasis bz, double[] coefficients, boolean hold) {
         this.bx = bx;

@@ -2,6 +2,7 @@ package org.stillpath.medium;
 
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 
 /**
  * The ground as the margin of a region: the clearance over it, less how far below it rays are still followed. A ray that
@@ -10,7 +11,7 @@ import org.stillpath.formula.Order;
 public final class GroundLevel implements Level {
     private final EarthChart chart;
     private final double sunk;
-    private final ThreadLocal<Scratch> scratch = ThreadLocal.withInitial(Scratch::new);
+    private final PerThread<Scratch> scratch = PerThread.of(Scratch::new);
 
     /**
      * The ground of a chart.

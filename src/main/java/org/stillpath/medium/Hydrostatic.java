@@ -6,6 +6,7 @@ import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -30,14 +31,18 @@ final class Hydrostatic implements Pressure {
         0.3626837833783620, 0.3137066458778873, 0.2223810344533745, 0.1012285362903763
     };
 
+    /** Where the pressure was given, and what it is there. */
+    private record Given(double pressure, double height) {}
+
     private final HydrostaticTable table;
+    private final Given given;
     private final boolean full;
     private final Humidity humidity;
     private final Chart chart;
     private final ScalarField temperature;
     private final double low;
     private final double high;
-    private final Spare<Work> work;
+    private final PerThread<Work> work;
 
     private static final class Work {
         final double[] saturated = new double[Saturation.JET];
@@ -50,14 +55,16 @@ final class Hydrostatic implements Pressure {
 
     private Hydrostatic(
             HydrostaticTable table,
+            Given given,
             boolean full,
             Humidity humidity,
             Chart chart,
             ScalarField temperature,
             double low,
             double high,
-            Spare<Work> work) {
+            PerThread<Work> work) {
         this.table = table;
+        this.given = given;
         this.full = full;
         this.humidity = humidity;
         this.chart = chart;
@@ -93,7 +100,16 @@ final class Hydrostatic implements Pressure {
                 pressure,
                 height,
                 breaks.stream().mapToDouble(Double::doubleValue).toArray());
-        return new Hydrostatic(table, full, moist, Chart.FLAT, t, table.low(), table.high(), new Spare<>(Work::new));
+        return new Hydrostatic(
+                table,
+                new Given(pressure, height),
+                full,
+                moist,
+                Chart.FLAT,
+                t,
+                table.low(),
+                table.high(),
+                PerThread.of(Work::new));
     }
 
     private static HydrostaticTable.Rate rate(ScalarField t, Humidity moist, boolean full) {
@@ -140,7 +156,7 @@ final class Hydrostatic implements Pressure {
 
     @Override
     public void sample(double[] x, double[] y, double[] z, int count, Samples t, Samples w, Order order, Samples out) {
-        Work work = this.work.take();
+        Work work = this.work.get();
         boolean dry = humidity.isNone();
         for (int i = 0; i < count; i++) {
             double h = z[i];
@@ -176,7 +192,6 @@ final class Hydrostatic implements Pressure {
                 out.hzz[i] = over * (-kSlope * m - k * rise + k * m * over * t.gz[i]);
             }
         }
-        this.work.give(work);
     }
 
     /**
@@ -212,7 +227,12 @@ final class Hydrostatic implements Pressure {
 
     @Override
     public Pressure on(Chart other) {
-        return new Hydrostatic(table, full, humidity, other, temperature, low, high, work);
+        return new Hydrostatic(table, given, full, humidity, other, temperature, low, high, work);
+    }
+
+    @Override
+    public Pressure joinedOtherwise(ScalarField other, Humidity moist) {
+        return of(other, moist, given.pressure, given.height, full);
     }
 
     @Override
@@ -232,6 +252,7 @@ final class Hydrostatic implements Pressure {
     public Pressure piece(int[] cells, ScalarField t, ScalarField w, double from, double to) {
         return new Hydrostatic(
                 table,
+                given,
                 full,
                 humidity.isNone() ? humidity : humidity.with(w),
                 chart,

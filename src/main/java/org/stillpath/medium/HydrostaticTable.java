@@ -124,8 +124,15 @@ final class HydrostaticTable {
         if (!(h >= ends[0] && h <= ends[ends.length - 1]) || bases.length == 0) {
             return Double.NaN;
         }
-        int i = Arrays.binarySearch(ends, h);
-        i = Math.min(i >= 0 ? i : -i - 2, bases.length - 1);
+        int i = 0;
+        for (int above = bases.length; above - i > 1; ) {
+            int middle = (i + above) >>> 1;
+            if (ends[middle] <= h) {
+                i = middle;
+            } else {
+                above = middle;
+            }
+        }
         double s = ((h - ends[i]) - (ends[i + 1] - h)) / (ends[i + 1] - ends[i]);
         double b1 = 0;
         double b2 = 0;

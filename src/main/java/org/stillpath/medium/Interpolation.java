@@ -75,6 +75,14 @@ public enum Interpolation {
         }
     };
 
+    /**
+     * Another that as sound a hand might have taken, to see how much the joining matters: the natural spline for the monotone
+     * form, the monotone form for any other.
+     */
+    Interpolation other() {
+        return this == MONOTONE ? SPLINE : MONOTONE;
+    }
+
     /** The word in a job file. */
     public String word() {
         return name().toLowerCase(java.util.Locale.ROOT);

@@ -287,7 +287,7 @@ public final class MediaReader {
         }
         Names names = names(PLACE_ALONE, with);
         boolean sound = with.values().stream().noneMatch(q -> Double.isNaN(q.value()));
-        AirReader reader = new AirReader(tables, cache, names, values(with), sound);
+        AirReader reader = new AirReader(sources, problems, tables, cache, names, values(with), sound);
         return reader.medium(Declaration.of(name), s.at("air").section())
                 .map(m -> new Parsed(m, with))
                 .orElseGet(() -> vacuum(name, with));

@@ -56,6 +56,14 @@ public sealed interface Medium permits UniformMedium, AirMedium, AtmosphereMediu
         return Optional.empty();
     }
 
+    /**
+     * The same medium with its tables joined by another interpolant, to see how much hangs on what they leave open between their
+     * rows; empty where no table leaves a choice. Grids have one interpolant only.
+     */
+    default Optional<Medium> joinedOtherwise() {
+        return Optional.empty();
+    }
+
     /** Whether the index depends on the wavelength, so that the job must name one. */
     boolean needsWavelength();
 

@@ -5,6 +5,7 @@ import java.util.List;
 import java.util.Locale;
 import org.jspecify.annotations.Nullable;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Vector;
@@ -26,7 +27,7 @@ final class PlacedIndex implements IndexField {
     private final boolean turned;
     private final List<Level> limits;
     private final List<Seam> seams;
-    private final Spare<Scratch> scratch;
+    private final PerThread<Scratch> scratch;
     /**
      * Pieces between the knots of a single seam, made when they are first asked for. Several threads may make the same
      * one; all its fields are final, so that either serves.
@@ -70,7 +71,7 @@ final class PlacedIndex implements IndexField {
         this.seams = scalar.seams(wavelength).stream()
                 .map(s -> new Seam(FramedLevel.of(s.coordinate(), frame), s.knots()))
                 .toList();
-        this.scratch = new Spare<>(Scratch::new);
+        this.scratch = PerThread.of(Scratch::new);
         this.pieces = new PlacedIndex[seams.size() == 1 ? seams.get(0).count() + 1 : 0];
         this.many = null;
     }
@@ -109,10 +110,9 @@ final class PlacedIndex implements IndexField {
     public void sample(double[] x, double[] y, double[] z, int count, Order order, Samples out) {
         if (many != null && order != Order.VALUE) {
             if (moved) {
-                Scratch s = scratch.take().with(count);
+                Scratch s = scratch.get().with(count);
                 carry(x, y, z, count, s);
                 many.sample(s.x, s.y, s.z, count, wavelength, order, out);
-                scratch.give(s);
                 for (int i = 0; turned && i < count; i++) {
                     turn(order, out, i);
                 }
@@ -122,10 +122,9 @@ final class PlacedIndex implements IndexField {
             return;
         }
         if (moved) {
-            Scratch s = scratch.take().with(count);
+            Scratch s = scratch.get().with(count);
             carry(x, y, z, count, s);
             scalar.sample(s.x, s.y, s.z, count, wavelength, order, out);
-            scratch.give(s);
         } else {
             scalar.sample(x, y, z, count, wavelength, order, out);
         }

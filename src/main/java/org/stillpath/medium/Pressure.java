@@ -18,6 +18,14 @@ sealed interface Pressure permits Pressure.Given, Hydrostatic, Us1976.Layered {
     /** The same on a chart; only seams, limits and words of one that follows from the temperature know of it. */
     Pressure on(Chart chart);
 
+    /**
+     * The pressure of the same air with its tables joined by another interpolant.
+     *
+     * @param temperature so joined
+     * @param humidity so joined
+     */
+    Pressure joinedOtherwise(ScalarField temperature, Humidity humidity);
+
     /** Whether it depends on the height alone. */
     boolean ofHeightAlone();
 
@@ -58,6 +66,11 @@ sealed interface Pressure permits Pressure.Given, Hydrostatic, Us1976.Layered {
         @Override
         public Pressure on(Chart chart) {
             return new Given(quantity.on(chart));
+        }
+
+        @Override
+        public Pressure joinedOtherwise(ScalarField temperature, Humidity humidity) {
+            return quantity.joinedOtherwise().<Pressure>map(Given::new).orElse(this);
         }
 
         @Override

@@ -3,6 +3,7 @@ package org.stillpath.medium;
 import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -12,7 +13,7 @@ import org.stillpath.formula.Samples;
 final class PressureColumn implements ScalarField {
     private final ScalarField temperature;
     private final Pressure pressure;
-    private final ThreadLocal<Samples[]> scratch = ThreadLocal.withInitial(() -> new Samples[] {new Samples(1)});
+    private final PerThread<Samples[]> scratch = PerThread.of(() -> new Samples[] {new Samples(1)});
 
     PressureColumn(ScalarField temperature, Pressure pressure) {
         this.temperature = temperature;

@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Locale;
+import java.util.Optional;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 
@@ -85,6 +86,11 @@ public final class Profile implements ScalarField {
             }
         }
         return List.copyOf(told);
+    }
+
+    @Override
+    public Optional<ScalarField> joinedOtherwise() {
+        return spline.joinedOtherwise().map(s -> new Profile(along, s, warnings));
     }
 
     /** The coordinate that the table runs along. */

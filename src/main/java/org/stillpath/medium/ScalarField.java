@@ -46,6 +46,14 @@ public interface ScalarField {
         void sample(double[] x, double[] y, double[] z, int count, double wavelength, Order order, Samples out);
     }
 
+    /**
+     * The same quantity with its table joined by another interpolant: what the table leaves open between its rows. Empty where
+     * there is no table, or its nodes leave no choice.
+     */
+    default Optional<ScalarField> joinedOtherwise() {
+        return Optional.empty();
+    }
+
     /** Whether the quantity depends on the height alone, or on nothing. */
     default boolean ofHeightAlone() {
         return isConstant();

@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.Arrays;
+import java.util.Optional;
 
 /**
  * A table of values of one variable, joined by cubics. Immutable; evaluation allocates nothing and is exact to rounding
@@ -50,6 +51,13 @@ public final class Spline {
             }
         }
         return new Spline(knots.clone(), values.clone(), interpolation, beyond);
+    }
+
+    /** The same table joined by {@linkplain Interpolation#other another interpolant}; empty where two knots leave no choice. */
+    Optional<Spline> joinedOtherwise() {
+        return knots.length < 3
+                ? Optional.empty()
+                : Optional.of(new Spline(knots, values, interpolation.other(), beyond));
     }
 
     /** The knots (a copy). */

@@ -6,6 +6,7 @@ import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Coordinate;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -35,9 +36,9 @@ final class Us1976 implements ScalarField {
 
     private final Chart chart;
     private final int layer;
-    private final ThreadLocal<Samples[]> scratch;
+    private final PerThread<Samples[]> scratch;
 
-    private Us1976(Chart chart, int layer, ThreadLocal<Samples[]> scratch) {
+    private Us1976(Chart chart, int layer, PerThread<Samples[]> scratch) {
         this.chart = chart;
         this.layer = layer;
         this.scratch = scratch;
@@ -45,7 +46,7 @@ final class Us1976 implements ScalarField {
 
     /** The temperature, in kelvin. */
     static Us1976 temperature() {
-        return new Us1976(Chart.FLAT, ANY, ThreadLocal.withInitial(() -> new Samples[] {new Samples(1)}));
+        return new Us1976(Chart.FLAT, ANY, PerThread.of(() -> new Samples[] {new Samples(1)}));
     }
 
     /** The pressure that goes with it. */
@@ -201,6 +202,11 @@ final class Us1976 implements ScalarField {
         @Override
         public Pressure on(Chart other) {
             return new Layered(other, layer);
+        }
+
+        @Override
+        public Pressure joinedOtherwise(ScalarField temperature, Humidity humidity) {
+            return this;
         }
 
         @Override

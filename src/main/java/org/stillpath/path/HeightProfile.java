@@ -117,9 +117,17 @@ final class HeightProfile {
 
     /** |∇n| at a height, 1/m. */
     double steepness(double height) {
-        return at(height, Order.GRADIENT)
-                ? Math.sqrt((s.gx[0] * s.gx[0] + s.gy[0] * s.gy[0] + s.gz[0] * s.gz[0]) / (1 + s.value[0]))
-                : Double.NaN;
+        return refractivityAndSteepness(height)[1];
+    }
+
+    /** n − 1 and |∇n| at a height, 1/m, by one sample of the field. */
+    double[] refractivityAndSteepness(double height) {
+        if (!at(height, Order.GRADIENT)) {
+            return new double[] {Double.NaN, Double.NaN};
+        }
+        double n = Math.sqrt(1 + s.value[0]);
+        double g = Math.sqrt(s.gx[0] * s.gx[0] + s.gy[0] * s.gy[0] + s.gz[0] * s.gz[0]);
+        return new double[] {s.value[0] / (1 + n), g / n};
     }
 
     /**

@@ -151,13 +151,21 @@ final class LayerTable {
         return at[at.length - 1];
     }
 
-    /** The cell that holds a height, near a guess of it. */
+    /**
+     * The cell that holds a height, near a guess of it: in strides that double, then by bisection, since a step of a ray passes
+     * few of the table's thousands of cells.
+     */
     int cell(double h, int guess) {
-        if (h >= at[guess] && h < at[guess + 1]) {
-            return guess;
+        int lo = guess;
+        int hi = guess + 1;
+        for (int stride = 1; h < at[lo] && lo > 0; stride *= 2) {
+            hi = lo;
+            lo = Math.max(0, lo - stride);
         }
-        int lo = 0;
-        int hi = at.length - 1;
+        for (int stride = 1; h >= at[hi] && hi < at.length - 1; stride *= 2) {
+            lo = hi;
+            hi = Math.min(at.length - 1, hi + stride);
+        }
         while (hi - lo > 1) {
             int middle = (lo + hi) >>> 1;
             if (at[middle] <= h) {

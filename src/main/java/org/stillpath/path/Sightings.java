@@ -163,7 +163,7 @@ public final class Sightings {
      * A layer in which a level ray bends more than the earth curves.
      *
      * @param low its lower edge, metres
-     * @param high its upper edge, metres
+     * @param high its upper edge, metres; infinite where it goes on past the heights that the search looks at
      * @param kept rays that leave the eye within this elevation cannot pass its upper edge, rad; NaN where the eye's rays can
      */
     public record Duct(double low, double high, double kept) {}
@@ -381,9 +381,10 @@ public final class Sightings {
         if (low.height > ground) {
             return Optional.of(new Horizon(dip, 1e-12, Double.NaN, Double.NaN));
         }
-        Optional<Tangent> t = tangent(from, -dip, 1e-9);
+        Optional<Tangent> t = tangent(from, -dip, 1e-9, 0.1);
+        // the ray only tells where it touches, and how far it is from Bouguer's closed form
         return t.map(g -> new Horizon(
-                -g.elevation,
+                dip,
                 g.error + 0.1 * Math.abs(dip + g.elevation),
                 g.contact,
                 g.contactError + 2 * Math.abs(dip + g.elevation) * g.spread));
@@ -440,7 +441,7 @@ public final class Sightings {
                 high = middle;
             }
         }
-        return tangent(from, high, 1e-2)
+        return tangent(from, high, 1e-2, 0.01)
                 .filter(t -> t.contact < far * (1 - 1e-9))
                 .map(t -> new Horizon(-t.elevation, t.error, t.contact, t.contactError));
     }
@@ -465,14 +466,15 @@ public final class Sightings {
      * The ray that touches the ground near a launch elevation: Newton's method on its least clearance.
      *
      * @param within how far from the guess it may lie, rad
+     * @param share of the asked accuracy that the rays themselves may use
      */
-    private Optional<Tangent> tangent(double from, double guess, double within) {
+    private Optional<Tangent> tangent(double from, double guess, double within, double share) {
         double above = Math.max(from - chart.ground().height(0), 0.1);
         double scale = Double.isInfinite(chart.radius())
                 ? above / Math.max(Math.abs(guess), 1e-4)
                 : Math.sqrt(2 * above * chart.radius());
         Tracer down = tracer(new Ending.AtLowest(chart, scale), true, false);
-        double tight = Math.max(1e-15, 0.01 * accuracy);
+        double tight = Math.max(1e-15, share * accuracy);
         double e = guess;
         double before = Double.NaN;
         double step = Double.NaN;
@@ -488,7 +490,9 @@ public final class Sightings {
             double[] y = t.state();
             double[] c = clearance(y, t);
             step = (1e-10 - c[0]) / c[1];
-            if (Math.abs(step) <= Math.max(1e-16 + 1e-13 * Math.abs(e), 0.01 * accuracy * Math.abs(e))
+            // what the ray's own error leaves of the clearance is no reason for another one
+            double noise = scale * tight / Math.abs(c[1]);
+            if (Math.abs(step) <= Math.max(1e-16 + 1e-13 * Math.abs(e), Math.max(0.01 * accuracy * Math.abs(e), noise))
                     || Math.abs(step) >= 0.5 * Math.abs(before)) {
                 double error = 2e-16 + Math.abs(step) + (2e-10 + scale * accuracy * 0.1) / Math.abs(c[1]);
                 double bend = Math.abs(c[2]);
@@ -704,7 +708,8 @@ public final class Sightings {
                 double[] lifts = new double[heights.length];
                 double nu1 = air.refractivity(h1);
                 for (int i = 0; i < heights.length; i++) {
-                    double g = air.steepness(heights[i]);
+                    double[] here = air.refractivityAndSteepness(heights[i]);
+                    double g = here[1];
                     if (Double.isNaN(g)) {
                         lifts[i] = Double.NaN;
                         continue;
@@ -713,7 +718,7 @@ public final class Sightings {
                     if (heights[i] >= h1) {
                         mostUp = Math.max(mostUp, g);
                     }
-                    lifts[i] = air.lift(heights[i], air.refractivity(heights[i]), h1, nu1);
+                    lifts[i] = air.lift(heights[i], here[0], h1, nu1);
                 }
                 for (double h : new double[] {h1, 0.5 * (h1 + h2)}) {
                     // over rising ground the eye's height may lie under it farther on, where there is no air
@@ -893,6 +898,9 @@ public final class Sightings {
                     low = Double.NaN;
                 }
             }
+            if (!Double.isNaN(low)) {
+                ducts.add(new Duct(low, Double.POSITIVE_INFINITY, Double.NaN));
+            }
         }
 
         /** Drops elevations that lie closer than the fan needs, but not those beside an edge. */
@@ -972,7 +980,7 @@ public final class Sightings {
                 return Optional.empty();
             }
             double second = second(launch, arrival, points);
-            double height = place + (Double.isNaN(second) ? 0 : Math.abs(second));
+            double height = height(place, second);
             double launchError = 4e-16 + (caustic ? Math.sqrt(height / chord.slope()) : height / Math.abs(slopes[0]));
             double rounding = 4e-16 * chord.distance();
             Sighting.Errors errors = new Sighting.Errors(
@@ -982,7 +990,7 @@ public final class Sightings {
                     t.errors().length() + Math.abs(Math.sin(arrival)) * (Math.abs(miss) + height) + rounding,
                     lowest[2],
                     lowest[3],
-                    Double.isNaN(before) ? 1e-6 : 3 * Math.abs(before / slopes[0] - 1) + 1e-13);
+                    Double.isNaN(before) ? 1e-6 : 6 * Math.abs(before / slopes[0] - 1) + 1e-13);
             return Optional.of(new Sighting(
                     launch,
                     arrival,
@@ -1000,6 +1008,19 @@ public final class Sightings {
                     errors));
         }
 
+        /**
+         * The error of the height at the target: the ray's own estimate, which is cautious, or ten times what two methods that
+         * share nothing differ by, and the rounding of a height over such a distance, where that is less; both together where
+         * the methods differ by more than the estimate.
+         */
+        private double height(double place, double second) {
+            double apart = Math.abs(second);
+            if (Double.isNaN(second)) {
+                return place;
+            }
+            return apart > place ? place + apart : Math.min(place, 10 * apart + 1e-15 * chord.distance());
+        }
+
         /** The ray's height at the target less Bouguer's for the same launch; NaN where there is none. */
         private double second(double launch, double arrival, double[] points) {
             Optional<Bouguer> bouguer = Bouguer.of(field, chart.radius());
@@ -1011,7 +1032,10 @@ public final class Sightings {
             // a turn so near to an end that the noted places step over it shows in the signs of the elevations
             double way = Math.signum(launch);
             for (int i = 1; i < n; i++) {
-                double rise = Math.signum(points[2 * i + 1] - points[2 * i - 1]);
+                double climbed = points[2 * i + 1] - points[2 * i - 1];
+                // two places noted at one seam differ by rounding
+                boolean still = Math.abs(climbed) <= 1e-12 * (1 + Math.abs(points[2 * i + 1]));
+                double rise = still ? 0 : Math.signum(climbed);
                 if (rise != 0 && way != 0 && rise != way) {
                     turns.add(points[2 * i - 1]);
                 }
@@ -1180,7 +1204,7 @@ public final class Sightings {
             Optional<Tangent> found = horizon.filter(h -> Math.abs(h.dip() + in.angle) < 1e-5)
                     .filter(h -> !Double.isNaN(h.distance()))
                     .map(h -> new Tangent(-h.dip(), h.dipError(), h.distance(), h.distanceError(), 0))
-                    .or(() -> tangent(chord.fromHeight(), in.angle, 1e-5))
+                    .or(() -> tangent(chord.fromHeight(), in.angle, 1e-5, 0.01))
                     .filter(t -> t.contact < chord.distance());
             if (found.isEmpty()) {
                 return new Limb(in.height, doubt, in.angle, Bound.GROUND, Double.NaN, Double.NaN);

@@ -6,6 +6,7 @@ import java.util.function.Supplier;
 import org.stillpath.job.Cells;
 import org.stillpath.job.Lattice;
 import org.stillpath.job.Node;
+import org.stillpath.job.Sounding;
 import org.stillpath.job.Sources;
 import org.stillpath.job.Table;
 import org.stillpath.problem.Place;
@@ -70,6 +71,20 @@ final class RememberedSources implements Sources {
             cells.headers().forEach(h -> fingerprint.add(h.text()));
             cells.rows().forEach(r -> r.cells().forEach(fingerprint::add));
             return cells;
+        });
+    }
+
+    @Override
+    public Sounding sounding(String name, Sounding.Wanted wanted, Place asked) {
+        return once(new Key("sounding", name, wanted.toString(), asked.source()), Sounding.class, () -> {
+            Sounding sounding = files.sounding(name, wanted, asked);
+            fingerprint.add(sounding.station());
+            fingerprint.add(sounding.time());
+            for (Sounding.Level l : sounding.levels()) {
+                fingerprint.add(
+                        new double[] {l.geopotential(), l.pressure(), l.temperature(), l.humidity(), l.depression()});
+            }
+            return sounding;
         });
     }
 

@@ -50,6 +50,28 @@ public record ImageRow(
         errors = Map.copyOf(errors);
     }
 
+    /** The same image with other error estimates. */
+    ImageRow withErrors(Map<String, Double> other) {
+        return new ImageRow(
+                launch,
+                arrival,
+                refractionAtFrom,
+                refractionAtTo,
+                displacement,
+                coefficient,
+                remark,
+                opticalLength,
+                excess,
+                length,
+                lowest,
+                lowestAt,
+                orientation,
+                magnification,
+                kind,
+                points,
+                other);
+    }
+
     /** A copy. */
     @Override
     public double[][] points() {

@@ -77,6 +77,12 @@ public record Scene(
         return Train.through(m.field(wavelength, m.frame(Vector.ZERO)));
     }
 
+    /** The same scene in another medium everywhere. */
+    Scene in(Medium other) {
+        return new Scene(
+                title, wavelengths, wavelengthGiven, accuracy, train, Optional.of(other), figures, sources, memory);
+    }
+
     /** What the media and the choice of wavelength make doubtful. */
     public List<String> warnings() {
         List<String> list = new ArrayList<>();

@@ -66,7 +66,7 @@ final class SightlineTask implements Task {
         boolean earthGiven = job.has("earth");
         return options -> run(
                 scene,
-                setting(scene, known, ground.orElse(Ground.level(0))),
+                air(scene, known, ground.orElse(Ground.level(0))),
                 sight.orElseThrow(() -> new IllegalStateException("a job without a sight has faults")),
                 figures,
                 options.figures(),
@@ -93,15 +93,27 @@ final class SightlineTask implements Task {
         }
     }
 
-    private static Setting setting(Scene scene, Earth earth, Ground ground) {
+    /** The air as it is, and with its tables joined otherwise, where it has some. */
+    private record Air(Setting setting, Optional<Other> other) {
+        record Other(Medium medium, Setting setting) {}
+    }
+
+    private static Air air(Scene scene, Earth earth, Ground ground) {
         Medium m = scene.through().orElseThrow();
         Over over = new Over(earth.radius(), ground, m, scene.wavelength(), scene.accuracy());
-        return scene.memory().once(over, Setting.class, () -> {
-            EarthChart chart = earth.flat() ? EarthChart.flat(ground) : EarthChart.sphere(earth.radius(), ground);
-            IndexField field = m.field(scene.wavelength(), m.frame(Vector.ZERO), chart);
-            return new Setting(
-                    earth, chart, field, Sightings.through(field, chart, scene.accuracy()), scene.accuracy());
-        });
+        return scene.memory()
+                .once(
+                        over,
+                        Air.class,
+                        () -> new Air(
+                                setting(scene, m, earth, ground),
+                                m.joinedOtherwise().map(o -> new Air.Other(o, setting(scene, o, earth, ground)))));
+    }
+
+    private static Setting setting(Scene scene, Medium m, Earth earth, Ground ground) {
+        EarthChart chart = earth.flat() ? EarthChart.flat(ground) : EarthChart.sphere(earth.radius(), ground);
+        IndexField field = m.field(scene.wavelength(), m.frame(Vector.ZERO), chart);
+        return new Setting(earth, chart, field, Sightings.through(field, chart, scene.accuracy()), scene.accuracy());
     }
 
     /** Faults of heights and distances against the ground. */
@@ -141,6 +153,15 @@ final class SightlineTask implements Task {
 
     private static String length(double metres) {
         return Display.of(metres, "m", Math.max(1e-3, 1e-9 * Math.abs(metres))).toString();
+    }
+
+    private static Result run(
+            Scene scene, Air air, Sight sight, SightFigures.Wanted wanted, boolean drawn, boolean earthGiven) {
+        Result result = run(scene, air.setting, sight, wanted, drawn, earthGiven);
+        return air.other
+                .map(o -> OtherJoining.held(
+                        result, run(scene.in(o.medium), o.setting, sight, wanted, false, earthGiven), scene.accuracy()))
+                .orElse(result);
     }
 
     private static Result run(
@@ -346,7 +367,10 @@ final class SightlineTask implements Task {
             warnings.add("no ray got to the target's distance: " + seen.note());
         }
         for (Sightings.Duct d : seen.ducts()) {
-            warnings.add("between " + length(d.low()) + " and " + length(d.high())
+            boolean open = Double.isInfinite(d.high());
+            warnings.add((open
+                            ? "from " + length(d.low()) + " on, as far up as was looked,"
+                            : "between " + length(d.low()) + " and " + length(d.high()))
                     + " the air bends level rays more than the earth curves: a duct"
                     + (Double.isNaN(d.kept())
                             ? ""
@@ -443,16 +467,26 @@ final class SightlineTask implements Task {
                     : "No ray from the eye meets the target";
         }
         ImageRow first = rows.get(0);
-        String k = first.coefficient().isPresent()
-                ? String.format(Locale.ROOT, ", k = %.3f", first.coefficient().getAsDouble())
-                : "";
         if (rows.size() == 1) {
-            return "The target is seen once, " + first.orientation() + ", "
-                    + Display.in(Math.abs(first.refractionAtFrom()), "arcsec", 5e-8)
-                    + (first.refractionAtFrom() < 0 ? " lower" : " higher") + " than it is" + k;
+            return once(first);
         }
         return rows.size() + " images of the target: "
                 + String.join(", ", rows.stream().map(ImageRow::orientation).toList()) + " from above";
+    }
+
+    /** The answer where there is one image, with the digits that its error leaves. */
+    static String once(ImageRow image) {
+        double error = image.errors().getOrDefault("refraction-at-from", 0.0);
+        String k = image.coefficient().isPresent()
+                ? ", k = "
+                        + Display.of(
+                                image.coefficient().getAsDouble(),
+                                "1",
+                                Math.max(1e-3, image.errors().getOrDefault("refraction-coefficient", 0.0)))
+                : "";
+        return "The target is seen once, " + image.orientation() + ", "
+                + Display.in(Math.abs(image.refractionAtFrom()), "arcsec", Math.max(5e-8, error))
+                + (image.refractionAtFrom() < 0 ? " lower" : " higher") + " than it is" + k;
     }
 
     private static Result stars(
@@ -619,7 +653,8 @@ final class SightlineTask implements Task {
         return Math.min(ground.height(0), ground.height(staff.distance()));
     }
 
-    private static Table table(List<ImageRow> rows) {
+    /** The images as a table. */
+    static Table table(List<ImageRow> rows) {
         List<String> columns = List.of(
                 "image",
                 "orientation",

@@ -346,6 +346,34 @@ class SightlineTest {
         assertThat(r.warnings()).anyMatch(w -> w.contains("set in the instrument already"));
     }
 
+    @ParameterizedTest
+    @CsvSource({
+        "'to: {distance: 5 km, height: 20 m}', target",
+        "'to: {distance: 60 km, height: 2 m}', hidden",
+        "'to: {distance: 25 km, span: [0 m, 30 m]}', ship",
+        "'to: {stars: [80 deg]}', star",
+        "'to: {stars: [95 deg]}', ground",
+        "'to: {staff: {distance: 60 m}}', staff",
+        "'to: {distance: 5 km}\nobserved: {zenith-angle: 90.02 deg, slope-distance: 5000 m}', reduced",
+        "'to: {}\nobserved: {zenith-angle: 95 deg, slope-distance: 5000 m}', nowhere"
+    })
+    void whatCanHurtStandsInEveryResult(String to, String what) {
+        Result r = Jobs.run(AIR + "from: {height: 30 m}\n" + to + "\n");
+        assertThat(r.cautions())
+                .as(what)
+                .anyMatch(c -> c.contains("real temperature field of the air is the uncertainty"))
+                .anyMatch(c -> c.contains("Never sight the sun") && c.contains("filter"))
+                .anyMatch(c -> c.contains("on which safety rests") && c.contains("licensed practice"));
+    }
+
+    @Test
+    void aTemperatureInTheWrongUnitIsTold() {
+        // 15 degC typed as 15 K
+        Result r = Jobs.run(AIR.replace("288.15 K", "15 K").replace("6.5 K/km*height", "0.1 K/km*height")
+                + "from: {height: 30 m}\nto: {distance: 5 km, height: 20 m}\n");
+        assertThat(r.warnings()).anyMatch(w -> w.contains("no weather") && w.contains("degC"));
+    }
+
     @Test
     void aSeriesGivesWhatSingleRunsGive() {
         String job = AIR + "from: {height: 30 m}\nto: {distance: 5 km, height: 20 m}\n";

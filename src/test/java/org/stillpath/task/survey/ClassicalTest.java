@@ -34,20 +34,21 @@ class ClassicalTest {
     @ParameterizedTest
     @CsvSource({
         // Rueger 1996, 4th ed., sections 6.4 and 7; recomputed
-        "1000, 0.13, -2.322021029947e-07, -1.734843298236e-08",
-        "10000, 0.13, -0.0002322021029947, -1.734843298236e-05",
-        "20000, 0.13, -0.001857616823958, -0.0001387874638589",
-        "50000, 0.13, -0.02902526287434, -0.002168554122795",
-        "65000, 0.13, -0.06376850253492, -0.004764313407781",
-        "50000, 0.25, -0.0481188044999, -0.008019800749983",
-        "20000, -1.0, 0.03284910387193, -0.008212275967982"
+        "1000, 0.13, -2.322021029947e-07, -1.734843298236e-08, -2.495505359771e-07",
+        "10000, 0.13, -0.0002322021029947, -1.734843298236e-05, -0.0002495505359771",
+        "20000, 0.13, -0.001857616823958, -0.0001387874638589, -0.001996404287817",
+        "50000, 0.13, -0.02902526287434, -0.002168554122795, -0.03119381699713",
+        "65000, 0.13, -0.06376850253492, -0.004764313407781, -0.0685328159427",
+        "50000, 0.25, -0.0481188044999, -0.008019800749983, -0.05613860524988",
+        "20000, -1.0, 0.03284910387193, -0.008212275967982, 0.02463682790395"
     })
-    void velocityAndArcCorrections(double d, double k, double second, double arc) {
+    void velocityAndArcCorrections(double d, double k, double second, double arc, double sum) {
         assertThat(Classical.secondVelocity(d, k, R)).isCloseTo(second, within(1e-12));
         assertThat(Classical.arcToChord(d, k, R)).isCloseTo(arc, within(1e-12));
         // the algebraic sum of the two, -(2k - k^2) d^3/(24 R^2)
         assertThat(Classical.secondVelocity(d, k, R) + Classical.arcToChord(d, k, R))
-                .isCloseTo(-(2 * k - k * k) * d * d * d / (24 * R * R), within(1e-15));
+                .isCloseTo(-(2 * k - k * k) * d * d * d / (24 * R * R), within(1e-15))
+                .isCloseTo(sum, within(1e-12));
     }
 
     @Test
@@ -112,6 +113,8 @@ class ClassicalTest {
     @ParameterizedTest
     @CsvSource({
         // k = 503 P/T^2 (0.0342 + dT/dz): Brunner (ed.) 1984; Hirt et al 2010, JGR 115, D21102; recomputed
+        "1013.25, 288.15, -0.0065, 0.1700306122735",
+        "1013.25, 288.15, 0.0, 0.2099294924098",
         "1013.25, 288.15, -0.0098, 0.1497742577427",
         "1013.25, 288.15, -0.0341632, 0.0002258890444644",
         "1013.25, 303.15, -0.5, -2.583264861295",
@@ -128,5 +131,9 @@ class ClassicalTest {
         double ng = 287.6155 + 4.88660 / (0.85 * 0.85) + 0.06800 / Math.pow(0.85, 4);
         double n = (273.15 / 1013.25 * ng * 1005 / 308.15 - 11.27 * 25 / 308.15) * 1e-6;
         assertThat(Classical.firstVelocity(1, 281.8e-6, n)).isCloseTo(23.77520215981e-6, within(1e-14));
+        // in the mountains: 0.658 um, 5 degC, 750 hPa, 5 hPa of vapour; recomputed
+        double red = 287.6155 + 4.88660 / (0.658 * 0.658) + 0.06800 / Math.pow(0.658, 4);
+        double high = (273.15 / 1013.25 * red * 750 / 278.15 - 11.27 * 5 / 278.15) * 1e-6;
+        assertThat(Classical.firstVelocity(1, 281.8e-6, high)).isCloseTo(64.45706119453e-6, within(1e-14));
     }
 }
