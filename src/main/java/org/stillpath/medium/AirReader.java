@@ -4,13 +4,9 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.LinkedHashSet;
 import java.util.List;
-import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
 import org.stillpath.formula.Chart;
-import org.stillpath.formula.Formula;
-import org.stillpath.formula.FormulaException;
-import org.stillpath.formula.Names;
 import org.stillpath.formula.Order;
 import org.stillpath.job.Section;
 import org.stillpath.job.Value;
@@ -27,21 +23,11 @@ final class AirReader {
     /** A pressure off the standard atmosphere's by more than this is not weather; the largest departures are 5 %. */
     private static final double WEATHER = 0.06;
 
-    private final TableReader tables;
-    private final FormulaCache cache;
-    private final Names names;
-    private final Map<String, Double> with;
-    /** Whether all values of names could be read; formulas would only look wrong otherwise. */
-    private final boolean sound;
-
+    private final FieldReader fields;
     private final List<String> notes = new ArrayList<>();
 
-    AirReader(TableReader tables, FormulaCache cache, Names names, Map<String, Double> with, boolean sound) {
-        this.tables = tables;
-        this.cache = cache;
-        this.names = names;
-        this.with = with;
-        this.sound = sound;
+    AirReader(FieldReader fields) {
+        this.fields = fields;
     }
 
     /** The medium; empty after a fault. */
@@ -195,45 +181,8 @@ final class AirReader {
         return relative.map(f -> new Humidity(Humidity.Kind.RELATIVE, f, law.saturation()));
     }
 
-    /** A quantity, a formula, a profile or a grid; empty after a fault. */
     private Optional<ScalarField> field(Value v, Kind kind) {
-        if (v.isPlaceholder()) {
-            return Optional.empty();
-        }
-        if (v.isList()) {
-            v.fault(kind.describe() + ", a formula, or a section such as {profile: {along: height, ..}} is needed, "
-                    + "not a list");
-            return Optional.empty();
-        }
-        if (v.isSection()) {
-            Optional<TableReader.Read> read = tables.tabulated(v, kind, 0, Interpolation.MONOTONE);
-            read.ifPresent(r -> notes.addAll(r.notes()));
-            return read.map(TableReader.Read::field);
-        }
-        String text = v.text();
-        if (text.isEmpty()) {
-            v.fault(kind.describe() + " or a formula is needed, such as " + kind.example());
-            return Optional.empty();
-        }
-        if (MediaReader.isQuantity(text, names.with().keySet())) {
-            double q = v.quantity(kind);
-            if (!kind.equals(Kind.NUMBER) && q <= 0) {
-                v.fault(Words.quoted(text) + " does not do; " + kind.describe() + " above 0 is needed"
-                        + (kind.equals(Kind.TEMPERATURE) ? ", in K or degC" : ""));
-                return Optional.empty();
-            }
-            return Double.isNaN(q) ? Optional.empty() : Optional.of(new Constant(q));
-        }
-        if (!sound) {
-            return Optional.empty();
-        }
-        try {
-            Formula formula = cache.formula(text, names, kind.dimension());
-            return Optional.of(FormulaField.of(formula, with));
-        } catch (FormulaException e) {
-            e.faults().forEach(f -> v.fault(f.offset(), f.message()));
-            return Optional.empty();
-        }
+        return fields.field(v, kind, Interpolation.MONOTONE, notes);
     }
 
     /** Says what of the state is not likely, or outside the range of the law: the first of each sort. */
