@@ -1,6 +1,7 @@
 package org.stillpath.medium;
 
 import java.util.List;
+import java.util.Optional;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
@@ -67,6 +68,17 @@ public interface ScalarField {
     /** Says in words why the quantity is undefined at a point of the medium's frame; empty text where it is defined. */
     default String explain(double x, double y, double z, double wavelength) {
         return "";
+    }
+
+    /**
+     * The mean along z between two heights as a quantity of x and y, exactly; empty where the field has no better way than
+     * to be sampled.
+     *
+     * @param from lower height, metres of the medium's frame
+     * @param to upper height
+     */
+    default Optional<ScalarField> meanAlongZ(double from, double to) {
+        return isConstant() ? Optional.of(this) : Optional.empty();
     }
 
     /** What was assumed, or is doubtful, about the quantity, in words. */
