@@ -212,7 +212,7 @@ public final class MaterialReader {
             items.size() == 2 ? items.get(0).positive(kind) : Double.NaN,
             items.size() == 2 ? items.get(1).positive(kind) : Double.NaN
         };
-        if (items.size() != 2 && v.isList() || ends[0] >= ends[1]) {
+        if ((items.size() != 2 && v.isList()) || ends[0] >= ends[1]) {
             v.fault("two are needed, the smaller first");
         }
         return ends;

@@ -71,8 +71,7 @@ final class Harmonic {
         while (highest > 0 && re[highest] == 0 && im[highest] == 0) {
             highest--;
         }
-        return new Harmonic(
-                java.util.Arrays.copyOf(re, highest + 1), java.util.Arrays.copyOf(im, highest + 1), radius);
+        return new Harmonic(java.util.Arrays.copyOf(re, highest + 1), java.util.Arrays.copyOf(im, highest + 1), radius);
     }
 
     private static double significant(double value, double trifle) {

@@ -66,8 +66,8 @@ public record Plate(SolidMedium medium, Frame own, int front, int back, Surface 
             for (int k = 0; k < (i == 0 ? 1 : ANGLES); k++) {
                 double angle = 2 * Math.PI * k / ANGLES;
                 for (int d = 0; d <= DEPTHS; d++) {
-                    Vector p = own.fromJob(plate.toJob(
-                            new Vector(r * Math.cos(angle), r * Math.sin(angle), depth * d / DEPTHS)));
+                    Vector p = own.fromJob(
+                            plate.toJob(new Vector(r * Math.cos(angle), r * Math.sin(angle), depth * d / DEPTHS)));
                     x[n] = p.x();
                     y[n] = p.y();
                     z[n++] = p.z();
@@ -91,8 +91,9 @@ public record Plate(SolidMedium medium, Frame own, int front, int back, Surface 
             return Optional.empty();
         }
         if (frontFace.whole() || backFace.whole()) {
-            return Optional.of("medium `" + medium.name() + "` expands freely, which is computed for plates between two "
-                    + "faces, not for whole spheres; leave `expansion: free` out");
+            return Optional.of(
+                    "medium `" + medium.name() + "` expands freely, which is computed for plates between two "
+                            + "faces, not for whole spheres; leave `expansion: free` out");
         }
         Swelling swelling = new Swelling(medium, own, frontFace, backFace);
         double radius = 0.5 * medium.diameter();

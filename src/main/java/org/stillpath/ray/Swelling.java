@@ -42,6 +42,7 @@ final class Swelling {
     private final boolean aligned;
     /** The plate's origin in the medium's frame. */
     private final Vector offset;
+
     private final ScalarField temperature;
     private final double alpha;
     private final double poisson;

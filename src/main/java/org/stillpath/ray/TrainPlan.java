@@ -117,8 +117,7 @@ public final class TrainPlan {
             boolean face = s.into().isPresent() || s.action() instanceof Action.Reflect;
             if (face && now.isPresent() && now.get() instanceof SolidMedium solid) {
                 Frame own = solid.frame(origins.getOrDefault(solid.name(), Vector.ZERO));
-                list.add(new Plate(
-                        solid, own, entered, i, surfaces.get(entered).surface(), s.surface()));
+                list.add(new Plate(solid, own, entered, i, surfaces.get(entered).surface(), s.surface()));
             }
             if (s.into().isPresent()) {
                 now = s.into();
@@ -131,7 +130,8 @@ public final class TrainPlan {
 
     /** The surfaces as they bulge: each by the plates on its two sides; a plate that light passes twice counts once. */
     private static List<Surface> shapes(List<Step> surfaces, List<Plate> plates) {
-        List<Surface> shapes = new ArrayList<>(surfaces.stream().map(Step::surface).toList());
+        List<Surface> shapes =
+                new ArrayList<>(surfaces.stream().map(Step::surface).toList());
         Set<String> done = new HashSet<>();
         for (Plate p : plates) {
             if (!p.medium().free() || p.refusal().isPresent()) {
