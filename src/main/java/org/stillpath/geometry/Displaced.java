@@ -5,20 +5,27 @@ package org.stillpath.geometry;
  * displacement, so that rays refract at the true surface, with its true slope and curvature.
  *
  * <p>A straight line is met by Newton's method from where it meets the form itself, two or three evaluations; that holds
- * for displacements that are small against the distances between crossings, as those of heated plates are.
+ * for displacements that are small against the distances between crossings, as those of heated plates are. Far from the
+ * surface, by more than {@value #FAR} times the largest displacement, F is left as that of the form: only its sign and
+ * its course matter there, and rays look at it at every step.
  *
  * @param form the form before it moved
  * @param by how far its points moved
+ * @param most the largest displacement, metres
  */
-public record Displaced(Form form, Displacement by) implements Form {
+public record Displaced(Form form, Displacement by, double most) implements Form {
+    private static final double FAR = 1000;
     private static final int MOST_STEPS = 30;
     private static final double NEAR = 1e-16;
 
     @Override
     public void evaluate(double x, double y, double z, double[] out) {
+        form.evaluate(x, y, z, out);
+        if (Math.abs(out[0]) > FAR * most) {
+            return;
+        }
         double[] moved = new double[10];
         by.evaluate(x, y, z, moved);
-        form.evaluate(x, y, z, out);
         for (int i = 0; i < 10; i++) {
             out[i] -= moved[i];
         }

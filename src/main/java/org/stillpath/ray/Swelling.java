@@ -31,6 +31,8 @@ final class Swelling {
     private static final int MOST = 24;
     private static final int[] COUNTS = {1, 2, 3, 4, 6, 8, 12, 16, MOST};
     private static final double SAME = 1e-13;
+    private static final int RINGS = 12;
+    private static final int ANGLES = 24;
 
     private final SolidMedium medium;
     private final Frame own;
@@ -174,6 +176,23 @@ final class Swelling {
             out[8] = share * form(b, ax.y(), ay.y(), ax.z(), ay.z());
             out[9] = share * form(b, ax.z(), ay.z(), ax.z(), ay.z());
         };
+    }
+
+    /** The largest movement of a face over the plate's disc, from a sample of places, with room; metres. */
+    double most() {
+        double radius = 0.5 * medium.diameter();
+        double most = 0;
+        double[] b = new double[6];
+        for (int i = 0; i <= RINGS; i++) {
+            for (int k = 0; k < (i == 0 ? 1 : ANGLES); k++) {
+                double angle = 2 * Math.PI * k / ANGLES;
+                double r = radius * i / RINGS;
+                if (jet(r * Math.cos(angle), r * Math.sin(angle), b)) {
+                    most = Math.max(most, Math.abs(b[0]));
+                }
+            }
+        }
+        return most;
     }
 
     private static double form(double[] b, double u1, double v1, double u2, double v2) {

@@ -138,12 +138,13 @@ public final class TrainPlan {
                 continue;
             }
             Swelling swelling = p.swelling();
+            double most = swelling.most();
             for (int i : new int[] {p.front(), p.back()}) {
                 Surface drawn = surfaces.get(i).surface();
                 if (done.add(p.medium().name() + " " + i)) {
                     Surface now = shapes.get(i);
                     Displacement by = swelling.of(drawn, i == p.front());
-                    shapes.set(i, new Surface(now.frame(), new Displaced(now.form(), by), false, now.aperture()));
+                    shapes.set(i, new Surface(now.frame(), new Displaced(now.form(), by, most), false, now.aperture()));
                 }
             }
         }

@@ -1,7 +1,6 @@
 package org.stillpath.task;
 
 import java.util.List;
-import java.util.stream.IntStream;
 import org.stillpath.geometry.Vector;
 import org.stillpath.ray.Ending;
 import org.stillpath.ray.RayStart;
@@ -16,6 +15,7 @@ import org.stillpath.ray.Train;
  */
 final class WindowPass {
     private final List<Traced> rays;
+    private final Traced.Errors errors;
     private final double[] weights;
     private final double plane;
     private final Vector direction;
@@ -26,6 +26,7 @@ final class WindowPass {
 
     private WindowPass(
             List<Traced> rays,
+            Traced.Errors errors,
             double[] weights,
             double plane,
             Vector direction,
@@ -33,6 +34,7 @@ final class WindowPass {
             double transferError,
             boolean accurate) {
         this.rays = rays;
+        this.errors = errors;
         this.weights = weights;
         this.plane = plane;
         this.direction = direction;
@@ -59,10 +61,8 @@ final class WindowPass {
         Ending ending = train.elements().isEmpty() ? new Ending.AtZ(plane) : new Ending.BehindLastSurface();
         Tracer tracer = new Tracer(train, ending, new Tracer.Settings(accuracy, false, false));
         int count = starts.size() - 1;
-        List<Traced> rays = IntStream.range(0, count)
-                .parallel()
-                .mapToObj(i -> tracer.trace(starts.get(i)))
-                .toList();
+        Bundle bundle = Bundle.of(tracer, starts.subList(0, count), accuracy);
+        List<Traced> rays = bundle.rays();
         RayStart axis = starts.get(count);
         Traced fine = new Tracer(train, ending, new Tracer.Settings(accuracy, true, false)).trace(axis);
         double loose = Math.min(0.1, 10 * accuracy);
@@ -81,17 +81,23 @@ final class WindowPass {
             error += 4e-16 * (4 + train.elements().size()) / length + 4e-16 * Math.abs(m[2][0]);
         }
         Vector sum = Vector.ZERO;
-        boolean accurate = true;
         double[] kept = new double[count];
         for (int i = 0; i < count; i++) {
             Traced t = rays.get(i);
             if (t.status() == Status.ARRIVED) {
                 kept[i] = weights[i];
                 sum = sum.plus(weights[i], t.direction());
-                accurate &= t.accurate();
             }
         }
-        return new WindowPass(rays, kept, plane, sum.norm() > 0 ? sum.unit() : axis.direction(), m, error, accurate);
+        return new WindowPass(
+                rays,
+                bundle.errors(),
+                kept,
+                plane,
+                sum.norm() > 0 ? sum.unit() : axis.direction(),
+                m,
+                error,
+                bundle.accurate());
     }
 
     /** Whether any weighted ray came through. */
@@ -145,20 +151,9 @@ final class WindowPass {
         return transferError;
     }
 
-    /** The largest of the rays' own estimates. */
+    /** The largest errors of the rays. */
     Traced.Errors errors() {
-        double place = 0;
-        double angle = 0;
-        double path = 0;
-        for (int i = 0; i < weights.length; i++) {
-            if (arrived(i)) {
-                Traced.Errors e = rays.get(i).errors();
-                place = Math.max(place, e.position());
-                angle = Math.max(angle, e.direction());
-                path = Math.max(path, e.opticalLength());
-            }
-        }
-        return new Traced.Errors(place, angle, path, path, 0);
+        return errors;
     }
 
     boolean accurate() {

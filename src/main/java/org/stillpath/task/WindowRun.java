@@ -105,7 +105,7 @@ final class WindowRun {
         Seen s = first.get();
         double passed = share(s);
         ZernikeFit fit = ZernikeFit.of(s.even(), terms());
-        String headline = chief(s, passed);
+        String headline = chief(s, passed, fit.residual());
         double[] zernike = fit.coefficients();
         quantities.put("zernike", new Quantity.Amounts(zernike, "m", pathErrorOf(s) + fit.residual() * EPSILON));
         List<Table> tables = new ArrayList<>();
@@ -220,7 +220,9 @@ final class WindowRun {
             passed += p.weight() * beam.irradiance(p.x(), p.y());
         }
         double share = passed / all;
-        quantities.put("passed-fraction", new Quantity.Amount(share, "1", 4 * EPSILON));
+        // where an edge cuts a ring is not known to better than the ring
+        double error = share < 1 ? 1.0 / sampling.radial() : 4 * EPSILON;
+        quantities.put("passed-fraction", new Quantity.Amount(share, "1", error));
         return share;
     }
 
@@ -245,7 +247,7 @@ final class WindowRun {
         return s.pathError() + 4 * EPSILON * longest;
     }
 
-    private String chief(Seen s, double passed) {
+    private String chief(Seen s, double passed, double residual) {
         double angle = s.angleError();
         Quantity.Amount dx = put("deviation-x", s.deviationX(), "rad", angle);
         Quantity.Amount dy = put("deviation-y", s.deviationY(), "rad", angle);
@@ -256,7 +258,7 @@ final class WindowRun {
         double path = pathErrorOf(s);
         Wavefront flat = s.wave().withoutTilt();
         double rms = flat.rms();
-        double sampled = samplingError(s, rms);
+        double sampled = samplingError(s, rms, residual);
         put("wavefront-rms", rms, "m", path + sampled);
         put("wavefront-rms-refocused", s.wave().withoutTiltAndFocus().rms(), "m", path + sampled);
         put("wavefront-peak-to-valley", flat.peakToValley(), "m", 2 * path);
@@ -300,7 +302,7 @@ final class WindowRun {
      * How far the rms may depend on the sampling: that of every second angle, and what polynomials to the degree that the
      * rings carry leave.
      */
-    private double samplingError(Seen s, double rms) {
+    private double samplingError(Seen s, double rms, double residual) {
         int angular = sampling.angular();
         double error = 0;
         if (angular % 2 == 0 && angular >= 8) {
@@ -327,7 +329,6 @@ final class WindowRun {
                 error = rms * d * d;
             }
         }
-        double residual = ZernikeFit.of(s.wave(), terms()).residual();
         return error + (rms > 0 ? residual * residual / (2 * rms) * residual / rms : 0);
     }
 
