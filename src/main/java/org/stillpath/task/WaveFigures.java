@@ -30,6 +30,18 @@ final class WaveFigures {
      */
     static WavefrontFigure map(
             String answer, Wavefront wave, ZernikeFit fit, List<Pupil.Point> lost, double radius, double wavelength) {
+        return map("How far is the wave from a sphere?", answer, wave, fit, lost, radius, wavelength);
+    }
+
+    /** The same under a question of one's own. */
+    static WavefrontFigure map(
+            String asked,
+            String answer,
+            Wavefront wave,
+            ZernikeFit fit,
+            List<Pupil.Point> lost,
+            double radius,
+            double wavelength) {
         double[] values = new double[SIDE * SIDE];
         List<double[]> near = lost.isEmpty() ? List.of() : nearest(wave, lost);
         for (int r = 0; r < SIDE; r++) {
@@ -39,7 +51,7 @@ final class WaveFigures {
                 values[r * SIDE + c] = isLost(near, x, y) ? Double.NaN : fit.at(x, y);
             }
         }
-        String question = "How far is the wave from a sphere?";
+        String question = asked;
         if (!lost.isEmpty()) {
             question += " Grey: no light comes through.";
         }

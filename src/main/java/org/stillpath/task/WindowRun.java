@@ -36,6 +36,9 @@ final class WindowRun {
     /** What is warmer burns, kelvin: 48 degC for metal at ten minutes of contact (ISO 13732-1, from memory). */
     private static final double BURNING = 273.15 + 48;
 
+    /** Noll's number of the first term that is not piston or tilt. */
+    private static final int FIRST = 4;
+
     private static final double EPSILON = 0x1p-53;
 
     private final Scene scene;
@@ -127,8 +130,12 @@ final class WindowRun {
         }
         List<Figure> drawn = new ArrayList<>();
         for (String f : figures) {
-            if (f.equals("temperature")) {
-                new WindowFigures(plan, scene, beam, footprint()).temperature().ifPresent(drawn::add);
+            switch (f) {
+                case "temperature" -> new WindowFigures(plan, scene, beam, footprint())
+                        .temperature()
+                        .ifPresent(drawn::add);
+                case "wavefront" -> drawn.add(mapped(s));
+                default -> drawn.add(bars(fit, s.wavelength()));
             }
         }
         return result(headline, tables, drawn, accurate);
@@ -408,6 +415,45 @@ final class WindowRun {
 
     private static String ratio(double value) {
         return String.format(Locale.ROOT, value > 0.999 ? "%.6f" : "%.4f", value);
+    }
+
+    // ---- figures
+
+    private Figure mapped(Seen s) {
+        Wavefront flat = s.even().withoutTilt();
+        List<Pupil.Point> lost = new ArrayList<>();
+        int k = 0;
+        for (int i = 0; i < points.size(); i++) {
+            if (k < s.rays().length && s.rays()[k] == i) {
+                k++;
+            } else {
+                lost.add(points.get(i));
+            }
+        }
+        Wavefront weighted = s.wave().withoutTilt();
+        String answer = "Wavefront error " + WaveFigures.waves(weighted.rms(), s.wavelength()) + " rms, "
+                + WaveFigures.waves(weighted.peakToValley(), s.wavelength()) + " from peak to valley, tilt removed";
+        return WaveFigures.map(
+                "How far is the wave from a plane?",
+                answer,
+                flat,
+                ZernikeFit.of(flat, terms()),
+                lost,
+                beam.pupilRadius(),
+                s.wavelength());
+    }
+
+    private static Figure bars(ZernikeFit fit, double wavelength) {
+        double[] c = fit.coefficients();
+        int largest = Math.min(FIRST, c.length);
+        for (int j = FIRST; j <= c.length; j++) {
+            largest = Math.abs(c[j - 1]) > Math.abs(c[largest - 1]) ? j : largest;
+        }
+        String answer = c.length < FIRST
+                ? "The sampling tells no aberrations apart"
+                : "The largest term is " + Zernike.mode(largest).name() + ", "
+                        + WaveFigures.waves(c[largest - 1], wavelength) + " rms";
+        return WaveFigures.zernike(answer, fit, FIRST, wavelength);
     }
 
     // ---- tables
