@@ -15,20 +15,28 @@ import org.stillpath.unit.Kind;
 
 /** Reads materials: files of {@code media-models/materials}, and users' own of the same form. */
 public final class MaterialReader {
-    private static final String SHIPPED = "materials/";
+    /** Folder of the shipped materials; in a job their names stand without it. */
+    public static final String SHIPPED = "materials/";
+
     private static final Dimension AREA = Dimension.LENGTH.power(2, 1);
     /** 20 °C, where nothing else is said: the reference temperature of catalogues and of lengths (ISO 1). */
     private static final double USUAL = Sellmeier.Thermal.ABOUT;
 
     private MaterialReader() {}
 
+    /** Whether a document is a material rather than a medium. */
+    public static boolean isOne(Node.Mapping document) {
+        return document.find("sellmeier").isPresent() || document.find("law").isPresent();
+    }
+
     /**
      * A material file with what its source says of it.
      *
      * @param material what it says
+     * @param note in words, what one should know before using it; empty where nothing is said
      * @param samples indices that the source gives
      */
-    public record File(Material material, List<Sample> samples) {
+    public record File(Material material, String note, List<Sample> samples) {
         public File {
             samples = List.copyOf(samples);
         }
@@ -87,7 +95,7 @@ public final class MaterialReader {
         String title = s.need("title", "\"Fused silica\"").text();
         String source = s.need("source", "\"Malitson, J. Opt. Soc. Am. 55 (1965) 1205\"")
                 .text();
-        s.find("note").ifPresent(Value::text);
+        String note = s.find("note").map(Value::text).orElse("");
         Optional<? extends SolidLaw> law = s.has("law") ? water(s) : sellmeier(s);
         double expansion =
                 s.find("expansion").map(v -> quantity(v, perKelvin(1))).orElse(0.0);
@@ -122,7 +130,7 @@ public final class MaterialReader {
                         : new Declaration.WavelengthRange(1e-7, 1e-5),
                 sound ? temperatures[0] : 1,
                 sound ? temperatures[1] : 2);
-        return new File(material, sound ? samples : List.of());
+        return new File(material, note, sound ? samples : List.of());
     }
 
     private static Optional<WaterLaw> water(Section s) {

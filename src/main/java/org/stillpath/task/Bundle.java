@@ -41,7 +41,8 @@ record Bundle(List<Traced> rays, Traced.Errors errors, boolean accurate) {
      */
     static Bundle of(Tracer tracer, List<RayStart> starts, double accuracy) {
         int every = Math.max(1, starts.size() / JUDGED);
-        int[] judged = IntStream.range(0, starts.size()).filter(i -> i % every == 0).toArray();
+        int[] judged =
+                IntStream.range(0, starts.size()).filter(i -> i % every == 0).toArray();
         List<Traced> sure = IntStream.range(0, judged.length)
                 .parallel()
                 .mapToObj(i -> tracer.trace(starts.get(judged[i])))

@@ -36,6 +36,9 @@ final class WindowRun {
     /** What is warmer burns, kelvin: 48 degC for metal at ten minutes of contact (ISO 13732-1, from memory). */
     private static final double BURNING = 273.15 + 48;
 
+    /** A sampling is coarse where it changes the rms by this part of it, and of a wave. */
+    private static final double COARSE = 0.01;
+
     /** Noll's number of the first term that is not piston or tilt. */
     private static final int FIRST = 4;
 
@@ -45,7 +48,6 @@ final class WindowRun {
     private final WindowBeam beam;
     private final Optional<Double> reference;
     private final List<String> figures;
-    private final List<Pupil.Point> points;
     private final Pupil sampling;
     private final TrainPlan plan;
     private final Map<String, Quantity> quantities = new LinkedHashMap<>();
@@ -57,7 +59,6 @@ final class WindowRun {
         this.sampling = sampling;
         this.reference = reference;
         this.figures = figures;
-        this.points = sampling.pointsWithRim();
         this.plan = scene.train().orElseThrow();
         this.warnings = new ArrayList<>(scene.warnings());
     }
@@ -65,19 +66,23 @@ final class WindowRun {
     /**
      * What one wavelength tells.
      *
+     * @param points places in the pupil, the rim last
      * @param wave path differences weighted by irradiance, mean taken off, metres
      * @param even the same weighted by area
      * @param mean the mean that was taken off, metres
      * @param rays numbers of the rays that came through, in the order of the wave's samples
+     * @param passed share of the beam's power that came through
      */
     private record Seen(
             double wavelength,
+            List<Pupil.Point> points,
             WindowPass hot,
             WindowPass cold,
             Wavefront wave,
             Wavefront even,
             double mean,
             int[] rays,
+            double passed,
             double deviationX,
             double deviationY,
             Vector displacement) {
@@ -100,17 +105,18 @@ final class WindowRun {
 
     Result result() {
         sense();
-        Optional<Seen> first = seen(scene.wavelength());
+        Optional<Seen> first = seen(scene.wavelength(), sampling);
         if (first.isEmpty()) {
             quantities.put("passed-fraction", new Quantity.Amount(0, "1", 0));
             return result("No ray of the beam passes the train", List.of(), List.of(), true);
         }
         Seen s = first.get();
-        double passed = share(s);
-        ZernikeFit fit = ZernikeFit.of(s.even(), terms());
-        String headline = chief(s, passed, fit.residual());
-        double[] zernike = fit.coefficients();
-        quantities.put("zernike", new Quantity.Amounts(zernike, "m", pathErrorOf(s) + fit.residual() * EPSILON));
+        Seen few = seen(scene.wavelength(), coarser()).orElse(s);
+        double passed = s.passed();
+        put("passed-fraction", passed, "1", Math.abs(passed - few.passed()) + 4 * EPSILON);
+        ZernikeFit fit = ZernikeFit.of(s.even(), terms(sampling));
+        String headline = chief(s, few);
+        zernike(s, few, fit);
         List<Table> tables = new ArrayList<>();
         tables.add(map(s));
         tables.add(zernikes(fit));
@@ -118,7 +124,7 @@ final class WindowRun {
         if (scene.wavelengths().length > 1) {
             accurate &= chromatic(s, tables);
         }
-        if (passed < 1 - 1e-12) {
+        if (passed < 1) {
             warnings.add(String.format(
                     Locale.ROOT,
                     "%.3g %% of the beam's power does not come through (%s); all figures are of what does",
@@ -131,9 +137,10 @@ final class WindowRun {
         List<Figure> drawn = new ArrayList<>();
         for (String f : figures) {
             switch (f) {
-                case "temperature" -> new WindowFigures(plan, scene, beam, footprint())
-                        .temperature()
-                        .ifPresent(drawn::add);
+                case "temperature" ->
+                    new WindowFigures(plan, scene, beam, footprint())
+                            .temperature()
+                            .ifPresent(drawn::add);
                 case "wavefront" -> drawn.add(mapped(s));
                 default -> drawn.add(bars(fit, s.wavelength()));
             }
@@ -157,7 +164,8 @@ final class WindowRun {
 
     // ---- light
 
-    private Optional<Seen> seen(double wavelength) {
+    private Optional<Seen> seen(double wavelength, Pupil pupil) {
+        List<Pupil.Point> points = pupil.pointsWithRim();
         double accuracy = scene.accuracy();
         Train hotTrain = plan.at(wavelength);
         Train coldTrain = reference
@@ -203,40 +211,27 @@ final class WindowRun {
         }
         Vector d = hot.direction();
         Vector r = cold.direction();
+        double all = Arrays.stream(weights).sum();
+        double passed = Arrays.stream(irradiance).sum();
         return Optional.of(new Seen(
                 wavelength,
+                points,
                 hot,
                 cold,
                 new Wavefront(x, y, irradiance, path),
                 new Wavefront(x, y, area, path),
                 mean,
                 rays,
+                rays.length == points.size() ? 1 : passed / all,
                 Math.atan2(d.x(), d.z()) - Math.atan2(r.x(), r.z()),
                 Math.atan2(d.y(), d.z()) - Math.atan2(r.y(), r.z()),
                 hot.place().minus(through)));
     }
 
-    private double share(Seen s) {
-        double all = 0;
-        double passed = 0;
-        for (Pupil.Point p : points) {
-            all += p.weight() * beam.irradiance(p.x(), p.y());
-        }
-        for (int i : s.rays()) {
-            Pupil.Point p = points.get(i);
-            passed += p.weight() * beam.irradiance(p.x(), p.y());
-        }
-        double share = passed / all;
-        // where an edge cuts a ring is not known to better than the ring
-        double error = share < 1 ? 1.0 / sampling.radial() : 4 * EPSILON;
-        quantities.put("passed-fraction", new Quantity.Amount(share, "1", error));
-        return share;
-    }
-
     private String why(Seen s) {
         Map<String, Integer> counts = new LinkedHashMap<>();
         String note = "";
-        for (int i = 0; i < points.size(); i++) {
+        for (int i = 0; i < s.points().size(); i++) {
             if (!s.hot().arrived(i)) {
                 counts.merge(s.hot().ray(i).status().word(), 1, Integer::sum);
                 note = note.isEmpty() ? s.hot().ray(i).note() : note;
@@ -254,93 +249,111 @@ final class WindowRun {
         return s.pathError() + 4 * EPSILON * longest;
     }
 
-    private String chief(Seen s, double passed, double residual) {
+    private String chief(Seen s, Seen few) {
         double angle = s.angleError();
-        Quantity.Amount dx = put("deviation-x", s.deviationX(), "rad", angle);
-        Quantity.Amount dy = put("deviation-y", s.deviationY(), "rad", angle);
+        Quantity.Amount dx = put("deviation-x", s.deviationX(), "rad", angle + apart(s.deviationX(), few.deviationX()));
+        Quantity.Amount dy = put("deviation-y", s.deviationY(), "rad", angle + apart(s.deviationY(), few.deviationY()));
         double place = s.hot().errors().position() + s.cold().errors().position();
-        put("displacement-x", s.displacement().x(), "m", place);
-        put("displacement-y", s.displacement().y(), "m", place);
-        powers(s);
+        Vector moved = s.displacement();
+        put(
+                "displacement-x",
+                moved.x(),
+                "m",
+                place + apart(moved.x(), few.displacement().x()));
+        put(
+                "displacement-y",
+                moved.y(),
+                "m",
+                place + apart(moved.y(), few.displacement().y()));
+        powers(s, few);
         double path = pathErrorOf(s);
         Wavefront flat = s.wave().withoutTilt();
+        Wavefront fewFlat = few.wave().withoutTilt();
         double rms = flat.rms();
-        double sampled = samplingError(s, rms, residual);
-        put("wavefront-rms", rms, "m", path + sampled);
-        put("wavefront-rms-refocused", s.wave().withoutTiltAndFocus().rms(), "m", path + sampled);
-        put("wavefront-peak-to-valley", flat.peakToValley(), "m", 2 * path);
+        put("wavefront-rms", rms, "m", path + apart(rms, fewFlat.rms()));
+        double sampled = apart(rms, fewFlat.rms());
+        if (sampled > COARSE * rms && sampled > COARSE * s.wavelength()) {
+            warnings.add("the sampling of " + sampling.radial() + " rings and " + sampling.angular()
+                    + " angles is coarse for this wavefront: a coarser one changes its rms by "
+                    + Display.of(sampled, "m", 0.1 * sampled) + "; take more of both");
+        }
+        double refocused = s.wave().withoutTiltAndFocus().rms();
+        put(
+                "wavefront-rms-refocused",
+                refocused,
+                "m",
+                path + apart(refocused, few.wave().withoutTiltAndFocus().rms()));
+        double valley = flat.peakToValley();
+        put("wavefront-peak-to-valley", valley, "m", 2 * path + apart(valley, fewFlat.peakToValley()));
         double wavelength = s.wavelength();
         double strehl = flat.strehl(wavelength);
         double phase = 2 * Math.PI / wavelength;
-        put("strehl", strehl, "1", 2 * phase * phase * (rms + path) * (path + sampled) + 8 * EPSILON);
-        put("optical-path-difference", s.mean(), "m", path);
-        double waves = rms / wavelength;
-        String beginning = passed < 1 - 1e-12 ? "What comes through has " : "The beam leaves with ";
-        return beginning + waves(waves) + " waves rms of wavefront error, Strehl ratio " + ratio(strehl)
+        put(
+                "strehl",
+                strehl,
+                "1",
+                2 * phase * phase * (rms + path) * path + 8 * EPSILON + apart(strehl, fewFlat.strehl(wavelength)));
+        put("optical-path-difference", s.mean(), "m", path + apart(s.mean(), few.mean()));
+        String beginning = s.passed() < 1 ? "What comes through has " : "The beam leaves with ";
+        return beginning + waves(rms / wavelength) + " waves rms of wavefront error, Strehl ratio " + ratio(strehl)
                 + ", deviated by " + said(dx) + " toward x and " + said(dy) + " toward y";
     }
 
-    private void powers(Seen s) {
+    /** What the sampling may have changed: how far a coarser one is. */
+    private static double apart(double value, double coarser) {
+        return Math.abs(value - coarser);
+    }
+
+    private void powers(Seen s, Seen few) {
         double px = s.power(0);
         double py = s.power(1);
+        double mean = 0.5 * (px + py);
         double e = s.powerError();
-        if (!Double.isNaN(px + py)) {
-            double mean = 0.5 * (px + py);
+        if (!Double.isNaN(mean)) {
             put("focal-power", mean, "1/m", e);
             put("focal-power-x", px, "1/m", e);
             put("focal-power-y", py, "1/m", e);
         } else {
             warnings.add("the ray on the beam's axis does not come through, so that there is no focal power about it");
         }
+        double fitted = fittedPower(s);
         double radius = beam.pupilRadius();
-        double[] sphere = s.wave().sphere();
-        put("focal-power-fit", -2 * sphere[3] / (radius * radius), "1/m", 8 * pathErrorOf(s) / (radius * radius));
-        if (!Double.isNaN(px + py)) {
-            double mean = 0.5 * (px + py);
-            if (Math.abs(mean) > 3 * e) {
-                put("focal-length", 1 / mean, "m", e / (mean * mean));
-            } else {
-                quantities.put("focal-length", new Quantity.Word("infinite"));
-            }
+        put("focal-power-fit", fitted, "1/m", 8 * pathErrorOf(s) / (radius * radius) + apart(fitted, fittedPower(few)));
+        if (Math.abs(mean) > 3 * e) {
+            put("focal-length", 1 / mean, "m", e / (mean * mean));
+        } else if (!Double.isNaN(mean)) {
+            quantities.put("focal-length", new Quantity.Word("infinite"));
         }
     }
 
-    /**
-     * How far the rms may depend on the sampling: that of every second angle, and what polynomials to the degree that the
-     * rings carry leave.
-     */
-    private double samplingError(Seen s, double rms, double residual) {
-        int angular = sampling.angular();
-        double error = 0;
-        if (angular % 2 == 0 && angular >= 8) {
-            double[][] half = new double[4][s.rays().length];
-            int n = 0;
-            double weight = 0;
-            for (int k = 0; k < s.rays().length; k++) {
-                if (s.rays()[k] % angular % 2 == 0) {
-                    half[0][n] = s.wave().x(k);
-                    half[1][n] = s.wave().y(k);
-                    half[2][n] = s.wave().weight(k);
-                    half[3][n] = s.wave().path(k);
-                    weight += half[2][n++];
-                }
-            }
-            if (weight > 0) {
-                Wavefront every = new Wavefront(
-                        Arrays.copyOf(half[0], n),
-                        Arrays.copyOf(half[1], n),
-                        Arrays.copyOf(half[2], n),
-                        Arrays.copyOf(half[3], n));
-                // twice the angles square the error of a smooth wavefront
-                double d = rms > 0 ? Math.abs(every.withoutTilt().rms() - rms) / rms : 0;
-                error = rms * d * d;
-            }
+    private double fittedPower(Seen s) {
+        double radius = beam.pupilRadius();
+        return -2 * s.wave().sphere()[3] / (radius * radius);
+    }
+
+    private void zernike(Seen s, Seen few, ZernikeFit fit) {
+        double[] c = fit.coefficients();
+        double[] other = ZernikeFit.of(few.even(), terms(coarser())).coefficients();
+        double error = pathErrorOf(s);
+        for (int j = 0; j < c.length && j < other.length; j++) {
+            error = Math.max(error, apart(c[j], other[j]));
         }
-        return error + (rms > 0 ? residual * residual / (2 * rms) * residual / rms : 0);
+        if (other.length < c.length) {
+            error = Math.max(error, fit.residual());
+        }
+        quantities.put("zernike", new Quantity.Amounts(c, "m", error));
+    }
+
+    /** A sampling that is coarser, to judge the other by: a little, or of many points a third of the rings and angles. */
+    private Pupil coarser() {
+        int radial = sampling.radial() <= 12 ? Math.max(1, sampling.radial() - 2) : Math.max(10, sampling.radial() / 3);
+        int angular =
+                sampling.angular() <= 24 ? Math.max(1, sampling.angular() - 4) : Math.max(20, sampling.angular() / 3);
+        return new Pupil(radial, angular);
     }
 
     /** As many of Zernike's polynomials, whole degrees, as the sampling can tell apart. */
-    private int terms() {
+    private static int terms(Pupil sampling) {
         int degree = 0;
         while (degree < DEGREE && degree + 1 <= 2 * sampling.radial() - 1 && 2 * (degree + 1) < sampling.angular()) {
             degree++;
@@ -356,7 +369,7 @@ final class WindowRun {
         boolean accurate = true;
         List<List<String>> rows = new ArrayList<>();
         for (int i = 0; i < wavelengths.length; i++) {
-            Optional<Seen> seen = i == 0 ? Optional.of(first) : seen(wavelengths[i]);
+            Optional<Seen> seen = i == 0 ? Optional.of(first) : seen(wavelengths[i], sampling);
             if (seen.isEmpty()) {
                 warnings.add("no light of " + Display.in(wavelengths[i], "nm", 0.01) + " comes through");
                 return accurate;
@@ -423,11 +436,11 @@ final class WindowRun {
         Wavefront flat = s.even().withoutTilt();
         List<Pupil.Point> lost = new ArrayList<>();
         int k = 0;
-        for (int i = 0; i < points.size(); i++) {
+        for (int i = 0; i < s.points().size(); i++) {
             if (k < s.rays().length && s.rays()[k] == i) {
                 k++;
             } else {
-                lost.add(points.get(i));
+                lost.add(s.points().get(i));
             }
         }
         Wavefront weighted = s.wave().withoutTilt();
@@ -437,7 +450,7 @@ final class WindowRun {
                 "How far is the wave from a plane?",
                 answer,
                 flat,
-                ZernikeFit.of(flat, terms()),
+                ZernikeFit.of(flat, terms(sampling)),
                 lost,
                 beam.pupilRadius(),
                 s.wavelength());
@@ -461,8 +474,8 @@ final class WindowRun {
     private Table map(Seen s) {
         List<List<String>> rows = new ArrayList<>();
         int k = 0;
-        for (int i = 0; i < points.size(); i++) {
-            Pupil.Point p = points.get(i);
+        for (int i = 0; i < s.points().size(); i++) {
+            Pupil.Point p = s.points().get(i);
             boolean there = k < s.rays().length && s.rays()[k] == i;
             rows.add(List.of(
                     Double.toString(beam.pupilRadius() * p.x()),

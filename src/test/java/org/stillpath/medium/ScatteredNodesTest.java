@@ -90,6 +90,7 @@ class ScatteredNodesTest {
     void refusesNodesInAPlane() {
         double[][] c = disc(100, 0, 3, (x, y, z) -> 300);
         java.util.Arrays.fill(c[2], 1e-3);
-        assertThat(ScatteredNodes.refusal(c)).hasValueSatisfying(w -> assertThat(w).contains("same z"));
+        assertThat(ScatteredNodes.refusal(c))
+                .hasValueSatisfying(w -> assertThat(w).contains("same z"));
     }
 }

@@ -38,13 +38,12 @@ class SwellingTest {
                     expansion-coefficient: 0.55e-6 1/K
                     poisson-ratio: 0.17
                   with: {T0: 20 degC, k: 0.1 K/mm, dT: 15 K, w: 6 mm, b: 0.01 K/mm^2}
-                """
-                .formatted(temperature);
+                """.formatted(temperature);
         Problems problems = new Problems();
         Section media = Section.of(
                 YamlReader.parse(yaml.getBytes(StandardCharsets.UTF_8), "job.yaml", problems), "media", problems);
-        SolidMedium solid = (SolidMedium)
-                MediaReader.read(Optional.of(media), FileSources.of(Path.of("job.yaml"), false), problems)
+        SolidMedium solid =
+                (SolidMedium) MediaReader.read(Optional.of(media), FileSources.of(Path.of("job.yaml"), false), problems)
                         .find("plate")
                         .orElseThrow();
         assertThat(problems.list()).isEmpty();
@@ -92,14 +91,14 @@ class SwellingTest {
 
     @ParameterizedTest
     @ValueSource(
-            strings = {
-                "T0 + dT*exp(-2*((x - w/3)^2 + y^2)/w^2)*(1 + k*z/dT)",
-                "T0 + k*x + b*x*y + b*x^2*cos(y/w)"
-            })
+            strings = {"T0 + dT*exp(-2*((x - w/3)^2 + y^2)/w^2)*(1 + k*z/dT)", "T0 + k*x + b*x*y + b*x^2*cos(y/w)"})
     void differentiatesExactlyAlsoBetweenCurvedAndTiltedFaces(String temperature) {
         Surface front = Surface.cap(0, 0.1, 0);
-        Surface back =
-                new Surface(Frame.tilted(new Vector(0, 0, THICK), 0.02, -0.01), Surface.cap(0, -0.2, 0).form(), false, 1);
+        Surface back = new Surface(
+                Frame.tilted(new Vector(0, 0, THICK), 0.02, -0.01),
+                Surface.cap(0, -0.2, 0).form(),
+                false,
+                1);
         for (Swelling s : new Swelling[] {
             swelling(temperature), new Swelling(plate(temperature), Frame.JOB, front, back).settled()
         }) {

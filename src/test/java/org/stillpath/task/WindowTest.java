@@ -46,8 +46,7 @@ class WindowTest {
                 beam: {diameter: 20 mm, profile: uniform}
                 sampling: {radial: 8, angular: 16}
                 reference: {temperature: 20 degC}
-                """
-                .formatted(temperature, with);
+                """.formatted(temperature, with);
     }
 
     private static Result run(String yaml) {
@@ -131,8 +130,7 @@ class WindowTest {
                 beam: {diameter: 1 um, profile: uniform}
                 sampling: {radial: 3, angular: 6}
                 """;
-        assertThat(value(run(job.formatted("1e-3 1/mm")), "deviation-x"))
-                .isCloseTo(0.010000245949028975, within(1e-9));
+        assertThat(value(run(job.formatted("1e-3 1/mm")), "deviation-x")).isCloseTo(0.010000245949028975, within(1e-9));
         // small: L dn/dx, 0.1 mrad for 1e-5 per mm and 10 mm
         assertThat(value(run(job.formatted("1e-5 1/mm")), "deviation-x")).isCloseTo(1e-4, within(1e-9));
     }
@@ -172,8 +170,7 @@ class WindowTest {
     void doesNotDependOnTheReferencePlane() {
         String job = plate("T0 + dT*exp(-2*((x - s)^2 + y^2)/w^2)", "dT: 1 K, w: 12 mm, s: 2 mm");
         String farther = job.replace(
-                "    - {at: 10 mm, into: vacuum}",
-                "    - {at: 10 mm, into: vacuum}\n    - {at: 60 mm, into: vacuum}");
+                "    - {at: 10 mm, into: vacuum}", "    - {at: 10 mm, into: vacuum}\n    - {at: 60 mm, into: vacuum}");
         double[] near = zernike(run(job));
         double[] far = zernike(run(farther));
         for (int j = 0; j < near.length; j++) {
@@ -201,8 +198,7 @@ class WindowTest {
         String with = "dT: 5 K, u: 8 mm, w: 12 mm";
         double angle = Math.toRadians(30);
         double[] a = zernike(run(plate(along, with).replace("angular: 16", "angular: 24")));
-        double[] b = zernike(run(plate(
-                        turned, with + ", c: " + Math.cos(angle) + ", s: " + Math.sin(angle))
+        double[] b = zernike(run(plate(turned, with + ", c: " + Math.cos(angle) + ", s: " + Math.sin(angle))
                 .replace("angular: 16", "angular: 24")));
         // Noll 5 goes with sin 2θ, 6 with cos 2θ
         assertThat(b[3]).isCloseTo(a[3], within(1e-13));
@@ -239,7 +235,8 @@ class WindowTest {
                 beam: {diameter: 20 mm}
                 reference: {temperature: 20 degC}
                 """);
-        // refractivity falls as 1/T: 2.69e-4 · (293.15/343.15 − 1) · 100 mm, a tenth of a percent off for compressibility
+        // refractivity falls as 1/T: 2.69e-4 · (293.15/343.15 − 1) · 100 mm, a tenth of a percent off for
+        // compressibility
         double expected = 2.69e-4 * (293.15 / 343.15 - 1) * 0.1;
         assertThat(value(r, "optical-path-difference")).isCloseTo(expected, within(5e-3 * Math.abs(expected)));
     }
@@ -275,8 +272,8 @@ class WindowTest {
                 .anyMatch(w -> w.contains("400 degC") && w.contains("outside the range of fused-silica"))
                 .anyMatch(w -> w.contains("4000 nm") && w.contains("210 nm to 3710 nm"));
         assertThat(r.cautions()).anyMatch(c -> c.contains("burn"));
-        Result far = run(plate("T0 + dT*exp(-2*r^2/w^2)", "dT: 15 K, w: 8 mm")
-                .replace("diameter: 20 mm", "diameter: 60 mm"));
+        Result far = run(
+                plate("T0 + dT*exp(-2*r^2/w^2)", "dT: 15 K, w: 8 mm").replace("diameter: 20 mm", "diameter: 60 mm"));
         assertThat(far.warnings()).anyMatch(w -> w.contains("beyond the plate"));
         assertThat(far.cautions())
                 .anyMatch(c -> c.contains("Stress birefringence"))
