@@ -14,7 +14,7 @@ package org.stillpath.geometry;
  * @param most the largest displacement, metres
  */
 public record Displaced(Form form, Displacement by, double most) implements Form {
-    private static final double FAR = 1000;
+    private static final double FAR = 100;
     private static final int MOST_STEPS = 30;
     private static final double NEAR = 1e-16;
 

@@ -1,5 +1,7 @@
 package org.stillpath.ray;
 
+import org.stillpath.geometry.GaussPoints;
+
 /**
  * The projection of a function over a disc onto harmonic functions, H = Re Σ cₘ (x + iy)ᵐ, from the function's moments
  * against rᵐ cos mθ and rᵐ sin mθ. It is what a free plate's stress leaves of its temperature: σx + σy = Eα(H − T).

@@ -5,6 +5,7 @@ import org.stillpath.formula.Order;
 import org.stillpath.formula.Samples;
 import org.stillpath.geometry.Displacement;
 import org.stillpath.geometry.Frame;
+import org.stillpath.geometry.GaussPoints;
 import org.stillpath.geometry.Quadric;
 import org.stillpath.geometry.Surface;
 import org.stillpath.geometry.Vector;

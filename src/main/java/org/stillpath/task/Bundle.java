@@ -22,7 +22,7 @@ import org.stillpath.ray.Tracer;
  * @param accurate whether they are within the asked accuracy
  */
 record Bundle(List<Traced> rays, Traced.Errors errors, boolean accurate) {
-    private static final int JUDGED = 400;
+    private static final int JUDGED = 200;
     private static final double LOOSE = 100;
     private static final double LOOSEST = 1e-6;
     private static final double TIGHT = 0.01;

@@ -2,8 +2,7 @@ package org.stillpath.wave;
 
 import java.util.ArrayList;
 import java.util.List;
-import org.hipparchus.analysis.integration.gauss.GaussIntegrator;
-import org.hipparchus.analysis.integration.gauss.GaussIntegratorFactory;
+import org.stillpath.geometry.GaussPoints;
 import org.stillpath.job.Section;
 import org.stillpath.job.Value;
 
@@ -45,10 +44,10 @@ public record Pupil(int radial, int angular) {
 
     /** The points, ring by ring from the inside. */
     public List<Point> points() {
-        GaussIntegrator gauss = new GaussIntegratorFactory().legendre(radial, 0, 1);
+        GaussPoints gauss = GaussPoints.of(radial);
         List<Point> points = new ArrayList<>(radial * angular);
         for (int i = 0; i < radial; i++) {
-            ring(points, Math.sqrt(gauss.getPoint(i)), gauss.getWeight(i) / angular);
+            ring(points, Math.sqrt(gauss.at(i)), gauss.weight(i) / angular);
         }
         return points;
     }

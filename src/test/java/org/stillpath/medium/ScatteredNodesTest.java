@@ -77,7 +77,8 @@ class ScatteredNodesTest {
             int j = 59 - i;
             c[0][i] = (j % 5) * (j % 5) * 1e-3;
             c[1][i] = (j / 5 % 4) * 2e-3;
-            c[2][i] = (j / 20) * 1e-3;
+            int layer = j / 20;
+            c[2][i] = layer * 1e-3;
             c[3][i] = 280 + j;
         }
         ScatteredNodes n = resampled(c);
