@@ -1,13 +1,10 @@
 package org.stillpath.plot;
 
-import java.math.BigDecimal;
-import java.math.MathContext;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Set;
 import org.stillpath.task.SpotFigure;
-import org.stillpath.unit.Unit;
-import org.stillpath.unit.Units;
+import org.stillpath.unit.Display;
 
 /**
  * Draws a {@link SpotFigure}: square frames without axes, all to one scale that a bar tells, each with its field above and
@@ -175,9 +172,7 @@ final class SpotDrawing {
         double longest = room / scale;
         double round = Math.pow(10, Math.floor(Math.log10(longest)));
         double length = longest >= 5 * round ? 5 * round : longest >= 2 * round ? 2 * round : round;
-        String symbol = length < 1e-6 ? "nm" : length < 1e-3 ? "µm" : length < 1 ? "mm" : "m";
-        Unit unit = Units.parse(symbol).orElseThrow();
-        String text = Scale.plain(new BigDecimal(unit.fromSi(length)).round(new MathContext(1)), 0) + " " + symbol;
+        String text = Display.of(length, figure.angles() ? "rad" : "m", 0).toString();
         double y = top + 8;
         double x = Canvas.EDGE + 1;
         double end = x + length * scale;

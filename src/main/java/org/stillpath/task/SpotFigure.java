@@ -8,9 +8,11 @@ import java.util.List;
  * @param name name of the figure and stem of its files
  * @param question what it answers, in a few words
  * @param answer the answer as a sentence
+ * @param angles whether places are angles in radians, not lengths
  * @param spots one for each field, at least one
  */
-public record SpotFigure(String name, String question, String answer, List<Spot> spots) implements Figure {
+public record SpotFigure(String name, String question, String answer, boolean angles, List<Spot> spots)
+        implements Figure {
     public SpotFigure {
         spots = List.copyOf(spots);
         if (spots.isEmpty()) {

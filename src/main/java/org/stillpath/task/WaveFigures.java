@@ -12,6 +12,10 @@ import org.stillpath.wave.ZernikeFit;
 /** The figures of a wavefront, for every task that has one. */
 final class WaveFigures {
     private static final int SIDE = 101;
+    /** Bars that are always drawn where there are no more. */
+    private static final int FEW = 4;
+    /** Size of a term over the largest below which it has no bar. */
+    private static final double SMALL = 1e-3;
     /** Samples at most among which the nearest to a place is looked for. */
     private static final int MOST_NEAR = 4000;
 
@@ -89,7 +93,8 @@ final class WaveFigures {
     }
 
     /**
-     * The bars {@code zernike}: each term from Noll's number {@code first} on, and what all of them leave.
+     * The bars {@code zernike}: each term from Noll's number {@code first} on that is not next to nothing, and what all of them
+     * leave.
      *
      * @param answer the title
      * @param first Noll's number of the first bar; those before it were removed
@@ -97,13 +102,23 @@ final class WaveFigures {
     static BarFigure zernike(String answer, ZernikeFit fit, int first, double wavelength) {
         double[] c = fit.coefficients();
         List<BarFigure.Bar> bars = new ArrayList<>();
+        double largest = fit.residual();
         for (int j = first; j <= c.length; j++) {
+            largest = Math.max(largest, Math.abs(c[j - 1]));
+        }
+        for (int j = first; j <= c.length; j++) {
+            if (c.length - first > FEW && Math.abs(c[j - 1]) < SMALL * largest) {
+                continue;
+            }
             bars.add(new BarFigure.Bar(j + "  " + Zernike.mode(j).name(), c[j - 1], waves(c[j - 1], wavelength)));
         }
+        int left = c.length - first + 1 - bars.size();
         bars.add(new BarFigure.Bar("left by all of these (rms)", fit.residual(), waves(fit.residual(), wavelength)));
         return new BarFigure(
                 "zernike",
-                "Which aberrations are in the wave? Zernike terms after Noll, each its own rms",
+                "Which aberrations are in the wave? Zernike terms " + first + " to " + c.length
+                        + " after Noll, each its own rms"
+                        + (left > 0 ? "; " + left + " are below 0.1 % of the largest" : ""),
                 answer,
                 new ChartFigure.Axis("coefficient", "m", ""),
                 bars,

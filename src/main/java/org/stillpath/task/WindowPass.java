@@ -61,7 +61,7 @@ final class WindowPass {
         Ending ending = train.elements().isEmpty() ? new Ending.AtZ(plane) : new Ending.BehindLastSurface();
         Tracer tracer = new Tracer(train, ending, new Tracer.Settings(accuracy, false, false));
         int count = starts.size() - 1;
-        Bundle bundle = Bundle.of(tracer, starts.subList(0, count), accuracy);
+        WindowRays bundle = WindowRays.of(tracer, starts.subList(0, count), accuracy);
         List<Traced> rays = bundle.rays();
         RayStart axis = starts.get(count);
         Traced fine = new Tracer(train, ending, new Tracer.Settings(accuracy, true, false)).trace(axis);

@@ -145,7 +145,8 @@ class ChartsTest {
                             new SpotFigure.Circle("80 % of the rays", 2e-6),
                             new SpotFigure.Circle("first dark ring of a perfect lens", 1.2e-6))));
         }
-        return new SpotFigure("spot" + fields, "How sharp is a point?", "Spot 1.4 µm rms at the best focus", spots);
+        return new SpotFigure(
+                "spot" + fields, "How sharp is a point?", "Spot 1.4 µm rms at the best focus", false, spots);
     }
 
     static Stream<Arguments> pictures() {
