@@ -175,7 +175,7 @@ final class WindowFigures {
         for (Plate p : plates) {
             Frame own = p.own();
             Frame front = p.frontFace().frame();
-            double half = half(p);
+            List<Vector> corners = corners(p);
             double sign = Math.signum(front.fromJob(p.backFace().vertex()).z());
             double[] f = new double[10];
             for (int row = 0; row < ROWS; row++) {
@@ -189,8 +189,9 @@ final class WindowFigures {
                     p.frontFace().evaluate(at.x(), at.y(), at.z(), f);
                     double behind = sign * f[0];
                     p.backFace().evaluate(at.x(), at.y(), at.z(), f);
-                    Vector local = front.fromJob(at);
-                    inside[c] = behind >= 0 && sign * f[0] <= 0 && Math.hypot(local.x(), local.y()) <= half;
+                    double above = side(corners.get(0), corners.get(1), at);
+                    double below = side(corners.get(2), corners.get(3), at);
+                    inside[c] = behind >= 0 && sign * f[0] <= 0 && above * below <= 0;
                     Vector q = own.fromJob(at);
                     x[c] = q.x();
                     y[c] = q.y();
@@ -205,5 +206,10 @@ final class WindowFigures {
             }
         }
         return celsius;
+    }
+
+    /** On which side of a line through two points a point of the section lies, by its sign. */
+    private static double side(Vector from, Vector to, Vector at) {
+        return (to.z() - from.z()) * (at.y() - from.y()) - (to.y() - from.y()) * (at.z() - from.z());
     }
 }
