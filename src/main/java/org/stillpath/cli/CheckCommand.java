@@ -6,6 +6,7 @@ import java.util.Set;
 import java.util.concurrent.Callable;
 import org.stillpath.job.Node;
 import org.stillpath.job.Sources;
+import org.stillpath.medium.MaterialReader;
 import org.stillpath.medium.MediumFile;
 import org.stillpath.problem.ProblemException;
 import org.stillpath.problem.Problems;
@@ -30,7 +31,7 @@ final class CheckCommand implements Callable<Integer> {
 
     private final Console console;
 
-    @Parameters(arity = "1..*", paramLabel = "FILE.yaml", description = "job or medium files")
+    @Parameters(arity = "1..*", paramLabel = "FILE.yaml", description = "job, medium or material files")
     private List<String> files = List.of();
 
     @Option(
@@ -58,9 +59,14 @@ final class CheckCommand implements Callable<Integer> {
     private int check(String name) {
         try {
             Job job = Job.read(name, settings, allowOutside);
-            boolean medium = isMedium(job.file().root());
+            boolean material = MaterialReader.isOne(job.file().root());
+            boolean medium = !material && isMedium(job.file().root());
             job.work((root, sources) -> {
-                if (medium) {
+                if (material) {
+                    Problems problems = new Problems();
+                    MaterialReader.of(job.name(), root, problems);
+                    problems.throwIfAny();
+                } else if (medium) {
                     Problems problems = new Problems();
                     MediumFile.of(job.name(), root, sources, problems);
                     problems.throwIfAny();
@@ -69,7 +75,9 @@ final class CheckCommand implements Callable<Integer> {
                 }
                 return root;
             });
-            console.out().print(PlainText.of(name) + ": sound " + (medium ? "medium" : "job") + "\n");
+            console.out()
+                    .print(PlainText.of(name) + ": sound " + (material ? "material" : medium ? "medium" : "job")
+                            + "\n");
             return 0;
         } catch (ProblemException e) {
             return console.tell(e.problems());

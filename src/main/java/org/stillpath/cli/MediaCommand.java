@@ -13,9 +13,13 @@ import org.stillpath.geometry.Vector;
 import org.stillpath.io.FileSources;
 import org.stillpath.medium.IndexField;
 import org.stillpath.medium.Level;
+import org.stillpath.medium.Material;
+import org.stillpath.medium.MaterialReader;
 import org.stillpath.medium.Media;
 import org.stillpath.medium.Medium;
 import org.stillpath.medium.MediumFile;
+import org.stillpath.medium.SolidMedium;
+import org.stillpath.problem.Place;
 import org.stillpath.problem.ProblemException;
 import org.stillpath.problem.Problems;
 import org.stillpath.report.PlainText;
@@ -34,6 +38,9 @@ import picocli.CommandLine.Parameters;
 final class MediaCommand implements Callable<Integer> {
     /** Vacuum wavelengths of the sample points: the lines F, d and C, a common laser, and the infrared. */
     private static final double[] WAVELENGTHS = {486.13e-9, 587.56e-9, 632.99e-9, 656.27e-9, 1064e-9};
+
+    /** The same for materials, and lines of the infrared. */
+    private static final double[] MICROMETRES = {0.48613, 0.58756, 0.63280, 0.65627, 1.064, 1.55, 4, 10.6};
 
     private static final double SAMPLE_WAVELENGTH = 587.56e-9;
 
@@ -63,7 +70,7 @@ final class MediaCommand implements Callable<Integer> {
             text.append(builtIn).append('\n');
         }
         for (String shipped : FileSources.shipped()) {
-            if (!shipped.startsWith("demo/") && !shipped.startsWith("materials/")) {
+            if (!shipped.startsWith("demo/")) {
                 text.append(shipped).append('\n');
             }
         }
@@ -76,6 +83,13 @@ final class MediaCommand implements Callable<Integer> {
             return shown(builtIn.get(), "", "", List.of());
         }
         Problems problems = new Problems();
+        if (name.startsWith(MaterialReader.SHIPPED)) {
+            FileSources sources = FileSources.of(Path.of("media.yaml"), false);
+            String own = name.substring(MaterialReader.SHIPPED.length());
+            MaterialReader.File file = MaterialReader.of(own, sources.document(name, Place.of(name)), problems);
+            problems.throwIfAny();
+            return shown(own, file);
+        }
         MediumFile file = MediumFile.read(name, FileSources.of(Path.of("media.yaml"), false), problems);
         problems.throwIfAny();
         return shown(file.medium(), file.title(), file.note(), file.samples());
@@ -106,6 +120,51 @@ final class MediaCommand implements Callable<Integer> {
         }
         for (String warning : medium.warnings()) {
             text.append(PlainText.wrapped(warning, "warning: ", "         ", 80));
+        }
+        return text.toString();
+    }
+
+    /** A material: what a job writes, ranges, index and thermal slope. */
+    private static String shown(String own, MaterialReader.File file) {
+        Material m = file.material();
+        StringBuilder text = new StringBuilder(PlainText.of(MaterialReader.SHIPPED + own)).append('\n');
+        text.append(PlainText.wrapped(m.title(), "  ", "  ", 80)).append('\n');
+        text.append(PlainText.wrapped("solid: {material: " + own + "}", "  in a job: ", "            ", 80));
+        text.append(PlainText.wrapped(m.source(), "  source:   ", "            ", 80));
+        text.append(PlainText.wrapped(
+                String.format(
+                        Locale.ROOT,
+                        "%.4g um to %.4g um, %.4g degC to %.4g degC",
+                        1e6 * m.wavelengths().shortest(),
+                        1e6 * m.wavelengths().longest(),
+                        m.coldest() - 273.15,
+                        m.hottest() - 273.15),
+                "  range:    ",
+                "            ",
+                80));
+        text.append(PlainText.wrapped(
+                String.format(
+                        Locale.ROOT,
+                        "dn/dT to %.3g %%, expansion %.4g 1/K to %.3g %% (standard uncertainties), Poisson's ratio %.3g",
+                        100 * m.uncertainty().slope(),
+                        m.elastic().expansion(),
+                        100 * m.uncertainty().expansion(),
+                        m.elastic().poisson()),
+                "  thermal:  ",
+                "            ",
+                80));
+        if (!file.note().isEmpty()) {
+            text.append(PlainText.wrapped(file.note(), "  note:     ", "            ", 80));
+        }
+        text.append("\n  wavelength / um   index at 20 degC, absolute   dn/dT / (1e-6/K)\n");
+        double[] jet = new double[3];
+        for (double w : MICROMETRES) {
+            double metres = 1e-6 * w;
+            if (metres >= m.wavelengths().shortest()
+                    && metres <= m.wavelengths().longest()) {
+                m.law().at(metres).jet(SolidMedium.SIZED_AT, jet);
+                text.append(String.format(Locale.ROOT, "  %15.4f   %24.6f   %16.2f\n", w, 1 + jet[0], 1e6 * jet[1]));
+            }
         }
         return text.toString();
     }

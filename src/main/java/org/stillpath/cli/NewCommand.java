@@ -12,12 +12,11 @@ import picocli.CommandLine.Parameters;
 /** {@code stillpath new TASK}: prints a commented starter job. */
 @Command(name = "new", mixinStandardHelpOptions = true, description = "Prints a commented starter job of a task.")
 final class NewCommand implements Callable<Integer> {
-    static final List<String> STARTERS = List.of("trace", "between", "lens", "sightline");
-    private static final List<String> LATER = List.of("window");
+    static final List<String> STARTERS = List.of("trace", "between", "lens", "sightline", "window");
 
     private final Console console;
 
-    @Parameters(paramLabel = "TASK", description = "trace, between, lens or sightline")
+    @Parameters(paramLabel = "TASK", description = "trace, between, lens, sightline or window")
     private String task = "";
 
     NewCommand(Console console) {
@@ -30,11 +29,7 @@ final class NewCommand implements Callable<Integer> {
             console.out().write(starter(task));
             return 0;
         }
-        String reason = LATER.contains(task)
-                ? "this version does not have the task " + Words.quoted(task) + " yet; it has "
-                        + String.join(" and ", STARTERS)
-                : "there is no task " + Words.quoted(task) + Words.remedy(task, STARTERS);
-        console.say("stillpath: new: " + reason);
+        console.say("stillpath: new: there is no task " + Words.quoted(task) + Words.remedy(task, STARTERS));
         return Problem.Kind.INPUT.exitStatus();
     }
 

@@ -5,7 +5,7 @@ package org.stillpath.geometry;
  *
  * <p>Given by F(x, y, z), zero on the surface and positive on the +z side of the vertex, with exact gradient and Hessian.
  */
-public sealed interface Form permits Quadric, Asphere {
+public sealed interface Form permits Quadric, Asphere, Displaced {
     /**
      * F with its derivatives.
      *

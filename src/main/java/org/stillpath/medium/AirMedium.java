@@ -49,6 +49,11 @@ public record AirMedium(Declaration declaration, AirState state) implements Medi
     }
 
     @Override
+    public Medium atTemperature(double kelvin) {
+        return new AirMedium(declaration, state.at(kelvin));
+    }
+
+    @Override
     public Medium with(Declaration other) {
         return new AirMedium(other, state);
     }

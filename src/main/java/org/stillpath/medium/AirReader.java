@@ -4,13 +4,9 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.LinkedHashSet;
 import java.util.List;
-import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
 import org.stillpath.formula.Chart;
-import org.stillpath.formula.Formula;
-import org.stillpath.formula.FormulaException;
-import org.stillpath.formula.Names;
 import org.stillpath.formula.Order;
 import org.stillpath.job.Section;
 import org.stillpath.job.Sources;
@@ -32,32 +28,15 @@ final class AirReader {
     /** Part of the pressure that rounded heights and the mean of two temperatures leave open over a whole ascent. */
     private static final double LIKELY_DEPARTURE = 0.01;
 
+    private final FieldReader fields;
     private final Sources sources;
     private final Problems problems;
-    private final TableReader tables;
-    private final FormulaCache cache;
-    private final Names names;
-    private final Map<String, Double> with;
-    /** Whether all values of names could be read; formulas would only look wrong otherwise. */
-    private final boolean sound;
-
     private final List<String> notes = new ArrayList<>();
 
-    AirReader(
-            Sources sources,
-            Problems problems,
-            TableReader tables,
-            FormulaCache cache,
-            Names names,
-            Map<String, Double> with,
-            boolean sound) {
+    AirReader(FieldReader fields, Sources sources, Problems problems) {
+        this.fields = fields;
         this.sources = sources;
         this.problems = problems;
-        this.tables = tables;
-        this.cache = cache;
-        this.names = names;
-        this.with = with;
-        this.sound = sound;
     }
 
     /** The medium; empty after a fault. */
@@ -255,45 +234,8 @@ final class AirReader {
         return relative.map(f -> new Humidity(Humidity.Kind.RELATIVE, f, law.saturation()));
     }
 
-    /** A quantity, a formula, a profile or a grid; empty after a fault. */
     private Optional<ScalarField> field(Value v, Kind kind) {
-        if (v.isPlaceholder()) {
-            return Optional.empty();
-        }
-        if (v.isList()) {
-            v.fault(kind.describe() + ", a formula, or a section such as {profile: {along: height, ..}} is needed, "
-                    + "not a list");
-            return Optional.empty();
-        }
-        if (v.isSection()) {
-            Optional<TableReader.Read> read = tables.tabulated(v, kind, 0, Interpolation.MONOTONE);
-            read.ifPresent(r -> notes.addAll(r.notes()));
-            return read.map(TableReader.Read::field);
-        }
-        String text = v.text();
-        if (text.isEmpty()) {
-            v.fault(kind.describe() + " or a formula is needed, such as " + kind.example());
-            return Optional.empty();
-        }
-        if (MediaReader.isQuantity(text, names.with().keySet())) {
-            double q = v.quantity(kind);
-            if (!kind.equals(Kind.NUMBER) && q <= 0) {
-                v.fault(Words.quoted(text) + " does not do; " + kind.describe() + " above 0 is needed"
-                        + (kind.equals(Kind.TEMPERATURE) ? ", in K or degC" : ""));
-                return Optional.empty();
-            }
-            return Double.isNaN(q) ? Optional.empty() : Optional.of(new Constant(q));
-        }
-        if (!sound) {
-            return Optional.empty();
-        }
-        try {
-            Formula formula = cache.formula(text, names, kind.dimension());
-            return Optional.of(FormulaField.of(formula, with));
-        } catch (FormulaException e) {
-            e.faults().forEach(f -> v.fault(f.offset(), f.message()));
-            return Optional.empty();
-        }
+        return fields.field(v, kind, Interpolation.MONOTONE, notes);
     }
 
     /** Says what of the state is not likely, or outside the range of the law: the first of each sort. */

@@ -50,6 +50,11 @@ public record AirState(AirLaw law, double temperature, double pressure, double v
         return value(law.group(wavelength));
     }
 
+    /** The same air at another temperature in kelvin. */
+    AirState at(double kelvin) {
+        return new AirState(law, kelvin, pressure, vapourPressure);
+    }
+
     /** What of this state and wavelength lies outside the range that the law was published for; empty where nothing does. */
     public List<String> warnings(double wavelength) {
         List<String> list = new ArrayList<>(law.warnings(wavelength));

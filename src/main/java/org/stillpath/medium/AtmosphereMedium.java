@@ -169,6 +169,12 @@ public final class AtmosphereMedium implements Medium {
         return List.copyOf(list);
     }
 
+    /** The pressure stays as the job gives it: what is asked for is the effect of temperature alone. */
+    @Override
+    public Medium atTemperature(double kelvin) {
+        return new AtmosphereMedium(declaration, law, new Constant(kelvin), pressure, humidity);
+    }
+
     @Override
     public Medium with(Declaration other) {
         return new AtmosphereMedium(other, law, temperature, pressure, humidity);

@@ -113,11 +113,8 @@ public final class MediaReader {
         if (s.isPlaceholder()) {
             return vacuum(name, Map.of());
         }
-        if (s.has("solid")) {
-            s.fault("solid", "`solid:` media are not in this version yet; give the medium by `index:`");
-            return vacuum(name, Map.of());
-        }
-        List<String> givers = Stream.of("index", "air", "from").filter(s::has).toList();
+        List<String> givers =
+                Stream.of("index", "air", "solid", "from").filter(s::has).toList();
         if (givers.size() > 1) {
             String last = givers.get(givers.size() - 1);
             s.fault(
@@ -129,11 +126,13 @@ public final class MediaReader {
             parsed = borrowed(name, s, overrides, chain);
         } else if (s.has("air")) {
             parsed = air(name, s, overrides);
+        } else if (s.has("solid")) {
+            parsed = solid(name, s, overrides);
         } else if (s.has("index")) {
             parsed = own(name, s, overrides);
         } else {
             s.fault("a medium needs `index`, such as " + EXAMPLE
-                    + ", `air`, or `from`, such as {from: rods/parabolic}");
+                    + ", `air`, `solid`, or `from`, such as {from: rods/parabolic}");
             s.find("with");
             s.find("relative-to");
             parsed = vacuum(name, Map.of());
@@ -285,10 +284,27 @@ public final class MediaReader {
         if (s.has("relative-to")) {
             s.fault("relative-to", "`relative-to` belongs to an index; the index of air is absolute");
         }
-        Names names = names(PLACE_ALONE, with);
+        return new AirReader(fields(with), sources, problems)
+                .medium(Declaration.of(name), s.at("air").section())
+                .map(m -> new Parsed(m, with))
+                .orElseGet(() -> vacuum(name, with));
+    }
+
+    /** A reader of states, which depend on the place alone. */
+    private FieldReader fields(Map<String, Quantity> with) {
         boolean sound = with.values().stream().noneMatch(q -> Double.isNaN(q.value()));
-        AirReader reader = new AirReader(sources, problems, tables, cache, names, values(with), sound);
-        return reader.medium(Declaration.of(name), s.at("air").section())
+        return new FieldReader(tables, cache, names(PLACE_ALONE, with), values(with), sound);
+    }
+
+    // --- solids and liquids ---
+
+    private Parsed solid(String name, Section s, Overrides overrides) {
+        Map<String, Quantity> with = with(s, overrides);
+        if (s.has("relative-to")) {
+            s.fault("relative-to", "`relative-to` belongs to an index; the index of a solid is absolute");
+        }
+        return new SolidReader(fields(with), new NodesReader(sources, problems), sources, problems)
+                .medium(Declaration.of(name), s.at("solid").section())
                 .map(m -> new Parsed(m, with))
                 .orElseGet(() -> vacuum(name, with));
     }

@@ -11,7 +11,7 @@ import org.stillpath.geometry.Vector;
  * A named medium of a job: what its index is, in which frame, and how far it may be believed. Immutable. It becomes an
  * {@link IndexField} once the wavelength and the frame are known.
  */
-public sealed interface Medium permits UniformMedium, AirMedium, AtmosphereMedium, FieldMedium {
+public sealed interface Medium permits UniformMedium, AirMedium, AtmosphereMedium, FieldMedium, SolidMedium {
     /** Origin, axis, validity, source and warnings. */
     Declaration declaration();
 
@@ -69,6 +69,15 @@ public sealed interface Medium permits UniformMedium, AirMedium, AtmosphereMediu
 
     /** The same medium with another declaration. */
     Medium with(Declaration other);
+
+    /**
+     * The same medium at one temperature everywhere; itself where its index is given without one.
+     *
+     * @param kelvin the temperature
+     */
+    default Medium atTemperature(double kelvin) {
+        return this;
+    }
 
     /** Its name in the job. */
     default String name() {

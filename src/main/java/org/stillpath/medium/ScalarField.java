@@ -94,6 +94,17 @@ public interface ScalarField {
         return "";
     }
 
+    /**
+     * The mean along z between two heights as a quantity of x and y, exactly; empty where the field has no better way than
+     * to be sampled.
+     *
+     * @param from lower height, metres of the medium's frame
+     * @param to upper height
+     */
+    default Optional<ScalarField> meanAlongZ(double from, double to) {
+        return isConstant() ? Optional.of(this) : Optional.empty();
+    }
+
     /** What was assumed, or is doubtful, about the quantity, in words. */
     default List<String> warnings() {
         return List.of();

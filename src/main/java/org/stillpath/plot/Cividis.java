@@ -18,14 +18,19 @@ final class Cividis {
 
     /** The pale colour, 0xRRGGBB, for a value from 0 (low) to 1 (high). */
     static int pale(double value) {
-        double t = Math.min(Math.max(value, 0), 1) * (ANCHORS.length - 1);
-        int i = Math.min((int) t, ANCHORS.length - 2);
+        return between(ANCHORS, value, STRENGTH);
+    }
+
+    /** Between anchors of a map, linear in red, green and blue, with a share of the colour; the rest is white. */
+    static int between(int[] anchors, double value, double strength) {
+        double t = Math.min(Math.max(value, 0), 1) * (anchors.length - 1);
+        int i = Math.min((int) t, anchors.length - 2);
         int rgb = 0;
         for (int shift = 16; shift >= 0; shift -= 8) {
-            double low = (ANCHORS[i] >> shift) & 0xFF;
-            double high = (ANCHORS[i + 1] >> shift) & 0xFF;
+            double low = (anchors[i] >> shift) & 0xFF;
+            double high = (anchors[i + 1] >> shift) & 0xFF;
             double mixed = low + (t - i) * (high - low);
-            rgb |= (int) Math.round(255 + STRENGTH * (mixed - 255)) << shift;
+            rgb |= (int) Math.round(255 + strength * (mixed - 255)) << shift;
         }
         return rgb;
     }

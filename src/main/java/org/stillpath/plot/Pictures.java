@@ -7,6 +7,8 @@ import org.stillpath.task.Figure;
 import org.stillpath.task.MapFigure;
 import org.stillpath.task.PanelFigure;
 import org.stillpath.task.SectionFigure;
+import org.stillpath.task.SpotFigure;
+import org.stillpath.task.WavefrontFigure;
 
 /** Draws figures: the one place that knows which class draws which kind of {@link Figure}. */
 public final class Pictures {
@@ -37,6 +39,12 @@ public final class Pictures {
         }
         if (figure instanceof PanelFigure panels) {
             return new PanelDrawing(panels, width).picture();
+        }
+        if (figure instanceof WavefrontFigure wave) {
+            return new WavefrontDrawing(wave, width).picture();
+        }
+        if (figure instanceof SpotFigure spot) {
+            return new SpotDrawing(spot, width).picture();
         }
         throw new IllegalArgumentException("figure " + figure.name() + " is of a kind that nothing draws: "
                 + figure.getClass().getSimpleName());

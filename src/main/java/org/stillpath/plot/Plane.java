@@ -60,6 +60,16 @@ final class Plane {
         return new Plane(canvas, new Box(left, top, right, top + height), across, up);
     }
 
+    /** A square plot below a heading, of one scale in both directions. */
+    static Plane square(
+            Canvas canvas, double top, double side, ChartFigure.Axis acrossAxis, ChartFigure.Axis upAxis, Range r) {
+        int most = (int) Math.max(3, side / 30);
+        Ruler up = Ruler.of(r.low(), r.high(), upAxis.unit(), upAxis.shown(), most);
+        Ruler across = Ruler.of(r.low(), r.high(), acrossAxis.unit(), acrossAxis.shown(), most);
+        double left = Canvas.EDGE + Axes.TICK + Axes.TICK_GAP + up.widest();
+        return new Plane(canvas, new Box(left, top, left + side, top + side), across, up);
+    }
+
     Box plot() {
         return plot;
     }

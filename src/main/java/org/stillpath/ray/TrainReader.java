@@ -62,7 +62,13 @@ public final class TrainReader {
         if (section.problems().isEmpty()) {
             checkOrder(steps, sections);
         }
-        return new TrainPlan(from, steps);
+        TrainPlan plan = TrainPlan.of(from, steps);
+        if (section.problems().isEmpty()) {
+            for (Plate p : plan.plates()) {
+                p.refusal().ifPresent(why -> sections.get(p.front()).fault("into", why));
+            }
+        }
+        return plan;
     }
 
     /** z of the vertex, from {@code at} or {@code gap}. */

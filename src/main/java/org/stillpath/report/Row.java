@@ -17,7 +17,13 @@ import org.stillpath.unit.Display;
  */
 record Row(String name, String value, String unit, String error) {
 
-    /** All quantities of a result, one line each; lists give a line for each of their numbers. */
+    /** Length up to which all numbers of a list are shown. */
+    private static final int LONG = 10;
+
+    /**
+     * All quantities of a result, one line each; lists give a line for each of their numbers, long ones for those that differ
+     * from zero by more than their error.
+     */
     static List<Row> of(Result result) {
         List<Row> rows = new ArrayList<>();
         for (Map.Entry<String, Quantity> entry : result.quantities().entrySet()) {
@@ -30,6 +36,10 @@ record Row(String name, String value, String unit, String error) {
             } else if (quantity instanceof Quantity.Amounts amounts) {
                 double[] values = amounts.values();
                 for (int i = 0; i < values.length; i++) {
+                    // of a long list a reader wants what is there
+                    if (values.length > LONG && Math.abs(values[i]) <= amounts.error()) {
+                        continue;
+                    }
                     rows.add(number(name + " " + (i + 1), values[i], amounts.unit(), amounts.error()));
                 }
             }

@@ -5,29 +5,22 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
-import org.stillpath.geometry.Vector;
+import java.util.OptionalDouble;
 import org.stillpath.job.Section;
 import org.stillpath.job.Value;
 import org.stillpath.problem.Place;
-import org.stillpath.problem.Problem;
-import org.stillpath.problem.ProblemException;
-import org.stillpath.ray.Action;
-import org.stillpath.ray.Element;
-import org.stillpath.ray.Ending;
-import org.stillpath.ray.RayStart;
-import org.stillpath.ray.Status;
-import org.stillpath.ray.Traced;
-import org.stillpath.ray.Tracer;
 import org.stillpath.ray.Train;
 import org.stillpath.unit.Display;
 import org.stillpath.unit.Kind;
 
 /**
  * The task {@code lens}: Gaussian constants, conjugates and magnification of a train, from the exact ray-transfer about its
- * axis, which is z.
+ * axis, which is z; with a pupil, what real rays say of spots, aberrations and wavefronts; with fibres, their coupling.
  */
 final class LensTask implements Task {
-    private static final List<String> LATER = List.of("pupil", "sensor", "fibres");
+    private static final List<String> CONSTRUCTED = List.of("rays", "construction");
+    private static final List<String> JUDGED =
+            List.of("spot", "wavefront", "aberration", "focus", "zernike", "chromatic");
 
     @Override
     public String name() {
@@ -38,75 +31,160 @@ final class LensTask implements Task {
      * The object of a job.
      *
      * @param distance before the first vertex, metres; infinite for a collimated beam
-     * @param height metres
+     * @param height of the highest point, metres
+     * @param points its points, one or more
      */
-    record Thing(double distance, double height) {}
+    record Thing(double distance, double height, List<FieldPoint> points) {
+        Thing {
+            points = List.copyOf(points);
+        }
+    }
+
+    /**
+     * What a job asks for besides its train.
+     *
+     * @param object absent: a collimated beam along the axis, of which no image is told
+     * @param pupil absent: nothing is said of real rays
+     * @param sensor z of the plane on which spots are judged and at which a receiving fibre stands
+     * @param fibres whose coupling is asked for
+     * @param place of the train in the job
+     */
+    private record Asked(
+            Optional<Thing> object,
+            Optional<PupilSpec> pupil,
+            OptionalDouble sensor,
+            Optional<Fibres> fibres,
+            Place place) {}
 
     @Override
     public Plan read(Section job, Scene scene) {
         Optional<Thing> object = job.find("object").flatMap(v -> object(v.section()));
-        List<String> later = new ArrayList<>();
-        for (String key : LATER) {
-            if (job.has(key)) {
-                later.add(key);
-            }
-        }
+        Optional<PupilSpec> pupil = job.find("pupil").map(PupilSpec::read);
+        OptionalDouble sensor = job.find("sensor")
+                .map(v -> {
+                    Section s = v.section();
+                    double z = s.need("at", "12 mm").quantity(Kind.LENGTH);
+                    s.finish();
+                    return Double.isNaN(z) ? OptionalDouble.empty() : OptionalDouble.of(z);
+                })
+                .orElse(OptionalDouble.empty());
+        Optional<Fibres> fibres = job.find("fibres").flatMap(Fibres::read);
         if (scene.train().isEmpty() && scene.through().isPresent()) {
             job.fault("through", "a lens needs surfaces; give a \"train\" instead");
         }
+        pupil.ifPresent(p -> checkPupil(job, scene, p, object));
+        if (fibres.isPresent()
+                && (object.isEmpty() || Double.isInfinite(object.get().distance()))) {
+            job.fault("fibres", "a fibre sends light from an object; add \"object: {distance: 50 mm}\"");
+        }
         boolean drawable = object.isPresent() && Double.isFinite(object.get().distance());
-        Figures figures = Figures.read(
-                job,
-                scene,
-                List.of("rays", "construction"),
-                drawable ? List.of("rays", "construction") : List.of("rays"));
+        List<String> usual = new ArrayList<>(drawable ? CONSTRUCTED : List.of("rays"));
+        if (pupil.isPresent()) {
+            usual.addAll(JUDGED.subList(0, 5));
+        }
+        if (scene.wavelengths().length > 1) {
+            usual.add("chromatic");
+        }
+        List<String> known = new ArrayList<>(CONSTRUCTED);
+        known.addAll(JUDGED);
+        Figures figures = Figures.read(job, scene, known, usual);
         if (figures.names().contains("construction") && !drawable) {
             job.fault(
                     "figures",
                     "the construction of an image needs an object; add \"object: {distance: 50 mm, height: 1 mm}\"");
         }
+        if (figures.names().contains("chromatic") && scene.wavelengths().length < 2) {
+            job.fault(
+                    "figures",
+                    "the figure \"chromatic\" needs two wavelengths or more; write \"wavelength: [486 nm, 656 nm]\"");
+        }
+        if (pupil.isEmpty() && figures.names().stream().anyMatch(JUDGED.subList(0, 5)::contains)) {
+            job.fault("figures", "spots and wavefronts need a pupil; add \"pupil: {radius: 0.4 mm}\"");
+        }
         Place place = job.find("train").map(Value::place).orElse(job.place());
-        return options -> new Run(scene, object, later, place).result(options.figures() ? figures.names() : List.of());
+        Asked asked = new Asked(object, pupil, sensor, fibres, place);
+        return options -> new Run(scene, asked).result(options.figures() ? figures.names() : List.of());
+    }
+
+    private static void checkPupil(Section job, Scene scene, PupilSpec pupil, Optional<Thing> object) {
+        if (scene.train().isEmpty()) {
+            return;
+        }
+        Train train = scene.trainAt(scene.wavelength());
+        int stop = train.elements().isEmpty() ? -1 : PupilRays.stopOf(train);
+        boolean bare = stop < 0
+                || Double.isInfinite(train.elements().get(stop).surface().aperture());
+        if (pupil.radius().isEmpty() && bare) {
+            job.fault(
+                    "pupil",
+                    "a pupil needs a radius, unless the train has a stop with an aperture; add \"radius: 0.4 mm\"");
+        }
+        if (stop < 0 && object.isPresent() && object.get().distance() == 0) {
+            job.fault(
+                    "pupil",
+                    "an object at the first vertex lights no pupil there; add a stop to the train, or move the object");
+        }
     }
 
     private static Optional<Thing> object(Section s) {
         boolean infinity = s.find("infinity").map(Value::flag).orElse(false);
         if (infinity) {
-            Optional<Value> angles = s.find("field-angles");
-            angles.ifPresent(v -> v.items().forEach(a -> a.quantity(Kind.ANGLE)));
+            List<FieldPoint> points = new ArrayList<>();
+            s.find("field-angles")
+                    .ifPresent(v -> list(v).forEach(item -> {
+                        double angle = item.quantity(Kind.ANGLE);
+                        if (Math.abs(angle) >= Math.PI / 2) {
+                            item.fault("a field angle of 90 deg or more does not enter the train");
+                        } else if (!Double.isNaN(angle)) {
+                            points.add(new FieldPoint(Double.POSITIVE_INFINITY, 0, Math.tan(angle)));
+                        }
+                    }));
             s.finish();
-            return Optional.of(new Thing(Double.POSITIVE_INFINITY, 0));
+            return Optional.of(
+                    new Thing(Double.POSITIVE_INFINITY, 0, points.isEmpty() ? List.of(FieldPoint.INFINITY) : points));
         }
         double distance = s.need("distance", "50 mm").nonNegative(Kind.LENGTH);
-        double height = s.find("height").map(v -> v.quantity(Kind.LENGTH)).orElse(0.0);
+        List<FieldPoint> points = new ArrayList<>();
+        double[] highest = new double[1];
+        s.find("height")
+                .ifPresent(v -> list(v).forEach(item -> {
+                    double h = item.quantity(Kind.LENGTH);
+                    if (!Double.isNaN(h)) {
+                        points.add(new FieldPoint(distance, 0, h));
+                        highest[0] = Math.abs(h) > Math.abs(highest[0]) ? h : highest[0];
+                    }
+                }));
         s.finish();
-        return Double.isNaN(distance + height) ? Optional.empty() : Optional.of(new Thing(distance, height));
+        if (Double.isNaN(distance)) {
+            return Optional.empty();
+        }
+        return Optional.of(
+                new Thing(distance, highest[0], points.isEmpty() ? List.of(new FieldPoint(distance, 0, 0)) : points));
+    }
+
+    private static List<Value> list(Value v) {
+        return v.isList() ? v.items() : List.of(v);
     }
 
     /** One computation. */
     private static final class Run {
-        private static final double ROUNDING = 4e-16;
-        /** Tolerance of the pass that the ray-transfer is compared with, over the accuracy: ten times that of the ray's own. */
-        private static final double ROUGHER = 0.1;
+        private static final double ROUNDING = Axial.ROUNDING;
+        private static final String TURNED =
+                "the train turns its meridians into each other (crossed cylinders or tilts): figures are of the xz and yz "
+                        + "sections alone";
 
         private final Scene scene;
-        private final Optional<Thing> object;
+        private final Asked asked;
         private final Train train;
-        private final Place place;
         private final Map<String, Quantity> quantities = new LinkedHashMap<>();
         private final List<String> warnings;
-        private boolean accurate;
+        private boolean accurate = true;
 
-        Run(Scene scene, Optional<Thing> object, List<String> later, Place place) {
+        Run(Scene scene, Asked asked) {
             this.scene = scene;
-            this.object = object;
-            this.place = place;
+            this.asked = asked;
             this.train = scene.trainAt(scene.wavelength());
             this.warnings = new ArrayList<>(scene.warnings());
-            if (!later.isEmpty()) {
-                warnings.add("not computed in this version, and left aside: " + String.join(", ", later)
-                        + " (aberrations, spots and coupling)");
-            }
         }
 
         Result result(List<String> figures) {
@@ -115,10 +193,24 @@ final class LensTask implements Task {
             double scale = axial.scale();
             boolean afocal = g.afocal(scale);
             String headline = constants(axial, afocal);
-            if (object.isPresent()) {
-                headline = conjugates(axial, object.get(), afocal).orElse(headline);
+            if (asked.object().isPresent()) {
+                headline = conjugates(axial, asked.object().get(), afocal).orElse(headline);
             }
-            chromatic(axial, afocal);
+            List<Train> trains = new ArrayList<>(List.of(train));
+            List<Axial> axials = new ArrayList<>(List.of(axial));
+            double[] wavelengths = scene.wavelengths();
+            for (int i = 1; i < wavelengths.length; i++) {
+                trains.add(scene.trainAt(wavelengths[i]));
+                axials.add(axial(trains.get(i)));
+            }
+            chromatic(axials, afocal);
+            quantities.putAll(Gradient.quantities(train));
+            Optional<Imaging> imaging = asked.pupil().map(p -> imaging(p, trains, axials));
+            String sentence = imaging.map(Imaging::sentence).orElse("");
+            if (!sentence.isEmpty()) {
+                headline += "; " + sentence;
+            }
+            headline += asked.fibres().flatMap(f -> coupling(f, axial)).orElse("");
             if (!train.from().uniform()
                     || !train.behind(train.elements().size() - 1).uniform()) {
                 warnings.add(
@@ -126,12 +218,18 @@ final class LensTask implements Task {
                                 + "train are counted as if its index at the vertex went on");
             }
             List<Figure> drawn = new ArrayList<>();
-            LensFigures pictures = new LensFigures(train, scene, g, axial.last(), scale, afocal, object);
+            LensFigures pictures = new LensFigures(train, scene, g, axial.last(), scale, afocal, asked.object());
             if (figures.contains("rays")) {
                 drawn.add(pictures.rays(headline));
             }
             if (figures.contains("construction")) {
                 drawn.add(pictures.construction(headline));
+            }
+            imaging.filter(i -> !i.views().isEmpty())
+                    .ifPresent(i -> drawn.addAll(new ImagingFigures(i)
+                            .of(figures, scene.figures().isPresent() ? warnings : new ArrayList<>())));
+            if (figures.contains("chromatic") && !afocal) {
+                drawn.add(ChromaticFigure.of(scene, axials, asked.place()));
             }
             if (!accurate) {
                 warnings.add(Words.notReached(scene.accuracy()));
@@ -142,10 +240,10 @@ final class LensTask implements Task {
                     headline,
                     quantities,
                     List.of(),
-                    List.of(),
+                    imaging.map(Imaging::tables).orElse(List.of()),
                     drawn,
                     warnings,
-                    Words.CAUTIONS,
+                    Words.LENS_CAUTIONS,
                     accurate);
         }
 
@@ -164,7 +262,7 @@ final class LensTask implements Task {
                 put("front-focal-length", g.before() / power, "m", g.before() * relative / Math.abs(power));
                 put("rear-focal-length", g.behind() / power, "m", g.behind() * relative / Math.abs(power));
                 double focalError = e / Math.abs(power);
-                put("back-focal-distance", g.backFocalDistance(), "m", backFocalError(axial));
+                put("back-focal-distance", g.backFocalDistance(), "m", axial.backFocalError());
                 put(
                         "front-focal-distance",
                         g.frontFocalDistance(),
@@ -197,12 +295,6 @@ final class LensTask implements Task {
             return sentence;
         }
 
-        private static double backFocalError(Axial axial) {
-            Gaussian g = axial.mean();
-            double power = Math.abs(g.power());
-            return axial.error() / power * (g.behind() + Math.abs(g.backFocalDistance()) / axial.scale());
-        }
-
         /** Image of the object; returns the sentence that answers the job, if there is a better one than the focal length. */
         private Optional<String> conjugates(Axial axial, Thing thing, boolean afocal) {
             Gaussian g = axial.mean();
@@ -214,7 +306,7 @@ final class LensTask implements Task {
                     return Optional.empty();
                 }
                 double back = g.backFocalDistance();
-                put("image-distance", back, "m", backFocalError(axial));
+                put("image-distance", back, "m", axial.backFocalError());
                 quantities.put("image-kind", new Quantity.Word(kind(back, scale)));
                 return Optional.empty();
             }
@@ -251,91 +343,83 @@ final class LensTask implements Task {
         }
 
         /** Back focal distance at each wavelength less that at the first. */
-        private void chromatic(Axial axial, boolean afocal) {
-            double[] wavelengths = scene.wavelengths();
-            if (wavelengths.length < 2 || afocal) {
+        private void chromatic(List<Axial> axials, boolean afocal) {
+            if (axials.size() < 2 || afocal) {
                 return;
             }
-            double first = axial.mean().backFocalDistance();
+            double first = axials.get(0).mean().backFocalDistance();
             double error = 0;
-            double[] shifts = new double[wavelengths.length];
-            for (int i = 1; i < wavelengths.length; i++) {
-                Axial other = axial(scene.trainAt(wavelengths[i]));
+            double[] shifts = new double[axials.size()];
+            for (int i = 1; i < shifts.length; i++) {
+                Axial other = axials.get(i);
                 double c = Math.abs(other.mean().c());
                 shifts[i] = other.mean().backFocalDistance() - first;
                 error = Math.max(
                         error,
-                        2 * other.error() * (1 / c + Math.abs(other.mean().a()) / (c * c * axial.scale())));
+                        2
+                                * other.error()
+                                * (1 / c
+                                        + Math.abs(other.mean().a())
+                                                / (c * c * axials.get(0).scale())));
             }
             quantities.put("chromatic-focal-shift", new Quantity.Amounts(shifts, "m", error));
         }
 
-        /** Both meridians of a train about its axis, and how far they can be trusted. */
+        private Imaging imaging(PupilSpec pupil, List<Train> trains, List<Axial> axials) {
+            List<FieldPoint> fields = asked.object().map(Thing::points).orElse(List.of(FieldPoint.INFINITY));
+            Imaging imaging =
+                    new Imaging(pupil, asked.sensor(), fields, scene.wavelengths(), trains, axials, scene.accuracy());
+            imaging.run();
+            quantities.putAll(imaging.quantities());
+            warnings.addAll(imaging.warnings());
+            accurate &= imaging.accurate();
+            return imaging;
+        }
+
+        /** Coupling of two fibres; the words for the end of the headline. */
+        private Optional<String> coupling(Fibres fibres, Axial axial) {
+            Thing thing = asked.object().orElseThrow();
+            Gaussian g = axial.mean();
+            double along = axial.ray().direction().z() < 0 ? -1 : 1;
+            double behind;
+            if (asked.sensor().isPresent()) {
+                behind = along * (asked.sensor().getAsDouble() - axial.last().z());
+            } else if (g.imagesToInfinity(thing.distance(), axial.scale())) {
+                warnings.add("the source fibre's image is at infinity: say where the receiver stands with \"sensor\"");
+                return Optional.empty();
+            } else {
+                behind = g.imageDistance(thing.distance());
+            }
+            if (behind < 0) {
+                warnings.add("the source fibre's image is virtual: say where the receiver stands with \"sensor\"");
+                return Optional.empty();
+            }
+            double[][] m =
+                    Fibres.between(thing.distance() / g.before(), axial.ray().transfer(), behind / g.behind());
+            double efficiency = fibres.efficiency(
+                    scene.wavelength(), m, thing.points().get(0).y(), g.behind());
+            double error = fibres.error(scene.wavelength(), axial, thing.distance() / g.before(), behind / g.behind());
+            put("coupling-efficiency", efficiency, "1", efficiency * error);
+            String said = "; coupling " + Display.in(efficiency, "%", Math.max(error, 1e-4) * efficiency);
+            if (efficiency > 0) {
+                double loss = -10 * Math.log10(efficiency);
+                put("coupling-loss", loss, "dB", 10 / Math.log(10) * error);
+                said += ", a loss of " + Display.of(loss, "dB", Math.max(1e-3, 4.4 * error));
+            }
+            warnings.add(
+                    "coupling is of Gaussian modes through the ray-transfer matrix: reflections at faces, edges and "
+                            + "aberrations are not in it");
+            return Optional.of(said);
+        }
+
+        /** What the axis of a train tells; warns where that is not all. */
         private Axial axial(Train of) {
-            double asked = scene.accuracy();
-            Tracer tracer = new Tracer(of, new Ending.BehindLastSurface(), new Tracer.Settings(asked, true, false));
-            Vector first = of.elements().get(0).surface().vertex();
-            RayStart start = RayStart.of(new Vector(0, 0, first.z()), Vector.Z);
-            Traced fine = through(tracer.trace(start));
-            // one pass is enough to compare with: its steps are others than those of the fine ray
-            Traced rough = through(tracer.glance(start, ROUGHER * asked));
-            double[][] m = fine.transfer();
-            double[][] r = rough.transfer();
-            double before = norm(fine.start());
-            double behind = norm(fine.state());
-            Gaussian x = meridian(m, 0, before, behind);
-            Gaussian y = meridian(m, 1, before, behind);
-            double scale = scale(of, fine);
-            double error = Math.max(
-                            x.difference(meridian(r, 0, before, behind), scale),
-                            y.difference(meridian(r, 1, before, behind), scale))
-                    + ROUNDING * (4 + of.elements().size()) * (1 + Math.abs(x.a()) + Math.abs(x.d()));
-            double skew = Math.max(Math.abs(m[0][1]), Math.abs(m[2][1]) * scale)
-                    + Math.max(Math.abs(m[0][3]) / scale, Math.abs(m[2][3]));
-            boolean astigmatic = x.difference(y, scale) > 1e-9;
-            if (skew > 1e-9) {
-                warnings.add(
-                        "the train turns its meridians into each other (crossed cylinders or tilts): figures are of the "
-                                + "xz and yz sections alone");
+            Axial axial = Axial.of(of, scene.accuracy(), asked.place());
+            if (axial.turned() && !warnings.contains(TURNED)) {
+                warnings.add(TURNED);
             }
-            accurate = fine.accurate() && error <= Math.max(100 * asked, 1e-11);
-            return new Axial(x, y, Gaussian.mean(x, y), astigmatic, error, scale, fine.position());
-        }
-
-        private static double norm(double[] y) {
-            return Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
-        }
-
-        private static Gaussian meridian(double[][] m, int i, double before, double behind) {
-            return new Gaussian(m[i][i], m[i][i + 2], m[i + 2][i], m[i + 2][i + 2], before, behind);
-        }
-
-        private Traced through(Traced t) {
-            if (t.status() != Status.ARRIVED) {
-                throw new ProblemException(Problem.input(
-                        place,
-                        "train",
-                        "light along the axis does not come through, so the train has no Gaussian constants: "
-                                + t.status().word() + ", " + t.note()));
-            }
-            return t;
-        }
-
-        /** Length that "far" is judged against: the train's own, or where it has none, of its curvatures or focal lengths. */
-        private static double scale(Train of, Traced axial) {
-            double track = axial.length();
-            if (track > 0) {
-                return track;
-            }
-            double least = Double.POSITIVE_INFINITY;
-            for (Element e : of.elements()) {
-                double c = e.surface().form().curvature();
-                least = Math.min(least, c > 0 ? 1 / c : Double.POSITIVE_INFINITY);
-                if (e.action() instanceof Action.ThinLens lens) {
-                    least = Math.min(least, Math.abs(lens.focalLength()));
-                }
-            }
-            return Double.isFinite(least) ? least : 1;
+            accurate &= axial.accurate();
+            return axial;
         }
 
         private Quantity.Amount put(String name, double value, String unit, double error) {
@@ -349,8 +433,4 @@ final class LensTask implements Task {
             return Display.brief(q.value(), q.unit(), q.error()).toString();
         }
     }
-
-    /** What the axial ray tells. */
-    private record Axial(
-            Gaussian x, Gaussian y, Gaussian mean, boolean astigmatic, double error, double scale, Vector last) {}
 }

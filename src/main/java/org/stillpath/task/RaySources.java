@@ -8,6 +8,7 @@ import org.stillpath.job.Section;
 import org.stillpath.job.Value;
 import org.stillpath.ray.RayStart;
 import org.stillpath.unit.Kind;
+import org.stillpath.wave.Pupil;
 
 /** Reads the {@code rays} of a job: single rays, fans, beams and bundles. */
 final class RaySources {

@@ -12,6 +12,7 @@ import org.stillpath.medium.Media;
 import org.stillpath.medium.MediaMemory;
 import org.stillpath.medium.MediaReader;
 import org.stillpath.medium.Medium;
+import org.stillpath.ray.Plate;
 import org.stillpath.ray.Train;
 import org.stillpath.ray.TrainPlan;
 import org.stillpath.ray.TrainReader;
@@ -100,6 +101,12 @@ public record Scene(
                                 .forEach(list::add));
             }
         }
+        train.ifPresent(t -> t.plates().forEach(p -> {
+            Plate.Span met = p.span(p.radius());
+            p.medium().warningsBetween(met.coldest(), met.hottest()).stream()
+                    .filter(w -> !list.contains(w))
+                    .forEach(list::add);
+        }));
         return List.copyOf(list);
     }
 

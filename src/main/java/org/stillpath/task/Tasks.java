@@ -12,9 +12,7 @@ import org.stillpath.problem.Problems;
 /** The tasks by name, and the way from a job to its result. */
 public final class Tasks {
     private static final List<Task> ALL =
-            List.of(new TraceTask(), new BetweenTask(), new LensTask(), new SightlineTask());
-    /** Words of the job file that a later version gives a meaning. */
-    private static final List<String> PLANNED = List.of("window");
+            List.of(new TraceTask(), new BetweenTask(), new LensTask(), new SightlineTask(), new WindowTask());
 
     private Tasks() {}
 
@@ -74,11 +72,6 @@ public final class Tasks {
 
     private static Optional<Task> find(Value name) {
         if (name.isPlaceholder()) {
-            return Optional.empty();
-        }
-        if (name.isText() && PLANNED.contains(name.text())) {
-            name.fault("the task \"" + name.text() + "\" is not in this version yet; it has "
-                    + String.join(" and ", names()));
             return Optional.empty();
         }
         String word = name.word(names().toArray(String[]::new));

@@ -10,6 +10,13 @@ final class Words {
             "The result says where light goes, not whether it is safe to be there: for laser beams follow IEC 60825-1 and "
                     + "local rules, and never look at the sun or into a beam through optics.");
 
+    /** The same for lenses, where beams are focused and eyes are computed. Common practice, no source. */
+    static final List<String> LENS_CAUTIONS = List.of(
+            CAUTIONS.get(0),
+            "A lens concentrates light: the class of a laser product and the eyewear it needs follow from the standards that "
+                    + "apply (IEC 60825-1; EN 207, EN 208 or ANSI Z136.1), never from this result.",
+            "Results about eyes are no diagnosis and no prescription.");
+
     private Words() {}
 
     /** That the asked accuracy was not reached. */

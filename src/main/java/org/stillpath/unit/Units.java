@@ -138,6 +138,8 @@ public final class Units {
         angle(t, "mgon", 1, 200000, 1);
 
         add(t, "%", 1, 100, Dimension.NONE);
+        // a level: the name of a number, which nothing converts
+        add(t, "dB", 1, 1, Dimension.NONE);
         add(t, "ppm", 1, 1e6, Dimension.NONE);
         add(t, "ppb", 1, 1e9, Dimension.NONE);
         add(t, "dpt", 1, 1, Dimension.whole(-1, 0, 0, 0));

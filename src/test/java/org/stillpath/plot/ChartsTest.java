@@ -17,6 +17,9 @@ import org.stillpath.task.ChartFigure.Series;
 import org.stillpath.task.ChartFigure.Style;
 import org.stillpath.task.Figure;
 import org.stillpath.task.MapFigure;
+import org.stillpath.task.Points;
+import org.stillpath.task.SpotFigure;
+import org.stillpath.task.WavefrontFigure;
 
 /** Charts, maps and bars at both widths: nothing overlaps, nothing leaves the paper, the same bytes each time. */
 class ChartsTest {
@@ -92,7 +95,58 @@ class ChartsTest {
                         LONG + " makes up 93 % of the variance",
                         new Axis("contribution", "m", ""),
                         bars.subList(5, 9),
-                        0));
+                        0),
+                wavefront(0),
+                wavefront(3e-7),
+                spots(1, 1),
+                spots(5, 3));
+    }
+
+    private static WavefrontFigure wavefront(double size) {
+        int side = 41;
+        double[] values = new double[side * side];
+        for (int j = 0; j < side; j++) {
+            for (int i = 0; i < side; i++) {
+                double x = (i - 20) / 20.0;
+                double y = (j - 20) / 20.0;
+                double coma = (3 * (x * x + y * y) - 2) * y;
+                values[j * side + i] = y > 0.8 ? Double.NaN : size * (coma + 0.3 * x * x);
+            }
+        }
+        return new WavefrontFigure(
+                "wavefront" + size,
+                "How far is the wave from a sphere?",
+                "Wavefront 0.11 waves rms, 0.62 waves from peak to valley: Strehl ratio 0.61",
+                "x in the pupil",
+                "y in the pupil",
+                0.35e-3,
+                633e-9,
+                side,
+                values);
+    }
+
+    private static SpotFigure spots(int fields, int colours) {
+        List<SpotFigure.Spot> spots = new ArrayList<>();
+        for (int f = 0; f < fields; f++) {
+            List<SpotFigure.Colour> all = new ArrayList<>();
+            for (int c = 0; c < colours; c++) {
+                double size = (1 + f + 0.3 * c) * 1e-6;
+                double[] x = new double[60];
+                double[] y = new double[60];
+                Arrays.setAll(x, i -> size * (1 + i / 20) * Math.cos(i * Math.PI / 10));
+                Arrays.setAll(y, i -> size * (1 + i / 20) * Math.sin(i * Math.PI / 10));
+                all.add(new SpotFigure.Colour(colours > 1 ? 450 + 100 * c + " nm" : "", new Points(x, y)));
+            }
+            spots.add(new SpotFigure.Spot(
+                    "field " + f + " deg",
+                    "rms radius 1.4 µm",
+                    all,
+                    List.of(
+                            new SpotFigure.Circle("80 % of the rays", 2e-6),
+                            new SpotFigure.Circle("first dark ring of a perfect lens", 1.2e-6))));
+        }
+        return new SpotFigure(
+                "spot" + fields, "How sharp is a point?", "Spot 1.4 µm rms at the best focus", false, spots);
     }
 
     static Stream<Arguments> pictures() {

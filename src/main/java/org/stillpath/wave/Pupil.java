@@ -1,16 +1,16 @@
-package org.stillpath.task;
+package org.stillpath.wave;
 
 import java.util.ArrayList;
 import java.util.List;
-import org.hipparchus.analysis.integration.gauss.GaussIntegrator;
-import org.hipparchus.analysis.integration.gauss.GaussIntegratorFactory;
+import org.stillpath.geometry.GaussPoints;
 import org.stillpath.job.Section;
 import org.stillpath.job.Value;
 
 /**
  * Sampling of a unit pupil: Gauss points in the square of the radius times equal angles from +x, ring by ring from the
  * inside, so that averages with these weights do not depend on the count once it is enough (Forbes, J. Opt. Soc. Am. A 5
- * (1988) 1943).
+ * (1988) 1943). Polynomials of the pupil's coordinates are averaged exactly up to the degree 4·radial − 2 as long as their
+ * angular order stays below the number of angles.
  *
  * @param radial number of rings
  * @param angular number of points a ring
@@ -34,7 +34,7 @@ public record Pupil(int radial, int angular) {
     }
 
     /** Reads {@code {radial: 6, angular: 12}}. */
-    static Pupil read(Value value) {
+    public static Pupil read(Value value) {
         Section s = value.section();
         int radial = s.need("radial", "6").count(1, MOST_RINGS);
         int angular = s.need("angular", "12").count(1, MOST_ANGLES);
@@ -44,15 +44,28 @@ public record Pupil(int radial, int angular) {
 
     /** The points, ring by ring from the inside. */
     public List<Point> points() {
-        GaussIntegrator gauss = new GaussIntegratorFactory().legendre(radial, 0, 1);
+        GaussPoints gauss = GaussPoints.of(radial);
         List<Point> points = new ArrayList<>(radial * angular);
         for (int i = 0; i < radial; i++) {
-            double r = Math.sqrt(gauss.getPoint(i));
-            for (int k = 0; k < angular; k++) {
-                double angle = 2 * Math.PI * k / angular;
-                points.add(new Point(r * Math.cos(angle), r * Math.sin(angle), gauss.getWeight(i) / angular));
-            }
+            ring(points, Math.sqrt(gauss.at(i)), gauss.weight(i) / angular);
         }
         return points;
+    }
+
+    /**
+     * The points, then those of the rim, which weigh nothing: averages leave them out, while extremes and edges, which Gauss
+     * points do not reach, need them.
+     */
+    public List<Point> pointsWithRim() {
+        List<Point> points = points();
+        ring(points, 1, 0);
+        return points;
+    }
+
+    private void ring(List<Point> points, double radius, double weight) {
+        for (int k = 0; k < angular; k++) {
+            double angle = 2 * Math.PI * k / angular;
+            points.add(new Point(radius * Math.cos(angle), radius * Math.sin(angle), weight));
+        }
     }
 }
