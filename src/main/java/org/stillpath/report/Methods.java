@@ -31,6 +31,22 @@ final class Methods {
                             + " themselves, not a fit to rays near the axis. Geometrical optics: diffraction images and transfer"
                             + " functions of contrast are not computed.");
         }
+        if (result.quantities().containsKey("spot-radius-rms")
+                || result.quantities().containsKey("angular-radius-rms")) {
+            paragraphs.add(
+                    "Spots and wavefronts come from real rays over the pupil, at Gauss points in the square of its radius and equal"
+                            + " angles (Forbes, J. Opt. Soc. Am. A 5 (1988) 1943), so that averages do not depend on their number once"
+                            + " it is enough. A path difference is a ray's optical length to the sphere about the image point"
+                            + " through the last vertex less the chief ray's, positive where it is longer; rms, peak to valley and"
+                            + " the Strehl ratio are told without tilt, the Strehl ratio as |⟨exp(2πiW/λ)⟩|² itself. Zernike"
+                            + " terms are Noll's (J. Opt. Soc. Am. 66 (1976) 207), each of unit rms, over the ray's place in the"
+                            + " entrance pupil, x and y as in the job.");
+        }
+        if (result.quantities().containsKey("coupling-efficiency")) {
+            paragraphs.add(
+                    "Coupling is the overlap of Gaussian modes: the source's, taken through the ray-transfer matrix (Kogelnik"
+                            + " and Li, Applied Optics 5 (1966) 1550), and the receiver's.");
+        }
         if (result.task().equals("sightline")) {
             paragraphs.add(
                     "Images are all rays from the eye that meet the target's earth radius at its height, found over the launch"
@@ -86,6 +102,9 @@ final class Methods {
                     "The power is 1 over the effective focal length; front and rear focal lengths are the index before"
                             + " and behind over the power.");
             lines.add("A negative image distance is a virtual image; a negative magnification an inverted one.");
+            lines.add(
+                    "Where there are several fields or wavelengths, a single value is that of the first; distortion and the"
+                            + " departure of a line are those of the outermost field.");
         } else if (task.equals("sightline")) {
             lines.add(
                     "Heights are above the datum; distances run along it from below the eye. Elevations are above each"

@@ -1,6 +1,7 @@
 package org.stillpath.task;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
@@ -23,6 +24,11 @@ import org.stillpath.wave.Wavefront;
  * told apart; a second trace of every ray would double the cost and say the same.
  */
 final class Bundle {
+    /** Rays of the rim that are traced twice, at most twice as many. */
+    private static final int MOST_TWICE = 32;
+    /** Difference of two distances from the centroid, over them, up to which they are one. */
+    private static final double SAME_RING = 1e-6;
+
     private final int size;
     /** Pupil x, y, weight; place x, y, z; direction x, y, z; optical length: one array each. */
     private final double[][] rays;
@@ -82,6 +88,7 @@ final class Bundle {
             larger(errors, chief.get());
         }
         int size = 0;
+        int rim = 0;
         double tolerance = Math.max(0.01 * accuracy, 1e-15);
         for (Pupil.Point p : points) {
             Optional<RayStart> start = source.start(p.x(), p.y());
@@ -90,14 +97,14 @@ final class Bundle {
                 reasons.merge("no ray reaches the stop there", p.weight(), Double::sum);
                 continue;
             }
-            boolean rim = p.weight() == 0;
+            boolean told = p.weight() == 0 && rim++ % (1 + pupil.angular() / MOST_TWICE) == 0;
             Traced t = tracer.glance(start.get(), tolerance);
             if (t.status() != Status.ARRIVED) {
                 lost.add(p);
                 reasons.merge(reason(t), p.weight(), Double::sum);
                 continue;
             }
-            if (rim) {
+            if (told) {
                 Traced twice = tracer.trace(start.get());
                 if (twice.status() == Status.ARRIVED) {
                     larger(errors, twice);
@@ -291,38 +298,40 @@ final class Bundle {
     }
 
     /**
-     * Radius about the centroid that holds a share of the light, metres. Between two rays the share grows evenly, each ray
-     * standing for half its weight on either side of its distance.
+     * Radius about the centroid that holds a share of the light, metres. The light of rays at one distance, as those of a ring of
+     * a symmetric spot are, stands half within and half beyond it; between two distances the share grows with the area.
      */
     double encircled(double z, double share) {
         double[][] p = at(z);
         double[] c = centroid(p);
+        double[] radius = new double[size];
+        Arrays.setAll(radius, i -> Math.hypot(p[0][i] - c[0], p[1][i] - c[1]));
         int[] order = IntStream.range(0, size)
                 .filter(i -> rays[2][i] > 0)
                 .boxed()
-                .sorted((a, b) -> Double.compare(
-                        Math.hypot(p[0][a] - c[0], p[1][a] - c[1]), Math.hypot(p[0][b] - c[0], p[1][b] - c[1])))
+                .sorted((a, b) -> Double.compare(radius[a], radius[b]))
                 .mapToInt(Integer::intValue)
                 .toArray();
-        double total = 0;
-        for (int i : order) {
-            total += rays[2][i];
-        }
-        double before = 0;
+        double total = Arrays.stream(order).mapToDouble(i -> rays[2][i]).sum();
+        double within = 0;
         double lastShare = 0;
-        double lastRadius = 0;
-        for (int i : order) {
-            double radius = Math.hypot(p[0][i] - c[0], p[1][i] - c[1]);
-            double middle = (before + 0.5 * rays[2][i]) / total;
-            if (middle >= share) {
-                double part = middle > lastShare ? (share - lastShare) / (middle - lastShare) : 1;
-                return lastRadius + part * (radius - lastRadius);
+        double lastSquare = 0;
+        int next = 0;
+        while (next < order.length) {
+            double r = radius[order[next]];
+            double here = 0;
+            while (next < order.length && radius[order[next]] <= r * (1 + SAME_RING)) {
+                here += rays[2][order[next++]];
             }
-            before += rays[2][i];
+            double middle = (within + 0.5 * here) / total;
+            if (middle >= share) {
+                return Math.sqrt(lastSquare + (share - lastShare) / (middle - lastShare) * (r * r - lastSquare));
+            }
+            within += here;
             lastShare = middle;
-            lastRadius = radius;
+            lastSquare = r * r;
         }
-        return lastRadius;
+        return Math.sqrt(lastSquare);
     }
 
     /**

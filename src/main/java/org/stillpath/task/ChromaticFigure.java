@@ -8,7 +8,7 @@ import org.stillpath.unit.Display;
 
 /** The figure {@code chromatic}: where each wavelength has its focus. */
 final class ChromaticFigure {
-    private static final int BETWEEN = 31;
+    private static final int BETWEEN = 101;
     /** Pictures need no more. */
     private static final double ACCURACY = 1e-9;
 

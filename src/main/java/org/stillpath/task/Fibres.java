@@ -57,9 +57,6 @@ record Fibres(double mode, double receiver, double dx, double dy, double ax, dou
      * @param index of the medium before the receiver
      */
     double efficiency(double wavelength, double[][] m, double height, double index) {
-        GaussianBeam arrives = GaussianBeam.atWaist(wavelength, mode, mode)
-                .moved(0, height, 0, 0)
-                .through(m);
         // the receiver's axis is (sin ay, −sin ax cos ay, cos ax cos ay)
         GaussianBeam taken = GaussianBeam.atWaist(wavelength, receiver, receiver)
                 .moved(
@@ -67,7 +64,14 @@ record Fibres(double mode, double receiver, double dx, double dy, double ax, dou
                         dy + m[1][1] * height,
                         index * Math.sin(ay),
                         -index * Math.sin(ax) * Math.cos(ay));
-        return arrives.overlap(taken);
+        return arriving(wavelength, m, height).overlap(taken);
+    }
+
+    /** The source's light at the receiver's end. */
+    GaussianBeam arriving(double wavelength, double[][] m, double height) {
+        return GaussianBeam.atWaist(wavelength, mode, mode)
+                .moved(0, height, 0, 0)
+                .through(m);
     }
 
     /**

@@ -396,9 +396,11 @@ final class LensTask implements Task {
             }
             double[][] m =
                     Fibres.between(thing.distance() / g.before(), axial.ray().transfer(), behind / g.behind());
-            double efficiency = fibres.efficiency(
-                    scene.wavelength(), m, thing.points().get(0).y(), g.behind());
+            double height = thing.points().get(0).y();
+            double efficiency = fibres.efficiency(scene.wavelength(), m, height, g.behind());
             double error = fibres.error(scene.wavelength(), axial, thing.distance() / g.before(), behind / g.behind());
+            double[] radii = fibres.arriving(scene.wavelength(), m, height).radii();
+            quantities.put("arriving-mode-radius", new Quantity.Amounts(radii, "m", radii[0] * error));
             put("coupling-efficiency", efficiency, "1", efficiency * error);
             String said = "; coupling " + Display.in(efficiency, "%", Math.max(error, 1e-4) * efficiency);
             if (efficiency > 0) {

@@ -12,8 +12,6 @@ import org.hipparchus.linear.SingularValueDecomposition;
  * taken.
  */
 final class BasisFit {
-    private static final int PASSES = 2;
-
     private BasisFit() {}
 
     /** Functions that are fitted. */
@@ -25,20 +23,10 @@ final class BasisFit {
     /** The coefficients of {@code count} functions that fit best. */
     static double[] of(Wavefront wave, int count, Basis basis) {
         double[] values = new double[count];
+        double[] found = new double[count];
+        double[] right = new double[count];
         double[][] normal = new double[count][count];
-        for (int s = 0; s < wave.size(); s++) {
-            double w = wave.weight(s);
-            if (w == 0) {
-                continue;
-            }
-            basis.values(wave.x(s), wave.y(s), values);
-            for (int i = 0; i < count; i++) {
-                double wi = w * values[i];
-                for (int j = 0; j <= i; j++) {
-                    normal[i][j] += wi * values[j];
-                }
-            }
-        }
+        project(wave, basis, found, values, right, normal);
         for (int i = 0; i < count; i++) {
             for (int j = 0; j < i; j++) {
                 normal[j][i] = normal[i][j];
@@ -46,28 +34,44 @@ final class BasisFit {
         }
         DecompositionSolver solver =
                 new SingularValueDecomposition(new Array2DRowRealMatrix(normal, false)).getSolver();
-        double[] found = new double[count];
-        for (int pass = 0; pass < PASSES; pass++) {
-            double[] right = new double[count];
-            for (int s = 0; s < wave.size(); s++) {
-                double w = wave.weight(s);
-                if (w == 0) {
-                    continue;
-                }
-                basis.values(wave.x(s), wave.y(s), values);
-                double left = wave.path(s);
-                for (int i = 0; i < count; i++) {
-                    left -= found[i] * values[i];
-                }
-                for (int i = 0; i < count; i++) {
-                    right[i] += w * left * values[i];
-                }
+        add(found, solver, right);
+        right = new double[count];
+        project(wave, basis, found, values, right, new double[0][]);
+        add(found, solver, right);
+        return found;
+    }
+
+    private static void add(double[] found, DecompositionSolver solver, double[] right) {
+        double[] more = solver.solve(new ArrayRealVector(right, false)).toArray();
+        for (int i = 0; i < found.length; i++) {
+            found[i] += more[i];
+        }
+    }
+
+    /** What the sum so far leaves, projected on each function; and the functions on each other, where that is wanted. */
+    private static void project(
+            Wavefront wave, Basis basis, double[] found, double[] values, double[] right, double[][] normal) {
+        int count = found.length;
+        for (int s = 0; s < wave.size(); s++) {
+            double w = wave.weight(s);
+            if (w == 0) {
+                continue;
             }
-            double[] more = solver.solve(new ArrayRealVector(right, false)).toArray();
+            basis.values(wave.x(s), wave.y(s), values);
+            double left = wave.path(s);
             for (int i = 0; i < count; i++) {
-                found[i] += more[i];
+                left -= found[i] * values[i];
+            }
+            for (int i = 0; i < count; i++) {
+                right[i] += w * left * values[i];
+            }
+            for (int i = 0; i < normal.length; i++) {
+                double wi = w * values[i];
+                double[] row = normal[i];
+                for (int j = 0; j <= i; j++) {
+                    row[j] += wi * values[j];
+                }
             }
         }
-        return found;
     }
 }

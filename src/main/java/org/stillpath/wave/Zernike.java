@@ -1,5 +1,8 @@
 package org.stillpath.wave;
 
+import java.util.Arrays;
+import java.util.stream.IntStream;
+
 /**
  * Zernike's polynomials on the unit disk in the order and with the norm of Noll (J. Opt. Soc. Am. 66 (1976) 207): counted
  * from 1, even numbers with the cosine, odd ones with the sine, each of unit rms over the disk. The angle counts from +x
@@ -17,7 +20,8 @@ public final class Zernike {
     /** Coefficients of each radial polynomial over r^m by powers of r², norm included. */
     private final double[][] radial;
 
-    private final int highest;
+    /** Places in {@link #modes} by the size of their order. */
+    private final int[][] byOrder;
 
     /**
      * One polynomial.
@@ -58,7 +62,12 @@ public final class Zernike {
             modes[j - 1] = mode;
             radial[j - 1] = radial(mode.degree(), Math.abs(mode.order()));
         }
-        highest = modes[terms - 1].degree();
+        byOrder = new int[modes[terms - 1].degree() + 1][];
+        Arrays.setAll(
+                byOrder,
+                m -> IntStream.range(0, terms)
+                        .filter(j -> Math.abs(modes[j].order()) == m)
+                        .toArray());
     }
 
     /**
@@ -99,18 +108,14 @@ public final class Zernike {
         double s = x * x + y * y;
         double re = 1;
         double im = 0;
-        for (int m = 0; m <= highest; m++) {
-            for (int j = 0; j < modes.length; j++) {
-                int order = modes[j].order();
-                if (Math.abs(order) != m) {
-                    continue;
-                }
+        for (int[] places : byOrder) {
+            for (int j : places) {
                 double[] c = radial[j];
                 double sum = c[c.length - 1];
                 for (int k = c.length - 2; k >= 0; k--) {
                     sum = sum * s + c[k];
                 }
-                out[j] = sum * (order < 0 ? im : re);
+                out[j] = sum * (modes[j].order() < 0 ? im : re);
             }
             double next = re * x - im * y;
             im = re * y + im * x;
