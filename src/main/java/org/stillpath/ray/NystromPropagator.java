@@ -313,7 +313,8 @@ public final class NystromPropagator implements Propagator {
         z[0] = qz;
         field.sample(x, y, z, 1, order, s);
         evaluations++;
-        return !Double.isNaN(s.value[0] + s.gx[0] + s.gy[0] + s.gz[0]);
+        // an infinite slope, at the end of a root's domain, is no force to go on with
+        return Double.isFinite(s.value[0] + s.gx[0] + s.gy[0] + s.gz[0]);
     }
 
     /** The rates at a state; false where the field is undefined. */

@@ -34,6 +34,8 @@ import org.stillpath.task.MapFigure;
 import org.stillpath.task.PanelFigure;
 import org.stillpath.task.SectionFigure;
 import org.stillpath.task.SectionFigure.Role;
+import org.stillpath.task.SpotFigure;
+import org.stillpath.task.WavefrontFigure;
 import org.w3c.dom.Document;
 import org.w3c.dom.Element;
 import org.w3c.dom.NodeList;
@@ -350,7 +352,9 @@ class PicturesTest {
                         PanelFigure.class,
                         ChartFigure.class,
                         MapFigure.class,
-                        BarFigure.class);
+                        BarFigure.class,
+                        WavefrontFigure.class,
+                        SpotFigure.class);
     }
 
     @Test

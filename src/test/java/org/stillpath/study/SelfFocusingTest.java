@@ -69,7 +69,10 @@ class SelfFocusingTest {
     }
 
     private static double[] results(Doc rows, int row) {
-        return ((Doc.Amounts) at(((Doc.Items) rows).values().get(row), "results")).values();
+        Doc.Items results = (Doc.Items) at(((Doc.Items) rows).values().get(row), "results");
+        return results.values().stream()
+                .mapToDouble(d -> ((Doc.Amount) d).value())
+                .toArray();
     }
 
     private static double number(Outcome o, String unknown) {

@@ -68,9 +68,9 @@ class SightStudiesTest {
         assertThat(at(beside.doc(), "budget", "images.0.launch-elevation", "monte-carlo", "agrees"))
                 .isEqualTo(new Doc.Flag(false));
         assertThat(beside.result().warnings())
-                .anyMatch(w -> w.contains("the linear budget of the images 0 launch elevation is not valid"))
+                .anyMatch(w -> w.contains("the linear budget of the launch elevation of image 0 is not valid"))
                 // where the air is hotter the target sinks below the line and is not seen at all
-                .anyMatch(w -> w.contains("samples") && w.contains("there is no images 0 launch elevation"));
+                .anyMatch(w -> w.contains("samples") && w.contains("there is no launch elevation of image 0"));
         Outcome far = study(String.format(Locale.ROOT, road, 0.6));
         assertThat(far.result().warnings()).noneMatch(w -> w.contains("is not valid"));
     }
