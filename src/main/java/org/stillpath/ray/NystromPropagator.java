@@ -174,8 +174,6 @@ public final class NystromPropagator implements Propagator {
         }
         double h = firstStep(state, field);
         boolean undefined = false;
-        // whether a step from here has come upon an undefined place, even if the last try did not reach so far
-        boolean edge = false;
         for (int i = 0; i < MOST_STEPS; i++) {
             double aim = (i == 0 && stride < 1 ? stride : BEYOND) * aim(targets, bias, state);
             boolean aimed = aim < h && !undefined;
@@ -188,13 +186,11 @@ public final class NystromPropagator implements Propagator {
             if (!(error <= 1)) {
                 undefined = Double.isNaN(error);
                 h = taken * (undefined ? 0.25 : factor(error));
-                edge |= undefined;
                 if (!(h * speed(state) > SHORTEST * scale)) {
-                    return edge ? UNDEFINED : STUCK;
+                    return undefined ? UNDEFINED : STUCK;
                 }
                 continue;
             }
-            edge = false;
             // what the estimate of lower order means for the formula that is used
             localErrors += CAUTION * tolerance * Math.pow(error, (pair.order() + 1.0) / (pair.lower() + 1.0));
             path.finish(end, k[0], taken);

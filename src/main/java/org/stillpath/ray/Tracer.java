@@ -664,9 +664,11 @@ public final class Tracer {
                 return Move.ENDED;
             }
             if (met < 0) {
+                // steps shrink before the end of a root's domain too, where slopes have no bound
+                String why = met == Propagator.UNDEFINED ? undefined() : ahead(1e-9 * scale);
                 end(
-                        met == Propagator.UNDEFINED ? Status.OUTSIDE : Status.LOST,
-                        met == Propagator.UNDEFINED ? undefined() : "the step became too small " + where());
+                        why.isEmpty() ? Status.LOST : Status.OUTSIDE,
+                        why.isEmpty() ? "the step became too small " + where() : why);
                 return Move.ENDED;
             }
             if (met < 2 + cells.limits()) {
@@ -829,15 +831,21 @@ public final class Tracer {
         }
 
         private String undefined() {
+            String why = ahead(1e-2 * scale);
+            return why.isEmpty() ? "the index is undefined " + where() : why;
+        }
+
+        /** Why the index is undefined not farther ahead than this; empty if it is not. */
+        private String ahead(double farthest) {
             // the state is the last sound one: what is wrong lies just ahead of it
-            for (double ahead = 0; ahead <= 1e-2 * scale; ahead = ahead == 0 ? 1e-15 * scale : 4 * ahead) {
+            for (double ahead = 0; ahead <= farthest; ahead = ahead == 0 ? 1e-15 * scale : 4 * ahead) {
                 double n = Math.sqrt(y[3] * y[3] + y[4] * y[4] + y[5] * y[5]);
                 String why = field.explain(y[0] + ahead * y[3] / n, y[1] + ahead * y[4] / n, y[2] + ahead * y[5] / n);
                 if (!why.isEmpty()) {
                     return why + " " + where();
                 }
             }
-            return "the index is undefined " + where();
+            return "";
         }
 
         private String where() {
