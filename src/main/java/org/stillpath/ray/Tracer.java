@@ -4,11 +4,13 @@ import java.util.ArrayDeque;
 import java.util.ArrayList;
 import java.util.Deque;
 import java.util.HashMap;
+import java.util.Iterator;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.Objects;
+import java.util.function.Consumer;
 import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
 import org.stillpath.formula.Order;
@@ -47,6 +49,8 @@ public final class Tracer {
     private static final int FEWEST_IN_BUNDLES = 256;
     /** Rays that share batches; fixed, so that results do not depend on the number of threads. */
     private static final int CHUNK = 1024;
+    /** Rays held at once where they come and go: work for several cores. */
+    private static final int AT_ONCE = 16 * CHUNK;
     /** How far a ray that has passed a point is followed for the next passage, in lengths of the scene. */
     private static final double BACK = 2;
 
@@ -123,6 +127,21 @@ public final class Tracer {
                 .mapToObj(i -> bundle(starts.subList(i * CHUNK, Math.min(starts.size(), (i + 1) * CHUNK)), ready))
                 .flatMap(List::stream)
                 .toList();
+    }
+
+    /**
+     * Traces rays as they come and hands on their ends in the same order, as {@link #trace(List)} does, without ever holding more
+     * than some thousands of them.
+     */
+    public void trace(Iterator<RayStart> starts, Consumer<? super Traced> ends) {
+        List<RayStart> some = new ArrayList<>(AT_ONCE);
+        while (starts.hasNext()) {
+            some.clear();
+            while (starts.hasNext() && some.size() < AT_ONCE) {
+                some.add(starts.next());
+            }
+            trace(some).forEach(ends);
+        }
     }
 
     /** Whether rays may go in bundles: places on the way and conjugate points are noted by the ray alone. */

@@ -158,6 +158,15 @@ class BundleTest {
         }
     }
 
+    @Test
+    void handsOnRaysAsTheyCome() throws FormulaException {
+        List<RayStart> starts = fan(20_000);
+        Tracer tracer = new Tracer(rod(), new Ending.AtZ(20e-3), new Tracer.Settings(1e-6, false, false));
+        List<Traced> ends = new ArrayList<>();
+        tracer.trace(starts.iterator(), ends::add);
+        assertThat(ends).isEqualTo(tracer.trace(starts));
+    }
+
     private static Offset<Double> within(Traced a, Traced b) {
         return offset(a.errors().length() + b.errors().length());
     }
