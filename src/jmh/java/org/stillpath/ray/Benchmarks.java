@@ -23,10 +23,12 @@ import org.openjdk.jmh.runner.options.TimeValue;
  * interleaved and the median of the rounds taken, since machines change their speed; then the others. Leaves {@code
  * summary.txt} and {@code summary.json} in {@code target/benchmarks}.
  *
- * <p>Run: {@code mvn -q -B test-compile exec:exec@benchmarks}, some twelve minutes.
+ * <p>Run: {@code mvn -q -B test-compile exec:exec@benchmarks}, some twenty minutes.
  */
 public final class Benchmarks {
-    private static final int ROUNDS = 3;
+    private static final int ROUNDS = Integer.getInteger("rounds", 3);
+    /** Rays by which tolerances are found. */
+    private static final int TUNED = 512;
     private static final String[] NAMES = {"W1", "W2", "W3", "W4"};
 
     private Benchmarks() {}
@@ -64,7 +66,7 @@ public final class Benchmarks {
         List<Map<String, Object>> rows = new ArrayList<>();
         Map<Workload, List<List<Cell>>> cells = new LinkedHashMap<>();
         for (Workload w : Workload.values()) {
-            double[][] starts = w.starts(BundleBenchmark.RAYS);
+            double[][] starts = w.starts(TUNED);
             double[][] truth = w.truth(starts);
             List<List<Cell>> levels = new ArrayList<>();
             for (int level = 1; level <= 3; level++) {

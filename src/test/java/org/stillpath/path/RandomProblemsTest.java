@@ -22,7 +22,7 @@ import org.stillpath.ray.Train;
  * images is odd (Burke, Astrophys. J. 244 (1981) L1), and Σ (−1)^index = 1, since the map from directions to a far plane has
  * degree 1 where nothing is cut off.
  *
- * <p>{@code -Dstillpath.problems=N} runs N problems instead of the usual few: ten thousand take a quarter of an hour.
+ * <p>{@code -Dstillpath.problems=N} runs N problems instead of the usual few: ten thousand take some minutes.
  */
 class RandomProblemsTest {
     private static final long SEED = 20261201L;
