@@ -170,7 +170,7 @@ final class BlockCompiler {
 
     private static boolean plain(Op op) {
         return switch (op) {
-            case ADD, SUBTRACT, MULTIPLY, NEGATE, RECIPROCAL, RECIPROCAL_OR_ZERO, SQRT, ABS -> true;
+            case ADD, SUBTRACT, MULTIPLY, NEGATE, RECIPROCAL, RECIPROCAL_OR_ZERO, SQRT, ABS, MIN, MAX -> true;
             default -> false;
         };
     }

@@ -131,7 +131,7 @@ public final class IndexBlocks {
         int n = fromOne ? g.add(g.one, f) : f;
         int excess = fromOne ? f : g.lessOne(f);
         int value = g.times(excess, g.add(g.constant(2), excess));
-        int below = g.subtract(n, g.abs(n));
+        int below = g.call(Op.MIN, n, g.zero);
         List<Integer> outputs = new ArrayList<>(List.of(g.add(value, g.multiply(g.constant(PENALTY), below))));
         d.gradient().forEach(node -> outputs.add(g.times(n, node)));
         for (int a = 0, k = 0; a < 3 && !d.hessian().isEmpty(); a++) {

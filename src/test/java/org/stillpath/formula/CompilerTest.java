@@ -27,7 +27,7 @@ class CompilerTest {
     private static final Samples[] NO_CHARTS = {};
 
     /** A ground with a hill: all of the ten components differ. */
-    private static final Chart HILL = (coordinate, x, y, z, count, order, out) -> {
+    static final Chart HILL = (coordinate, x, y, z, count, order, out) -> {
         for (int i = 0; i < count; i++) {
             double k = 1 + coordinate.slot();
             out.value[i] = z[i] * k + x[i] * y[i] + x[i] * x[i] * z[i];
@@ -51,12 +51,12 @@ class CompilerTest {
         return Formula.parse(text, Names.of(Names.SIGHT, with));
     }
 
-    private static double[] values(Formula f, double alpha, double beta, double l) {
+    static double[] values(Formula f, double alpha, double beta, double l) {
         Map<String, Double> values = Map.of("alpha", alpha, "beta", beta, "L", l);
         return f.arguments().stream().mapToDouble(values::get).toArray();
     }
 
-    private static Samples[] charts(Program program, double[] x, double[] y, double[] z, Order order) {
+    static Samples[] charts(Program program, double[] x, double[] y, double[] z, Order order) {
         Samples[] charts = new Samples[3];
         for (Coordinate c : program.charts()) {
             charts[c.slot()] = new Samples(x.length);
@@ -121,7 +121,7 @@ class CompilerTest {
     }
 
     /** A random formula; those of which a constant part is undefined are no formulas. */
-    private static Formula parsable(Random random) {
+    static Formula parsable(Random random) {
         while (true) {
             try {
                 return parse(text(random, 1 + random.nextInt(5)));
