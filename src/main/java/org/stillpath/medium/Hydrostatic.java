@@ -269,22 +269,13 @@ final class Hydrostatic implements Pressure {
     @Override
     public List<Level> limits() {
         Level height = new ChartLevel(Coordinate.HEIGHT, chart);
-        return List.of(
-                new PressureEdge(height, table, false), new PressureEdge(height, table, true));
+        return List.of(new PressureEdge(height, table, false), new PressureEdge(height, table, true));
     }
 
     @Override
     public Pressure piece(int[] cells, ScalarField t, ScalarField w, double from, double to) {
         return new Hydrostatic(
-                table,
-                given,
-                full,
-                humidity.isNone() ? humidity : humidity.with(w),
-                chart,
-                t,
-                from,
-                to,
-                work);
+                table, given, full, humidity.isNone() ? humidity : humidity.with(w), chart, t, from, to, work);
     }
 
     @Override

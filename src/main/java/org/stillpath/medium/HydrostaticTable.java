@@ -172,7 +172,8 @@ final class HydrostaticTable {
 
     /** Whether nothing follows from what was given: its first piece up and down is not known. */
     boolean isEmpty() {
-        return until(origin + BLOCK).bases().length == 0 && until(origin - BLOCK).bases().length == 0;
+        return until(origin + BLOCK).bases().length == 0
+                && until(origin - BLOCK).bases().length == 0;
     }
 
     /** Number of pieces of all that it reaches. */

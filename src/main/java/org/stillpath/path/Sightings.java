@@ -54,6 +54,9 @@ public final class Sightings {
     /** Steps in which the least height of a table comes over ground that is not level, metres. */
     private static final double STEEP = 16;
 
+    /** Horizons that are kept. */
+    private static final int MOST_HORIZONS = 10_000;
+
     private static final int POLISHES = 12;
     /** Step of the launch elevation, as a part of it, below which it is settled. */
     private static final double SETTLED = 1e-9;
@@ -71,6 +74,9 @@ public final class Sightings {
     private final double[] knots;
     /** The tables of the search, by the heights that they cover; made when first asked for. */
     private final Map<Range, Optional<LayerTable>> tables = new ConcurrentHashMap<>();
+
+    /** Horizons by the height of the eye: a batch looks from the same few heights, and each costs rays to the ground. */
+    private final Map<Double, Optional<Horizon>> horizons = new ConcurrentHashMap<>();
 
     private Sightings(IndexField field, EarthChart chart, double accuracy) {
         this.field = field;
@@ -374,9 +380,17 @@ public final class Sightings {
      * @return empty where every ray clears the ground, or none is known to
      */
     public Optional<Horizon> horizon(double from) {
-        if (!chart.ground().isLevel() || !field.ofHeightAlone()) {
-            return horizonByTracing(from);
+        Optional<Horizon> known = horizons.get(from);
+        if (known == null) {
+            known = chart.ground().isLevel() && field.ofHeightAlone() ? levelHorizon(from) : horizonByTracing(from);
+            if (horizons.size() < MOST_HORIZONS) {
+                horizons.put(from, known);
+            }
         }
+        return known;
+    }
+
+    private Optional<Horizon> levelHorizon(double from) {
         double ground = chart.ground().height(0);
         if (from <= ground) {
             return Optional.empty();
