@@ -178,7 +178,7 @@ final class AirReader {
             return Optional.empty();
         }
         Hydrostatic solved = Hydrostatic.of(temperature.get(), humidity.get(), value, height, full);
-        if (solved.table().size() == 0) {
+        if (solved.table().isEmpty()) {
             h.fault(
                     "at-height",
                     "the temperature at height " + Told.length(height) + " is "

@@ -30,6 +30,11 @@ record Humidity(Kind kind, ScalarField quantity, Saturation saturation) {
         return kind != Kind.DEW_POINT && quantity instanceof Constant c && c.value() == 0;
     }
 
+    /** Whether the vapour pressure depends on the pressure of the air. */
+    boolean ofPressure() {
+        return kind != Kind.VAPOUR_PRESSURE && saturation.ofPressure();
+    }
+
     /** The same with another quantity. */
     Humidity with(ScalarField other) {
         return new Humidity(kind, other, saturation);

@@ -107,16 +107,20 @@ final class Hydrostatic implements Pressure {
                 moist,
                 Chart.FLAT,
                 t,
-                table.low(),
-                table.high(),
+                Double.NEGATIVE_INFINITY,
+                Double.POSITIVE_INFINITY,
                 PerThread.of(Work::new));
     }
 
     private static HydrostaticTable.Rate rate(ScalarField t, Humidity moist, boolean full) {
         return new HydrostaticTable.Rate() {
+            private final double[] saturated = new double[Saturation.JET];
+            private final double[] jet = new double[AirLaw.JET];
             private Samples ts = new Samples(1);
             private Samples ws = new Samples(1);
             private double[] zero = new double[1];
+            private double[] pull = new double[1];
+            private double[] vapour = new double[1];
 
             @Override
             public boolean coupled() {
@@ -124,22 +128,37 @@ final class Hydrostatic implements Pressure {
             }
 
             @Override
-            public void at(double[] heights, double[] pressures, double[] rates) {
+            public void over(double[] heights) {
                 int n = heights.length;
                 if (zero.length < n) {
                     ts = new Samples(n);
                     ws = new Samples(n);
                     zero = new double[n];
+                    pull = new double[n];
+                    vapour = new double[n];
                 }
                 t.sample(zero, zero, heights, n, Double.NaN, Order.VALUE, ts);
-                moist.quantity().sample(zero, zero, heights, n, Double.NaN, Order.VALUE, ws);
-                for (int i = 0; i < n; i++) {
-                    double kelvin = ts.value[i];
-                    double e = moist.isNone() ? 0 : moist.vapourPressure(kelvin, pressures[i], ws.value[i]);
-                    rates[i] = HydrostaticTable.possible(kelvin)
-                            ? -K * gravity(heights[i], full) * (1 - LIGHTER * e / pressures[i]) / kelvin
-                            : Double.NaN;
+                if (coupled()) {
+                    moist.quantity().sample(zero, zero, heights, n, Double.NaN, Order.VALUE, ws);
                 }
+                for (int i = 0; i < n; i++) {
+                    pull[i] = HydrostaticTable.possible(ts.value[i]) ? -K * gravity(heights[i], full) : Double.NaN;
+                    vapour[i] = coupled() && !moist.ofPressure() ? vapour(i, Double.NaN) : 0;
+                }
+            }
+
+            @Override
+            public void at(double[] pressures, double[] rates) {
+                boolean again = moist.ofPressure();
+                for (int i = 0; i < pressures.length; i++) {
+                    double e = again ? vapour(i, pressures[i]) : vapour[i];
+                    rates[i] = pull[i] * (1 - LIGHTER * e / pressures[i]) / ts.value[i];
+                }
+            }
+
+            private double vapour(int i, double pressure) {
+                moist.jet(ts.value[i], pressure, ws.value[i], Order.VALUE, saturated, jet);
+                return jet[AirLaw.N];
             }
         };
     }
@@ -160,7 +179,7 @@ final class Hydrostatic implements Pressure {
         boolean dry = humidity.isNone();
         for (int i = 0; i < count; i++) {
             double h = z[i];
-            double p = h < low ? beyond(low, h, work) : h > high ? beyond(high, h, work) : table.pressure(h);
+            double p = h < low ? beyond(low, h, work) : h > high ? beyond(high, h, work) : pressure(h, work);
             out.value[i] = p;
             if (order == Order.VALUE) {
                 continue;
@@ -192,6 +211,13 @@ final class Hydrostatic implements Pressure {
                 out.hzz[i] = over * (-kSlope * m - k * rise + k * m * over * t.gz[i]);
             }
         }
+    }
+
+    /** The pressure at a height, or past the table's own ends. */
+    private double pressure(double h, Work work) {
+        double p = table.pressure(h);
+        boolean past = Double.isNaN(p) && !Double.isNaN(h) && !table.isEmpty();
+        return past ? beyond(Math.max(table.low(), Math.min(table.high(), h)), h, work) : p;
     }
 
     /**
@@ -243,29 +269,19 @@ final class Hydrostatic implements Pressure {
     @Override
     public List<Level> limits() {
         Level height = new ChartLevel(Coordinate.HEIGHT, chart);
-        return List.of(
-                new EdgeLevel(height, table.low(), false, "the pressure"),
-                new EdgeLevel(height, table.high(), true, "the pressure"));
+        return List.of(new PressureEdge(height, table, false), new PressureEdge(height, table, true));
     }
 
     @Override
     public Pressure piece(int[] cells, ScalarField t, ScalarField w, double from, double to) {
         return new Hydrostatic(
-                table,
-                given,
-                full,
-                humidity.isNone() ? humidity : humidity.with(w),
-                chart,
-                t,
-                Math.max(from, table.low()),
-                Math.min(to, table.high()),
-                work);
+                table, given, full, humidity.isNone() ? humidity : humidity.with(w), chart, t, from, to, work);
     }
 
     @Override
     public String explain(double x, double y, double z) {
         double h = new ChartLevel(Coordinate.HEIGHT, chart).value(x, y, z, new double[3]);
-        if (h >= table.low() && h <= table.high()) {
+        if (!Double.isNaN(table.pressure(h))) {
             return "";
         }
         return "height = " + Told.length(h) + " is outside the range of the hydrostatic pressure, which runs from "

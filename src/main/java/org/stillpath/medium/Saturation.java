@@ -32,6 +32,11 @@ public enum Saturation {
     /** Recommendation ITU-R P.453-14, equations 9 and 10, with the enhancement factor of moist air; −40 °C to 50 °C. */
     P453 {
         @Override
+        boolean ofPressure() {
+            return true;
+        }
+
+        @Override
         void jet(double temperature, double pressure, double[] out) {
             double t = temperature - AirLaw.ZERO_CELSIUS;
             double d = t + 257.14;
@@ -76,6 +81,11 @@ public enum Saturation {
      * @param out {@link #JET} numbers
      */
     abstract void jet(double temperature, double pressure, double[] out);
+
+    /** Whether it depends on the pressure of the air. */
+    boolean ofPressure() {
+        return false;
+    }
 
     /**
      * The saturation pressure in pascal.

@@ -32,6 +32,9 @@ public final class Bouguer {
     private static final double ROOT = Math.sqrt(0.6);
 
     private static final int MOST_TURNS = 200;
+    /** Heights sampled a node: three of the climb to it, and itself. */
+    private static final int STRIDE = 4;
+
     private static final double[] NODES;
     private static final double[] WEIGHTS;
 
@@ -43,6 +46,9 @@ public final class Bouguer {
 
     private final HeightProfile air;
     private final double[] knots;
+    private final double[] heights = new double[STRIDE * POINTS];
+    private final double[] nu = new double[STRIDE * POINTS];
+    private final double[] rise = new double[STRIDE * POINTS];
 
     private Bouguer(HeightProfile air, double[] knots) {
         this.air = air;
@@ -228,15 +234,23 @@ public final class Bouguer {
                 for (int i = 0; i < POINTS; i++) {
                     double u = 0.5 * (u0 + u1) + 0.5 * (u1 - u0) * NODES[i];
                     double h = squared ? turn + sign * u * u : end + sign * u;
+                    ask(i, i == 0 ? reached : heights[STRIDE * i - STRIDE + 3], h);
+                }
+                air.refractivityAndRise(heights, STRIDE * POINTS, nu, rise);
+                for (int i = 0; i < POINTS; i++) {
+                    double u = 0.5 * (u0 + u1) + 0.5 * (u1 - u0) * NODES[i];
+                    double h = heights[STRIDE * i + 3];
                     double w = 0.5 * (u1 - u0) * WEIGHTS[i] * (squared ? 2 * u : 1);
-                    over += climb(reached, h) / unit;
+                    over += climb(i, reached, h) / unit;
                     reached = h;
-                    add(from, bend, h, air.refractivity(h), nuFrom, over, w, sums);
+                    add(from, bend, h, nu[STRIDE * i + 3], nuFrom, over, w, sums);
                 }
             }
             if (c < cuts.length) {
                 double knot = squared ? turn + sign * after * after : end + sign * after;
-                over += climb(reached, knot) / unit;
+                ask(0, reached, knot);
+                air.refractivityAndRise(heights, STRIDE, nu, rise);
+                over += climb(0, reached, knot) / unit;
                 reached = knot;
             }
             before = after;
@@ -244,13 +258,21 @@ public final class Bouguer {
         return sums;
     }
 
-    /** n·r at one height less that at another close by. */
-    private double climb(double a, double b) {
+    /** Puts the heights that a climb needs among those to be sampled, and its end behind them. */
+    private void ask(int i, double a, double b) {
         double half = 0.5 * (b - a);
         double middle = 0.5 * (a + b);
-        return half
-                * (5 / 9.0 * (air.rise(middle - ROOT * half) + air.rise(middle + ROOT * half))
-                        + 8 / 9.0 * air.rise(middle));
+        int at = STRIDE * i;
+        heights[at] = middle - ROOT * half;
+        heights[at + 1] = middle;
+        heights[at + 2] = middle + ROOT * half;
+        heights[at + 3] = b;
+    }
+
+    /** n·r at one height less that at another close by, from the samples that {@link #ask} asked for. */
+    private double climb(int i, double a, double b) {
+        int at = STRIDE * i;
+        return 0.5 * (b - a) * (5 / 9.0 * (rise[at] + rise[at + 2]) + 8 / 9.0 * rise[at + 1]);
     }
 
     private void add(

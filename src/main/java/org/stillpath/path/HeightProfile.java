@@ -18,10 +18,11 @@ final class HeightProfile {
     private final double distance;
     private final double sin;
     private final double cos;
-    private final double[] x = new double[1];
-    private final double[] y = new double[1];
-    private final double[] z = new double[1];
-    private final Samples s = new Samples(1);
+    private final double half;
+    private double[] x = new double[1];
+    private double[] y = new double[1];
+    private double[] z = new double[1];
+    private Samples s = new Samples(1);
 
     /**
      * The profile above one place of the datum.
@@ -37,6 +38,7 @@ final class HeightProfile {
         double angle = distance / radius;
         this.sin = Math.sin(angle);
         this.cos = Math.cos(angle);
+        this.half = Math.sin(0.5 * angle);
     }
 
     /** Heights at which a derivative of a field jumps, ascending. */
@@ -92,17 +94,33 @@ final class HeightProfile {
 
     /** Samples at a height; false where the field is undefined. */
     private boolean at(double height, Order order) {
-        if (Double.isInfinite(radius)) {
-            x[0] = distance;
-            z[0] = height;
-        } else {
-            x[0] = (radius + height) * sin;
-            double half = Math.sin(0.5 * distance / radius);
-            z[0] = height * cos - 2 * radius * half * half;
-        }
-        y[0] = 0;
+        put(0, height);
         field.sample(x, y, z, 1, order, s);
         return !Double.isNaN(s.value[0]);
+    }
+
+    private void put(int i, double height) {
+        if (Double.isInfinite(radius)) {
+            x[i] = distance;
+            z[i] = height;
+        } else {
+            x[i] = (radius + height) * sin;
+            z[i] = height * cos - 2 * radius * half * half;
+        }
+    }
+
+    /** Samples at many heights at once, which costs a field made of several quantities half as much a height. */
+    private void at(double[] heights, int count, Order order) {
+        if (x.length < count) {
+            x = new double[count];
+            y = new double[count];
+            z = new double[count];
+            s = new Samples(count);
+        }
+        for (int i = 0; i < count; i++) {
+            put(i, heights[i]);
+        }
+        field.sample(x, y, z, count, order, s);
     }
 
     /** Refractivity n − 1 at a height, metres; NaN where it is undefined. */
@@ -122,12 +140,36 @@ final class HeightProfile {
 
     /** n − 1 and |∇n| at a height, 1/m, by one sample of the field. */
     double[] refractivityAndSteepness(double height) {
-        if (!at(height, Order.GRADIENT)) {
-            return new double[] {Double.NaN, Double.NaN};
+        double[] n = new double[1];
+        double[] g = new double[1];
+        refractivityAndSteepness(new double[] {height}, n, g);
+        return new double[] {n[0], g[0]};
+    }
+
+    /** The same at many heights. */
+    void refractivityAndSteepness(double[] heights, double[] refractivity, double[] steepness) {
+        at(heights, heights.length, Order.GRADIENT);
+        for (int i = 0; i < heights.length; i++) {
+            double n = Math.sqrt(1 + s.value[i]);
+            double g = Math.sqrt(s.gx[i] * s.gx[i] + s.gy[i] * s.gy[i] + s.gz[i] * s.gz[i]);
+            refractivity[i] = s.value[i] / (1 + n);
+            steepness[i] = Double.isNaN(n) ? Double.NaN : g / n;
         }
-        double n = Math.sqrt(1 + s.value[0]);
-        double g = Math.sqrt(s.gx[0] * s.gx[0] + s.gy[0] * s.gy[0] + s.gz[0] * s.gz[0]);
-        return new double[] {s.value[0] / (1 + n), g / n};
+    }
+
+    /** Refractivity and d(n·r)/dh at many heights, as {@link #refractivity} and {@link #rise} give them. */
+    void refractivityAndRise(double[] heights, int count, double[] refractivity, double[] rise) {
+        at(heights, count, Order.GRADIENT);
+        for (int i = 0; i < count; i++) {
+            double n = Math.sqrt(1 + s.value[i]);
+            refractivity[i] = s.value[i] / (1 + n);
+            rise[i] = Double.isNaN(n) ? Double.NaN : rise(i, heights[i], n);
+        }
+    }
+
+    private double rise(int i, double height, double n) {
+        double g = (s.gx[i] * sin + s.gz[i] * cos) / n;
+        return Double.isInfinite(radius) ? g : n + (radius + height) * g;
     }
 
     /**
@@ -144,30 +186,26 @@ final class HeightProfile {
         return (turn + (here - there)) / (1 + there);
     }
 
-    /** dn/dh over n and how it changes: along a ray, d(elevation)/d(distance on the datum) = (1 + r n'/n)/R, and its derivative. */
-    double[] turn(double height) {
-        if (!at(height, Order.HESSIAN)) {
-            return new double[] {Double.NaN, Double.NaN};
+    /** At many heights, dn/dh over n and how it changes: along a ray, d(elevation)/d(distance on the datum) = (1 + r n'/n)/R, and its derivative. */
+    void turns(double[] heights, int count, double[] turn, double[] change) {
+        at(heights, count, Order.HESSIAN);
+        for (int i = 0; i < count; i++) {
+            double n2 = 1 + s.value[i];
+            double f = s.gx[i] * sin + s.gz[i] * cos;
+            // ½∇∇n² along the radius is n n'' + n'²
+            double h = s.hxx[i] * sin * sin + 2 * s.hxz[i] * sin * cos + s.hzz[i] * cos * cos;
+            double g = f / n2;
+            double g1 = h / n2 - 2 * g * g;
+            boolean none = Double.isNaN(n2);
+            boolean flat = Double.isInfinite(radius);
+            turn[i] = none ? Double.NaN : flat ? g : (1 + (radius + heights[i]) * g) / radius;
+            change[i] = none ? Double.NaN : flat ? g1 : (g + (radius + heights[i]) * g1) / radius;
         }
-        double n2 = 1 + s.value[0];
-        double f = s.gx[0] * sin + s.gz[0] * cos;
-        // ½∇∇n² along the radius is n n'' + n'²
-        double h = s.hxx[0] * sin * sin + 2 * s.hxz[0] * sin * cos + s.hzz[0] * cos * cos;
-        double g = f / n2;
-        double g1 = h / n2 - 2 * g * g;
-        return Double.isInfinite(radius)
-                ? new double[] {g, g1}
-                : new double[] {(1 + (radius + height) * g) / radius, (g + (radius + height) * g1) / radius};
     }
 
     /** d(n·r)/dh, n + r dn/dh: below 0 where a level ray bends more than the earth. Over a flat earth dn/dh, 1/m. */
     double rise(double height) {
-        if (!at(height, Order.GRADIENT)) {
-            return Double.NaN;
-        }
-        double n = Math.sqrt(1 + s.value[0]);
-        double g = (s.gx[0] * sin + s.gz[0] * cos) / n;
-        return Double.isInfinite(radius) ? g : n + (radius + height) * g;
+        return at(height, Order.GRADIENT) ? rise(0, height, Math.sqrt(1 + s.value[0])) : Double.NaN;
     }
 
     /**

@@ -1,9 +1,10 @@
 package org.stillpath.path;
 
 import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.Comparator;
 import java.util.List;
 import java.util.Optional;
-import java.util.TreeSet;
 import org.stillpath.medium.IndexField;
 import org.stillpath.medium.Level;
 
@@ -19,6 +20,8 @@ final class LayerTable {
     private static final int MOST = 60_000;
     private static final int DECADE = 24;
     private static final int EVEN = 200;
+    /** Heights sampled at once. */
+    private static final int BLOCK = 64;
 
     private final double radius;
     private final double[] at;
@@ -49,60 +52,63 @@ final class LayerTable {
                 return Optional.empty();
             }
         }
-        TreeSet<Double> nodes = new TreeSet<>();
-        double span = high - low;
-        for (int i = 0; i <= EVEN; i++) {
-            nodes.add(low + span * i / EVEN);
-        }
-        int many = (int) Math.ceil(DECADE * Math.log10(span / 1e-3));
-        for (int i = 0; i < many; i++) {
-            nodes.add(low + 1e-3 * Math.pow(10, (double) i / DECADE));
-        }
-        for (double k : knots) {
-            double beside = 1e-9 * (1 + Math.abs(k));
-            if (k - beside > low && k + beside < high) {
-                nodes.add(k - beside);
-                nodes.add(k + beside);
-            }
-        }
+        double[] first = first(knots, low, high);
         Builder b = new Builder(field, radius);
-        double[] first = nodes.stream().mapToDouble(Double::doubleValue).toArray();
-        double[] before = {Double.NaN, Double.NaN, Double.NaN};
-        for (double h : first) {
-            double[] here = b.node(h);
-            if (Double.isNaN(here[1])) {
-                if (!b.out.isEmpty()) {
-                    break;
-                }
-                continue;
-            }
-            if (!b.out.isEmpty()) {
-                b.between(before, here, 0);
-            }
-            b.out.add(here);
-            before = here;
+        List<double[]> nodes = b.nodes(first);
+        int from = 0;
+        while (from < nodes.size() && Double.isNaN(nodes.get(from)[1])) {
+            from++;
         }
-        int n = b.out.size();
-        if (n < 2) {
+        int until = from;
+        while (until < nodes.size() && !Double.isNaN(nodes.get(until)[1])) {
+            until++;
+        }
+        if (until - from < 2) {
             return Optional.empty();
         }
+        List<double[]> all = b.refined(nodes.subList(from, until));
+        int n = all.size();
         double[] at = new double[n];
         double[] g = new double[n];
         double[] s = new double[n];
         for (int i = 0; i < n; i++) {
-            at[i] = b.out.get(i)[0];
-            g[i] = b.out.get(i)[1];
-            s[i] = b.out.get(i)[2];
+            at[i] = all.get(i)[0];
+            g[i] = all.get(i)[1];
+            s[i] = all.get(i)[2];
         }
         return Optional.of(new LayerTable(radius, at, g, s));
     }
 
+    /** The heights that are looked at first, ascending: evenly, crowded above the least, and beside the knots. */
+    private static double[] first(double[] knots, double low, double high) {
+        double span = high - low;
+        int many = (int) Math.ceil(DECADE * Math.log10(span / 1e-3));
+        double[] list = new double[EVEN + 1 + many + 2 * knots.length];
+        int n = 0;
+        for (int i = 0; i <= EVEN; i++) {
+            list[n++] = low + span * i / EVEN;
+        }
+        for (int i = 0; i < many; i++) {
+            list[n++] = low + 1e-3 * Math.pow(10, (double) i / DECADE);
+        }
+        for (double k : knots) {
+            double beside = 1e-9 * (1 + Math.abs(k));
+            if (k - beside > low && k + beside < high) {
+                list[n++] = k - beside;
+                list[n++] = k + beside;
+            }
+        }
+        return Arrays.stream(list, 0, n).sorted().distinct().toArray();
+    }
+
+    /** Mutable, for one table. */
     private static final class Builder {
         private final IndexField field;
         private final HeightProfile air;
         private final double radius;
         private final double[] gradient = new double[3];
-        private final List<double[]> out = new ArrayList<>();
+        private final double[] turn = new double[BLOCK];
+        private final double[] change = new double[BLOCK];
 
         Builder(IndexField field, double radius) {
             this.field = field;
@@ -110,30 +116,67 @@ final class LayerTable {
             this.air = new HeightProfile(field, radius, 0);
         }
 
-        /** Height, G and dG/dh; NaN outside the field's region. */
-        double[] node(double h) {
-            for (Level l : field.limits()) {
-                if (l.value(0, 0, h, gradient) < 0) {
-                    return new double[] {h, Double.NaN, Double.NaN};
+        /** Height, G and dG/dh at heights; NaN outside the field's region. */
+        List<double[]> nodes(double[] heights) {
+            List<double[]> list = new ArrayList<>(heights.length);
+            for (int from = 0; from < heights.length; from += BLOCK) {
+                double[] block = Arrays.copyOfRange(heights, from, Math.min(heights.length, from + BLOCK));
+                air.turns(block, block.length, turn, change);
+                for (int i = 0; i < block.length; i++) {
+                    boolean inside = inside(block[i]);
+                    list.add(new double[] {block[i], inside ? turn[i] : Double.NaN, inside ? change[i] : Double.NaN});
                 }
             }
-            double[] turn = air.turn(h);
-            return new double[] {h, turn[0], turn[1]};
+            return list;
         }
 
-        void between(double[] a, double[] b, int depth) {
+        private boolean inside(double h) {
+            for (Level l : field.limits()) {
+                if (l.value(0, 0, h, gradient) < 0) {
+                    return false;
+                }
+            }
+            return true;
+        }
+
+        /** The nodes with more between them, ascending: the middles of one depth are sampled together. */
+        List<double[]> refined(List<double[]> nodes) {
+            List<double[]> all = new ArrayList<>(nodes);
+            List<double[]> pairs = new ArrayList<>();
+            for (int i = 1; i < nodes.size(); i++) {
+                pairs.add(nodes.get(i - 1));
+                pairs.add(nodes.get(i));
+            }
+            for (int depth = 0; depth < DEPTH && !pairs.isEmpty() && all.size() <= MOST; depth++) {
+                double[] middles = new double[pairs.size() / 2];
+                for (int i = 0; i < middles.length; i++) {
+                    double low = pairs.get(2 * i)[0];
+                    middles[i] = low + 0.5 * (pairs.get(2 * i + 1)[0] - low);
+                }
+                List<double[]> found = nodes(middles);
+                List<double[]> next = new ArrayList<>();
+                for (int i = 0; i < middles.length; i++) {
+                    double[] a = pairs.get(2 * i);
+                    double[] m = found.get(i);
+                    double[] b = pairs.get(2 * i + 1);
+                    if (!Double.isNaN(m[1]) && !isPredicted(a, m, b)) {
+                        all.add(m);
+                        next.addAll(List.of(a, m, m, b));
+                    }
+                }
+                pairs = next;
+            }
+            all.sort(Comparator.comparingDouble(n -> n[0]));
+            return all;
+        }
+
+        /** Whether the cubic between two nodes tells the middle. */
+        private boolean isPredicted(double[] a, double[] m, double[] b) {
             double w = b[0] - a[0];
-            double[] m = node(a[0] + 0.5 * w);
             double guess = 0.5 * (a[1] + b[1]) + 0.125 * w * (a[2] - b[2]);
             double unit = Double.isInfinite(radius) ? 1e-9 : 0.01 / radius;
-            boolean good = Math.abs(m[1] - guess)
+            return Math.abs(m[1] - guess)
                     <= PREDICTED * (unit + Math.abs(a[1]) + Math.abs(b[1]) + w * (Math.abs(a[2]) + Math.abs(b[2])));
-            if (good || Double.isNaN(m[1]) || depth >= DEPTH || out.size() > MOST) {
-                return;
-            }
-            between(a, m, depth + 1);
-            out.add(m);
-            between(m, b, depth + 1);
         }
     }
 

@@ -51,7 +51,18 @@ public final class Sightings {
     /** Least height that a table covers, metres. */
     private static final double STEP = 128;
 
+    /** Steps in which the least height of a table comes over ground that is not level, metres. */
+    private static final double STEEP = 16;
+
+    /** Horizons that are kept. */
+    private static final int MOST_HORIZONS = 10_000;
+
     private static final int POLISHES = 12;
+    /** Step of the launch elevation, as a part of it, below which it is settled. */
+    private static final double SETTLED = 1e-9;
+    /** How many times as large a step may be for the next to be settled by Newton's method. */
+    private static final double NEARLY = 1e3;
+
     private static final Vector PLANE = new Vector(0, -1, 0);
     /** Of the slope of a straight line: below it the target is on a caustic. */
     private static final double CAUSTIC = 1e-6;
@@ -63,6 +74,9 @@ public final class Sightings {
     private final double[] knots;
     /** The tables of the search, by the heights that they cover; made when first asked for. */
     private final Map<Range, Optional<LayerTable>> tables = new ConcurrentHashMap<>();
+
+    /** Horizons by the height of the eye: a batch looks from the same few heights, and each costs rays to the ground. */
+    private final Map<Double, Optional<Horizon>> horizons = new ConcurrentHashMap<>();
 
     private Sightings(IndexField field, EarthChart chart, double accuracy) {
         this.field = field;
@@ -215,7 +229,8 @@ public final class Sightings {
         if (!field.ofHeightAlone() || field.uniform()) {
             return Optional.empty();
         }
-        double from = STEP * Math.floor((low - 1) / STEP);
+        double step = chart.ground().isLevel() ? 1 : STEEP;
+        double from = step * Math.floor((low - 1) / step);
         double until = from + STEP * Math.scalb(1.0, Math.max(0, Math.getExponent((high - from) / STEP) + 1));
         return tables.computeIfAbsent(
                 new Range(from, until), r -> LayerTable.of(field, chart.radius(), knots, r.low, r.high));
@@ -365,9 +380,17 @@ public final class Sightings {
      * @return empty where every ray clears the ground, or none is known to
      */
     public Optional<Horizon> horizon(double from) {
-        if (!chart.ground().isLevel() || !field.ofHeightAlone()) {
-            return horizonByTracing(from);
+        Optional<Horizon> known = horizons.get(from);
+        if (known == null) {
+            known = chart.ground().isLevel() && field.ofHeightAlone() ? levelHorizon(from) : horizonByTracing(from);
+            if (horizons.size() < MOST_HORIZONS) {
+                horizons.put(from, known);
+            }
         }
+        return known;
+    }
+
+    private Optional<Horizon> levelHorizon(double from) {
         double ground = chart.ground().height(0);
         if (from <= ground) {
             return Optional.empty();
@@ -396,9 +419,17 @@ public final class Sightings {
     private static Lowest lowestLift(HeightProfile air, double from, double ground) {
         Lowest best = new Lowest(from, 0);
         double span = from - ground;
+        double[] heights = new double[42];
+        for (int i = 0; i <= 39; i++) {
+            heights[i] = ground + span * Math.pow(10, -5.0 * i / 39);
+        }
+        heights[40] = ground;
+        heights[41] = from;
+        double[] nu = new double[42];
+        air.refractivityAndSteepness(heights, nu, new double[42]);
         for (int i = 0; i <= 40; i++) {
-            double h = i == 40 ? ground : ground + span * Math.pow(10, -5.0 * i / 39);
-            double l = air.lift(h, from);
+            double h = heights[i];
+            double l = air.lift(h, nu[i], from, nu[41]);
             if (l < best.lift) {
                 best = new Lowest(h, l);
             }
@@ -706,10 +737,12 @@ public final class Sightings {
                 double foot = layered ? bottom : Math.min(h1, chart.ground().height(x));
                 double[] heights = heights(foot, h1, h2, top);
                 double[] lifts = new double[heights.length];
+                double[] nu = new double[heights.length];
+                double[] steepness = new double[heights.length];
+                air.refractivityAndSteepness(heights, nu, steepness);
                 double nu1 = air.refractivity(h1);
                 for (int i = 0; i < heights.length; i++) {
-                    double[] here = air.refractivityAndSteepness(heights[i]);
-                    double g = here[1];
+                    double g = steepness[i];
                     if (Double.isNaN(g)) {
                         lifts[i] = Double.NaN;
                         continue;
@@ -718,7 +751,7 @@ public final class Sightings {
                     if (heights[i] >= h1) {
                         mostUp = Math.max(mostUp, g);
                     }
-                    lifts[i] = air.lift(heights[i], here[0], h1, nu1);
+                    lifts[i] = air.lift(heights[i], nu[i], h1, nu1);
                 }
                 for (double h : new double[] {h1, 0.5 * (h1 + h2)}) {
                     // over rising ground the eye's height may lie under it farther on, where there is no air
@@ -926,6 +959,8 @@ public final class Sightings {
             double tolerance = Math.max(1e-15, 0.1 * accuracy);
             double slope = Double.NaN;
             double last = Double.POSITIVE_INFINITY;
+            Tracer full = tracer(new Ending.AtVertical(chart, chord.distance()), true, true);
+            Optional<Traced> confirmed = Optional.empty();
             for (int i = 0; i < POLISHES && !root.touching(); i++) {
                 Traced t = quick.glance(start(chord.fromHeight(), e), tolerance);
                 shots++;
@@ -936,14 +971,26 @@ public final class Sightings {
                 slope = slopes(t)[0];
                 double step = -miss / slope;
                 e += step;
-                if (Math.abs(step) <= 1e-9 * Math.max(Math.abs(e), 1e-6) || Math.abs(miss) > 2 * last) {
+                double settled = SETTLED * Math.max(Math.abs(e), 1e-6);
+                if (Math.abs(step) <= settled || Math.abs(miss) > 2 * last) {
                     break;
+                }
+                if (Math.abs(step) <= NEARLY * settled) {
+                    // the next step is this one squared: the last ray itself may show that it is settled
+                    Traced t2 = full.trace(start(chord.fromHeight(), e));
+                    shots += 2;
+                    boolean met = t2.status() == Status.ARRIVED
+                            && Math.abs((place(t2.state())[1] - chord.toHeight()) / slopes(t2)[0]) <= settled;
+                    if (met) {
+                        confirmed = Optional.of(t2);
+                        break;
+                    }
                 }
                 last = Math.abs(miss);
             }
-            Tracer full = tracer(new Ending.AtVertical(chart, chord.distance()), true, true);
-            Traced t = full.trace(start(chord.fromHeight(), e));
-            shots += 2;
+            shots += confirmed.isPresent() ? 0 : 2;
+            double launch = e;
+            Traced t = confirmed.orElseGet(() -> full.trace(start(chord.fromHeight(), launch)));
             if (t.status() != Status.ARRIVED) {
                 return Optional.empty();
             }
