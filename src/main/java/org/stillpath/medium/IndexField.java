@@ -57,6 +57,14 @@ public interface IndexField {
     }
 
     /**
+     * Whether value and first two derivatives run through all seams, so that a step that ends on a seam may sample this field
+     * itself in place of its {@link #piece}: rays in different cells can then share a bundle.
+     */
+    default boolean runsThroughSeams() {
+        return seams().isEmpty();
+    }
+
+    /**
      * The same field made ready for bundles of rays, which sample many points at once: it may be quicker for those, dear to make,
      * and differ in the last digit. This field itself where nothing is gained. What a point gives never depends on the points
      * beside it.

@@ -147,6 +147,11 @@ final class PlacedIndex implements IndexField {
     }
 
     @Override
+    public boolean runsThroughSeams() {
+        return seams.isEmpty() || scalar.runsThroughSeams();
+    }
+
+    @Override
     public IndexField piece(int[] cells) {
         if (pieces.length == 0) {
             ScalarField piece = scalar.piece(cells);

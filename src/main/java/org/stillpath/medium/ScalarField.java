@@ -89,6 +89,11 @@ public interface ScalarField {
         return this;
     }
 
+    /** Whether value and first two derivatives run through all {@link #seams}. */
+    default boolean runsThroughSeams() {
+        return false;
+    }
+
     /** Says in words why the quantity is undefined at a point of the medium's frame; empty text where it is defined. */
     default String explain(double x, double y, double z, double wavelength) {
         return "";

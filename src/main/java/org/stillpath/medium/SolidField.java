@@ -3,6 +3,7 @@ package org.stillpath.medium;
 import java.util.List;
 import org.stillpath.formula.Chart;
 import org.stillpath.formula.Order;
+import org.stillpath.formula.PerThread;
 import org.stillpath.formula.Samples;
 
 /**
@@ -15,13 +16,13 @@ final class SolidField implements ScalarField {
     /** How far beyond its own limits the temperature may be continued, metres. */
     private final double slack;
 
-    private final ThreadLocal<double[]> jets;
+    private final PerThread<double[]> jets;
 
     SolidField(SolidLaw.Slope slope, ScalarField temperature, double slack) {
-        this(slope, temperature, slack, ThreadLocal.withInitial(() -> new double[3]));
+        this(slope, temperature, slack, PerThread.of(() -> new double[3]));
     }
 
-    private SolidField(SolidLaw.Slope slope, ScalarField temperature, double slack, ThreadLocal<double[]> jets) {
+    private SolidField(SolidLaw.Slope slope, ScalarField temperature, double slack, PerThread<double[]> jets) {
         this.slope = slope;
         this.temperature = temperature;
         this.slack = slack;
@@ -88,6 +89,11 @@ final class SolidField implements ScalarField {
     @Override
     public List<Seam> seams(double wavelength) {
         return temperature.seams(Double.NaN);
+    }
+
+    @Override
+    public boolean runsThroughSeams() {
+        return temperature.runsThroughSeams();
     }
 
     @Override

@@ -27,6 +27,11 @@ final class BatchPropagator {
     /** What is left before a target, as a part of the scene, when the last step onto it is a short series. */
     private static final double NEAR = 1e-9;
 
+    /** The sum of a target's values at both ends of a step over its greatest change, when it surely has no zero between. */
+    private static final double CLEAR = 2.2;
+    /** How little a target's slope may change over a step in which it surely has no turning point. */
+    private static final double EVEN = 0.05;
+
     private static final int LANDING_ROUNDS = 6;
     private static final int MOST_STEPS = 2_000_000;
 
@@ -50,6 +55,11 @@ final class BatchPropagator {
         private final Target[] targets;
         private final double[] bias;
         private final double[] values;
+        /** d/dτ of the targets where the next step starts. */
+        private final double[] slopes;
+        /** The force where it set out: good enough for a parabola. */
+        private final double[] force;
+
         private final double excess;
         private final double length;
         private double tau;
@@ -57,18 +67,24 @@ final class BatchPropagator {
         private int steps;
         /** The target on which the next step is to land; −1 for none. */
         private int landing = -1;
+        /** Whether that is where the ray's parabola meets the target, and no interpolant has looked for others yet. */
+        private boolean guessed;
+        /** Whether a guess went wrong and steps go beyond targets from now on. */
+        private boolean wary;
 
         private int rounds;
         /** The step that is wanted whether or not a target is near. */
         private double wanted;
 
-        Lane(L leg, double[] bias, double[] values) {
+        Lane(L leg, double[] bias, double[] values, double[] force) {
             this.leg = leg;
             this.targets = leg.targets();
             this.excess = leg.state()[State.EXCESS];
             this.length = leg.state()[State.LENGTH];
             this.bias = bias;
             this.values = values;
+            this.slopes = new double[values.length];
+            this.force = force;
         }
     }
 
@@ -174,7 +190,7 @@ final class BatchPropagator {
         for (int t = 0; t < targets.length; t++) {
             values[t] = targets[t].value(y) + bias[t];
         }
-        Lane<L> lane = new Lane<>(leg, bias, values);
+        Lane<L> lane = new Lane<>(leg, bias, values, new double[] {rate[3], rate[4], rate[5]});
         double n = Math.sqrt(square(y[3]) + square(y[4]) + square(y[5]));
         double force = Math.sqrt(square(rate[3]) + square(rate[4]) + square(rate[5]));
         lane.wanted = Math.min(Math.min(stride * LONGEST * scale, opening) / n, n / force);
@@ -193,13 +209,40 @@ final class BatchPropagator {
         gather(lane, i, batch.place(), batch.slope(), batch.excess(), batch.stretch(), lane.tau, now);
         double n = Math.sqrt(square(now[3]) + square(now[4]) + square(now[5]));
         double nearest = lane.wanted;
+        int which = -1;
         for (int t = 0; t < lane.targets.length; t++) {
-            double first = -lane.values[t] / lane.targets[t].rate(now, n);
+            lane.slopes[t] = lane.targets[t].rate(now, n);
+            double first = -lane.values[t] / lane.slopes[t];
             if (first > 0 && BEYOND * first < nearest) {
                 nearest = BEYOND * first;
+                which = t;
             }
         }
         batch.steps()[i] = nearest;
+        if (which >= 0 && !lane.wary && !lane.targets[which].needsForce()) {
+            guess(lane, i, which, nearest / BEYOND, n);
+        }
+    }
+
+    /** Lets the next step end where the ray's parabola meets a target: between the knots of a grid that is mostly enough. */
+    private void guess(Lane<?> lane, int i, int which, double first, double index) {
+        Target target = lane.targets[which];
+        double[] f = lane.force;
+        double half = 0.5 * first * first;
+        for (int c = 0; c < 3; c++) {
+            ahead[c] = now[c] + first * now[3 + c] + half * f[c];
+            ahead[3 + c] = now[3 + c] + first * f[c];
+        }
+        ahead[State.EXCESS] = now[State.EXCESS] + first * index * (index - 1);
+        ahead[State.LENGTH] = now[State.LENGTH] + first * index;
+        double n = Math.sqrt(square(ahead[3]) + square(ahead[4]) + square(ahead[5]));
+        double second = first - (target.value(ahead) + lane.bias[which]) / target.rate(ahead, n);
+        if (second > 0.9 * first && second < 1.1 * first) {
+            batch.steps()[i] = second;
+            lane.landing = which;
+            lane.rounds = 0;
+            lane.guessed = true;
+        }
     }
 
     private void gather(
@@ -230,14 +273,7 @@ final class BatchPropagator {
             landed(lane, i, h);
             return;
         }
-        double n = Math.sqrt(square(ahead[3]) + square(ahead[4]) + square(ahead[5]));
-        boolean clear = true;
-        for (int t = 0; t < lane.targets.length && clear; t++) {
-            double value = lane.targets[t].value(ahead) + lane.bias[t];
-            double reach = 2.2 * lane.targets[t].steepness(ahead, n) * n * h;
-            clear = value > 0 == lane.values[t] > 0 && Math.abs(value) + Math.abs(lane.values[t]) > reach;
-        }
-        if (clear) {
+        if (clear(lane, h)) {
             return;
         }
         gather(lane, i, batch.place(), batch.slope(), batch.excess(), batch.stretch(), lane.tau, now);
@@ -264,10 +300,41 @@ final class BatchPropagator {
         }
         if (which >= 0) {
             lane.landing = which;
+            lane.guessed = false;
             lane.rounds = 0;
             batch.refuse(i);
             batch.steps()[i] = first;
         }
+    }
+
+    /** Whether a step surely met none of the targets but the one it was to land on. */
+    private boolean clear(Lane<?> lane, double h) {
+        double n = Math.sqrt(square(ahead[3]) + square(ahead[4]) + square(ahead[5]));
+        for (int t = 0; t < lane.targets.length; t++) {
+            if (t == lane.landing) {
+                continue;
+            }
+            double value = lane.targets[t].value(ahead) + lane.bias[t];
+            if (value > 0 != lane.values[t] > 0) {
+                return false;
+            }
+            double reach = CLEAR * lane.targets[t].steepness(ahead, n) * n * h;
+            if (!(Math.abs(value) + Math.abs(lane.values[t]) > reach) && !even(lane, t, value, n, h)) {
+                return false;
+            }
+        }
+        return true;
+    }
+
+    /** Whether a target changed so evenly over a step, and so little or so steadily, that it had no zero. */
+    private boolean even(Lane<?> lane, int t, double value, double n, double h) {
+        double before = lane.slopes[t];
+        double after = lane.targets[t].rate(ahead, n);
+        double most = h * Math.max(Math.abs(before), Math.abs(after));
+        double surprise = value - lane.values[t] - 0.5 * h * (before + after);
+        boolean steady = Math.abs(after - before) <= EVEN * Math.abs(before);
+        return Math.abs(surprise) <= EVEN * most
+                && (steady || Math.abs(value) + Math.abs(lane.values[t]) > CLEAR * most);
     }
 
     private boolean endRates(int i, IndexField field) {
@@ -297,6 +364,10 @@ final class BatchPropagator {
         Target target = lane.targets[lane.landing];
         double n = Math.sqrt(square(ahead[3]) + square(ahead[4]) + square(ahead[5]));
         double value = target.value(ahead) + lane.bias[lane.landing];
+        if (lane.guessed && !clear(lane, h)) {
+            wary(lane, i);
+            return;
+        }
         double dt = -value
                 / (target.needsForce()
                         ? target.rate(ahead, n, batch.startForce(0, i), batch.startForce(1, i), batch.startForce(2, i))
@@ -305,11 +376,24 @@ final class BatchPropagator {
             return;
         }
         lane.rounds++;
+        if (lane.guessed && !(Math.abs(dt) <= 0.1 * h)) {
+            wary(lane, i);
+            return;
+        }
         if (lane.rounds > LANDING_ROUNDS || !(Math.abs(dt) <= 0.1 * h)) {
             lane.rounds = LANDING_ROUNDS + 1;
         } else {
             batch.steps()[i] = h + dt;
         }
+        batch.refuse(i);
+    }
+
+    /** Gives a guess up: the step is made again, and beyond what is near. */
+    private void wary(Lane<?> lane, int i) {
+        lane.wary = true;
+        lane.guessed = false;
+        lane.landing = -1;
+        lane.rounds = 0;
         batch.refuse(i);
     }
 

@@ -179,7 +179,7 @@ public final class Tracer {
     /** One run of each ray. */
     private List<Run> runs(List<RayStart> starts, double tolerance, double stride, Map<IndexField, IndexField> ready) {
         List<Run> runs = new ArrayList<>(starts.size());
-        // rays of one scale share a batch engine, and rays in one medium a batch
+        // rays of about one scale share a batch engine, and rays in one medium a batch
         Map<Double, BatchPropagator> engines = new LinkedHashMap<>();
         Map<BatchPropagator, Map<IndexField, Deque<Run>>> waiting = new LinkedHashMap<>();
         Deque<Run> moved = new ArrayDeque<>();
@@ -192,16 +192,18 @@ public final class Tracer {
         }
         while (true) {
             for (Run run = moved.poll(); run != null; run = moved.poll()) {
-                IndexField bundled = ready.get(run.piece);
-                if (bundled == null) {
+                IndexField field = run.shared();
+                if (!ready.containsKey(field)) {
                     run.finishAlone();
                     continue;
                 }
                 int columns = State.columns(run.y);
+                // by the next power of two below, since the rays of a beam all have scales of their own
+                double scale = Math.scalb(1.0, Math.getExponent(run.scale));
                 BatchPropagator engine =
-                        engines.computeIfAbsent(run.scale, s -> new BatchPropagator(columns, tolerance, s, stride));
+                        engines.computeIfAbsent(scale, s -> new BatchPropagator(columns, tolerance, s, stride));
                 Map<IndexField, Deque<Run>> groups = waiting.computeIfAbsent(engine, e -> new HashMap<>());
-                groups.computeIfAbsent(run.piece, f -> new ArrayDeque<>()).add(run);
+                groups.computeIfAbsent(field, f -> new ArrayDeque<>()).add(run);
             }
             if (waiting.isEmpty()) {
                 return runs;
@@ -417,6 +419,11 @@ public final class Tracer {
         public void spent(long samples, double errors) {
             evaluations += samples;
             localErrors += errors;
+        }
+
+        /** What it may share with other rays: where nothing jumps at the seams, the whole field in place of the piece. */
+        private IndexField shared() {
+            return field.runsThroughSeams() ? field : piece;
         }
 
         /** Sets out; whether an equation has to be integrated. */

@@ -10,8 +10,8 @@ import org.stillpath.ray.Tracer;
 import org.stillpath.ray.Train;
 
 /**
- * A beam behind a train: its rays, and what they say of it together. Rays run on all cores; each is computed by itself, so
- * that the digits do not depend on how many there are.
+ * A beam behind a train: its rays, and what they say of it together. Rays go in bundles where there are many, on all cores, twice
+ * each as {@link Tracer#trace(List)} does it; the digits do not depend on how many cores there are.
  */
 final class WindowPass {
     private final List<Traced> rays;
@@ -61,8 +61,7 @@ final class WindowPass {
         Ending ending = train.elements().isEmpty() ? new Ending.AtZ(plane) : new Ending.BehindLastSurface();
         Tracer tracer = new Tracer(train, ending, new Tracer.Settings(accuracy, false, false));
         int count = starts.size() - 1;
-        WindowRays bundle = WindowRays.of(tracer, starts.subList(0, count), accuracy);
-        List<Traced> rays = bundle.rays();
+        List<Traced> rays = tracer.trace(starts.subList(0, count));
         RayStart axis = starts.get(count);
         Traced fine = new Tracer(train, ending, new Tracer.Settings(accuracy, true, false)).trace(axis);
         double loose = Math.min(0.1, 10 * accuracy);
@@ -91,13 +90,27 @@ final class WindowPass {
         }
         return new WindowPass(
                 rays,
-                bundle.errors(),
+                largest(rays),
                 kept,
                 plane,
                 sum.norm() > 0 ? sum.unit() : axis.direction(),
                 m,
                 error,
-                bundle.accurate());
+                rays.stream().allMatch(Traced::accurate));
+    }
+
+    private static Traced.Errors largest(List<Traced> rays) {
+        double[] most = new double[5];
+        for (Traced t : rays) {
+            if (t.status() == Status.ARRIVED) {
+                Traced.Errors e = t.errors();
+                double[] own = {e.position(), e.direction(), e.opticalLength(), e.length(), e.drift()};
+                for (int i = 0; i < most.length; i++) {
+                    most[i] = Math.max(most[i], own[i]);
+                }
+            }
+        }
+        return new Traced.Errors(most[0], most[1], most[2], most[3], most[4]);
     }
 
     /** Whether any weighted ray came through. */

@@ -21,9 +21,11 @@ import org.stillpath.geometry.Frame;
 import org.stillpath.geometry.Quadric;
 import org.stillpath.geometry.Surface;
 import org.stillpath.geometry.Vector;
+import org.stillpath.medium.Beyond;
 import org.stillpath.medium.Declaration;
 import org.stillpath.medium.FieldMedium;
 import org.stillpath.medium.FormulaField;
+import org.stillpath.medium.Grid;
 import org.stillpath.medium.IndexField;
 import org.stillpath.unit.Dimension;
 
@@ -90,6 +92,60 @@ class BundleTest {
                                 new Action.Stop(),
                                 rod),
                         new Element(Surface.cap(12e-3, -3e-3, 0), new Action.Refract(false), air)));
+    }
+
+    /** Nodes of a smooth index, or of one with noise, of 0.1 mm in a plate of 2 mm. */
+    private static IndexField grid(double noise) {
+        Random random = new Random(20261202);
+        double[] across = new double[41];
+        double[] along = new double[21];
+        for (int i = 0; i < across.length; i++) {
+            across[i] = 1e-4 * (i - 20);
+        }
+        for (int i = 0; i < along.length; i++) {
+            along[i] = 1e-4 * i;
+        }
+        double[] values = new double[across.length * across.length * along.length];
+        int at = 0;
+        for (double z : along) {
+            for (double y : across) {
+                for (double x : across) {
+                    double r2 = (x * x + y * y) / 1e-6;
+                    values[at++] = 1.5 + 1e-2 * Math.exp(-r2) * (1 + z / 4e-3) + noise * random.nextGaussian();
+                }
+            }
+        }
+        Grid grid = Grid.of(across, across, along, values, Beyond.FAULT);
+        return new FieldMedium(Declaration.of("plate"), grid, false, false).field(500e-9, Frame.JOB);
+    }
+
+    @ParameterizedTest
+    @CsvSource({"0, 1e-9", "0, 1e-11", "1e-5, 1e-9"})
+    void raysInDifferentCellsOfAGridShareABundle(double noise, double accuracy) {
+        IndexField air = Fields.uniform(1);
+        Train plate = new Train(
+                air,
+                List.of(
+                        new Element(Surface.plane(0), new Action.Refract(false), grid(noise)),
+                        new Element(Surface.plane(2e-3), new Action.Refract(false), air)));
+        // some leave the grid by its sides
+        List<RayStart> starts = fan(300);
+        Tracer tracer = new Tracer(plate, new Ending.AtLastSurface(), new Tracer.Settings(accuracy, false, false));
+        List<Traced> bundle = tracer.trace(starts);
+        for (int i = 0; i < starts.size(); i++) {
+            // a ray alone takes the pieces one by one
+            Traced a = tracer.trace(starts.get(i));
+            Traced b = bundle.get(i);
+            assertThat(b.status()).as("ray %d", i).isEqualTo(a.status());
+            assertThat(b.accurate()).isEqualTo(a.accurate());
+            assertThat(b.position().minus(a.position()).norm())
+                    .as("ray %d", i)
+                    .isLessThanOrEqualTo(a.errors().position() + b.errors().position());
+            assertThat(b.opticalLength())
+                    .isCloseTo(
+                            a.opticalLength(),
+                            offset(a.errors().opticalLength() + b.errors().opticalLength()));
+        }
     }
 
     private static List<RayStart> fan(int count) {
