@@ -76,7 +76,10 @@ class GalleryIT {
             for (String key : names(kept.get(i).path("errors"))) {
                 double error = kept.get(i).get("errors").get(key).asDouble()
                         + now.get(i).get("errors").get(key).asDouble();
-                alike(name + i + key, now.get(i).get(key), kept.get(i).get(key), error, 1e-12);
+                // the drift of a constant of the motion is told as an error alone, without a value of its own
+                if (kept.get(i).has(key)) {
+                    alike(name + i + key, now.get(i).path(key), kept.get(i).get(key), error, 1e-12);
+                }
             }
         }
     }
