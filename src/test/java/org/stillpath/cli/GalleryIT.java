@@ -39,8 +39,8 @@ class GalleryIT {
     @ParameterizedTest
     @MethodSource("jobs")
     void aJobGivesTheNumbersBehindItsPictures(String job) throws Exception {
-        Packaged.Ended end = Packaged.run(
-                folder, "run", JOBS.resolve(job + ".yaml").toString(), "--out", "out", "--quiet");
+        Packaged.Ended end =
+                Packaged.run(folder, "run", JOBS.resolve(job + ".yaml").toString(), "--out", "out", "--quiet");
         assertThat(end.status()).as(end.err()).isZero();
         JsonNode now = JSON.readTree(folder.resolve("out/result.json").toFile());
         JsonNode kept = JSON.readTree(PLOTS.resolve(job + "/result.json").toFile());
@@ -52,7 +52,10 @@ class GalleryIT {
         }
         assertThat(names(now.get("quantities"))).isEqualTo(names(kept.get("quantities")));
         for (String name : names(kept.get("quantities"))) {
-            quantity(job + ": " + name, now.get("quantities").get(name), kept.get("quantities").get(name));
+            quantity(
+                    job + ": " + name,
+                    now.get("quantities").get(name),
+                    kept.get("quantities").get(name));
         }
         for (String rows : List.of("rays", "paths", "images", "stars")) {
             rows(job + ": " + rows, now.path(rows), kept.path(rows));
@@ -91,7 +94,9 @@ class GalleryIT {
     private static void alike(String name, JsonNode now, JsonNode kept, double error, double relative) {
         if (kept.isNumber()) {
             double size = Math.max(Math.abs(kept.asDouble()), Math.abs(now.asDouble()));
-            assertThat(Math.abs(now.asDouble() - kept.asDouble())).as(name).isLessThanOrEqualTo(error + relative * size);
+            assertThat(Math.abs(now.asDouble() - kept.asDouble()))
+                    .as(name)
+                    .isLessThanOrEqualTo(error + relative * size);
             return;
         }
         assertThat(now.getNodeType()).as(name).isEqualTo(kept.getNodeType());

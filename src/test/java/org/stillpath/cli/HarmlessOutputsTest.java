@@ -55,7 +55,8 @@ class HarmlessOutputsTest {
         Files.writeString(folder.resolve("rows <u>&.csv"), ROWS);
         ByteArrayOutputStream err = new ByteArrayOutputStream();
         Console console = new Console(
-                new PrintStream(out, false, StandardCharsets.UTF_8), new PrintStream(err, false, StandardCharsets.UTF_8));
+                new PrintStream(out, false, StandardCharsets.UTF_8),
+                new PrintStream(err, false, StandardCharsets.UTF_8));
         String[] line = {"run", job.toString(), "--out", folder.resolve("out").toString()};
         int status = Program.run(line, console);
         console.out().flush();
@@ -86,7 +87,8 @@ class HarmlessOutputsTest {
     void theTerminalGetsNoControlCharacters() throws Exception {
         run();
         String text = out.toString(StandardCharsets.UTF_8);
-        assertThat(text.codePoints().filter(c -> c != '\n' && Character.isISOControl(c))).isEmpty();
+        assertThat(text.codePoints().filter(c -> c != '\n' && Character.isISOControl(c)))
+                .isEmpty();
         assertThat(text).doesNotContain("\u202e");
     }
 
