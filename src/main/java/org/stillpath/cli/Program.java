@@ -42,7 +42,8 @@ final class Program implements Callable<Integer> {
                 .addSubcommand(new RunCommand(console))
                 .addSubcommand(new CheckCommand(console))
                 .addSubcommand(new NewCommand(console))
-                .addSubcommand(new MediaCommand(console));
+                .addSubcommand(new MediaCommand(console))
+                .addSubcommand(new CompletionCommand(console));
         line.setExpandAtFiles(false)
                 .setUsageHelpWidth(80)
                 .setColorScheme(CommandLine.Help.defaultColorScheme(Ansi.OFF))
@@ -58,7 +59,7 @@ final class Program implements Callable<Integer> {
 
     @Override
     public Integer call() {
-        throw new ParameterException(spec.commandLine(), "a command is needed: run, check, new or media");
+        throw new ParameterException(spec.commandLine(), "a command is needed: run, check, new, media or completion");
     }
 
     private static int refuse(ParameterException e, Console console) {

@@ -3,6 +3,7 @@ package org.stillpath.plot;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.StringTokenizer;
+import org.stillpath.unit.Units;
 
 /** A picture in the making: collects items and the room that words take. Mutable; one for each picture. */
 final class Canvas {
@@ -89,12 +90,14 @@ final class Canvas {
         return y;
     }
 
-    /** Lines no wider than {@code width}, broken at blanks, and within a word only where it alone is too wide. */
+    /**
+     * Lines no wider than {@code width}, broken at blanks, but not between a number and its unit, and within a word only
+     * where it alone is too wide.
+     */
     static List<String> wrapped(String text, Typeface face, double size, double width) {
         List<String> lines = new ArrayList<>();
         String line = "";
-        for (StringTokenizer words = new StringTokenizer(clean(text)); words.hasMoreTokens(); ) {
-            String word = words.nextToken();
+        for (String word : words(text)) {
             String longer = line.isEmpty() ? word : line + " " + word;
             if (face.width(longer, size) <= width) {
                 line = longer;
@@ -117,6 +120,22 @@ final class Canvas {
             lines.add(line);
         }
         return lines;
+    }
+
+    /** The words of a text; a number and its unit are one. */
+    private static List<String> words(String text) {
+        List<String> all = new ArrayList<>();
+        for (StringTokenizer words = new StringTokenizer(clean(text)); words.hasMoreTokens(); ) {
+            String word = words.nextToken();
+            String before = all.isEmpty() ? "" : all.get(all.size() - 1);
+            boolean number = !before.isEmpty() && Character.isDigit(before.charAt(before.length() - 1));
+            if (number && Units.parse(word.replaceAll("[,;:.]$", "")).isPresent()) {
+                all.set(all.size() - 1, before + " " + word);
+            } else {
+                all.add(word);
+            }
+        }
+        return all;
     }
 
     /** Text as XML 1.0 can hold it: control characters as blanks, what is no character left out. */

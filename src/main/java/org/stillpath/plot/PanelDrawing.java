@@ -33,8 +33,11 @@ final class PanelDrawing {
     private static final Set<Style> MARKED = EnumSet.of(Style.ERECT, Style.INVERTED, Style.FOLD);
     private static final Scale.Unit CELSIUS = new Scale.Unit("°C", 1, 0);
     private static final Scale.Unit PPM = new Scale.Unit("ppm", 1e-6, 0);
-    private static final List<Scale.Unit> LENGTHS =
-            List.of(new Scale.Unit("km", 1e3, 3), new Scale.Unit("m", 1, 0.02), new Scale.Unit("mm", 1e-3, 0));
+    private static final List<Scale.Unit> LENGTHS = List.of(
+            new Scale.Unit("km", 1e3, 3),
+            new Scale.Unit("m", 1, 0.02),
+            new Scale.Unit("mm", 1e-3, 0.03),
+            new Scale.Unit("µm", 1e-6, 0));
     private static final double MINUTE = Math.PI / 180 / 60;
     private static final List<Scale.Unit> ANGLES = List.of(
             new Scale.Unit("deg", 60 * MINUTE, 10),
@@ -131,6 +134,11 @@ final class PanelDrawing {
         while (most > 1 && !Axes.isClear(ruler, view.across())) {
             most--;
             ruler = scale(panel.across(), view.u(plot.left()), view.u(plot.right()), most);
+        }
+        // a single tick tells no scale
+        for (int more = most + 1; ruler.ticks().size() < 2 && more <= 3 * most; more++) {
+            Scale finer = scale(panel.across(), view.u(plot.left()), view.u(plot.right()), more);
+            ruler = Axes.isClear(finer, view.across()) ? finer : ruler;
         }
         Scale side = scale(figure.up(), view.v(plot.bottom()), view.v(plot.top()), (int) (plot.height() / 20));
         if (number > 0) {

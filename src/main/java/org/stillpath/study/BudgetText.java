@@ -12,10 +12,14 @@ final class BudgetText {
         return r + " ± " + in(u, r.unit(), 0.1 * u);
     }
 
-    /** {@code 2.120 mm to 2.350 mm}. */
+    /** {@code 2.120 mm to 2.350 mm}: both ends in the unit of the larger. */
     static String interval(Watched w, double[] ends, double u) {
-        Display.Reading low = Display.of(ends[0], w.unitOrOne(), 0.1 * u);
-        return low + " to " + in(ends[1], low.unit(), 0.1 * u);
+        String unit = Display.of(Math.max(Math.abs(ends[0]), Math.abs(ends[1])), w.unitOrOne(), 0.1 * u)
+                .unit();
+        // below the last digit shown there is nothing to say
+        double low = Math.abs(ends[0]) < 0.05 * u ? 0 : ends[0];
+        double high = Math.abs(ends[1]) < 0.05 * u ? 0 : ends[1];
+        return in(low, unit, 0.1 * u) + " to " + in(high, unit, 0.1 * u);
     }
 
     private static String in(double si, String unit, double error) {

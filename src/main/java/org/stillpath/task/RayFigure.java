@@ -326,6 +326,13 @@ final class RayFigure {
                 double z = e.surface().vertex().z();
                 least[2] = Math.min(least[2], z);
                 most[2] = Math.max(most[2], z);
+                if (e.surface().whole()) {
+                    // the far side may lie beyond all rays
+                    Quadric q = (Quadric) e.surface().form();
+                    a = Math.min(a, 1 / Math.sqrt(Math.abs(q.g()) * q.curvature()));
+                    least[2] = Math.min(least[2], z + Math.min(0, 2 / q.g()));
+                    most[2] = Math.max(most[2], z + Math.max(0, 2 / q.g()));
+                }
                 if (Double.isFinite(a) && !(e.action() instanceof Action.Stop)) {
                     least[up] = Math.min(least[up], -a);
                     most[up] = Math.max(most[up], a);
