@@ -132,8 +132,6 @@ final class WaveFigures {
         if (size < 5e-7) {
             return "0 λ";
         }
-        return size < 1e-3
-                ? String.format(Locale.ROOT, "%.2g mλ", 1e3 * w)
-                : String.format(Locale.ROOT, "%.4f λ", w);
+        return size < 1e-3 ? String.format(Locale.ROOT, "%.2g mλ", 1e3 * w) : String.format(Locale.ROOT, "%.4f λ", w);
     }
 }
