@@ -1,15 +1,14 @@
 package org.stillpath.formula;
 
-import java.lang.invoke.MethodHandles;
 import java.util.ArrayDeque;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.Deque;
 import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Locale;
 import java.util.Map;
 import java.util.Optional;
-import org.objectweb.asm.ClassWriter;
 import org.objectweb.asm.Label;
 import org.objectweb.asm.MethodVisitor;
 import org.objectweb.asm.Opcodes;
@@ -31,36 +30,10 @@ final class BlockCompiler {
 
     private static final int MOST_INVARIANTS = 300;
 
-    private static final String OBJECT = Type.getInternalName(Object.class);
-    private static final String NAME = Type.getInternalName(BlockKernel.class) + "Compiled";
-    private static final String SAMPLES = Type.getInternalName(Samples.class);
     private static final String ELEMENTARY = Type.getInternalName(Elementary.class);
     private static final String ARRAYS = Type.getInternalName(Arrays.class);
-    private static final String DESCRIPTOR = Type.getMethodDescriptor(
-            Type.VOID_TYPE,
-            Type.getType(double[].class),
-            Type.getType(double[].class),
-            Type.getType(double[].class),
-            Type.INT_TYPE,
-            Type.getType(double[].class),
-            Type.DOUBLE_TYPE,
-            Type.getType(Samples[].class),
-            Type.getType(Samples.class),
-            Type.getType(double[][].class),
-            Type.getType(double[].class));
-
-    private static final int THIS = 0;
-    private static final int X = 1;
-    private static final int Y = 2;
-    private static final int Z = 3;
-    private static final int COUNT = 4;
-    private static final int ARGUMENTS = 5;
-    private static final int WAVELENGTH = 6;
-    private static final int CHARTS = 8;
-    private static final int OUT = 9;
-    private static final int ROWS = 10;
-    private static final int CELLS = 11;
-    private static final int FIRST_FREE = 12;
+    private static final int ROWS = KernelClass.ROOM;
+    private static final int CELLS = ROWS + 1;
 
     /** Rows that the elementary functions use as scratch. */
     private static final int SCRATCH_ROWS = 2;
@@ -75,7 +48,7 @@ final class BlockCompiler {
     record Compiled(BlockKernel kernel, int rows, int cells) {}
 
     private final Program program;
-    private final ClassWriter writer = new ClassWriter(ClassWriter.COMPUTE_MAXS);
+    private final KernelClass target = new KernelClass(BlockKernel.class, double[][].class, double[].class);
     /** How often a result is used, by operations and as an output. */
     private final int[] uses;
     /** A product that is computed within the sum that alone needs it. */
@@ -121,17 +94,8 @@ final class BlockCompiler {
             return Optional.empty();
         }
         BlockCompiler compiler = new BlockCompiler(program);
-        byte[] code = compiler.translate();
-        try {
-            BlockKernel kernel = (BlockKernel) MethodHandles.lookup()
-                    .defineHiddenClass(code, true)
-                    .lookupClass()
-                    .getDeclaredConstructor()
-                    .newInstance();
-            return Optional.of(new Compiled(kernel, compiler.rows, program.invariants()));
-        } catch (ReflectiveOperationException e) {
-            throw new IllegalStateException("a compiled formula cannot be loaded", e);
-        }
+        BlockKernel kernel = (BlockKernel) KernelClass.load(compiler.translate());
+        return Optional.of(new Compiled(kernel, compiler.rows, program.invariants()));
     }
 
     private Program.Instruction at(int i) {
@@ -238,17 +202,6 @@ final class BlockCompiler {
     }
 
     private byte[] translate() {
-        writer.visit(
-                Opcodes.V17,
-                Opcodes.ACC_FINAL | Opcodes.ACC_SUPER | Opcodes.ACC_SYNTHETIC,
-                NAME,
-                null,
-                OBJECT,
-                new String[] {Type.getInternalName(BlockKernel.class)});
-        MethodVisitor made = begin(0, "<init>", "()V");
-        made.visitVarInsn(Opcodes.ALOAD, THIS);
-        made.visitMethodInsn(Opcodes.INVOKESPECIAL, OBJECT, "<init>", "()V", false);
-        end(made);
         invariants();
         List<List<Integer>> steps = schedule();
         for (int s = 0; s < steps.size(); s++) {
@@ -271,48 +224,20 @@ final class BlockCompiler {
                 }
             }
         }
-        MethodVisitor run = begin(Opcodes.ACC_PUBLIC, "run", DESCRIPTOR);
-        call(run, "invariants");
+        MethodVisitor run = target.begin(Opcodes.ACC_PUBLIC, "run");
+        target.call(run, "invariants", KernelClass.COUNT);
         for (int s = 0; s < steps.size(); s++) {
-            call(run, "step" + s);
+            target.call(run, "step" + s, KernelClass.COUNT);
         }
-        call(run, "given");
-        end(run);
+        target.call(run, "given", KernelClass.COUNT);
+        KernelClass.end(run);
         givenOutputs();
-        writer.visitEnd();
-        return writer.toByteArray();
-    }
-
-    private MethodVisitor begin(int access, String name, String descriptor) {
-        MethodVisitor code = writer.visitMethod(access, name, descriptor, null, null);
-        code.visitCode();
-        return code;
-    }
-
-    private static void end(MethodVisitor code) {
-        code.visitInsn(Opcodes.RETURN);
-        code.visitMaxs(0, 0);
-        code.visitEnd();
-    }
-
-    private static void call(MethodVisitor run, String name) {
-        run.visitVarInsn(Opcodes.ALOAD, THIS);
-        run.visitVarInsn(Opcodes.ALOAD, X);
-        run.visitVarInsn(Opcodes.ALOAD, Y);
-        run.visitVarInsn(Opcodes.ALOAD, Z);
-        run.visitVarInsn(Opcodes.ILOAD, COUNT);
-        run.visitVarInsn(Opcodes.ALOAD, ARGUMENTS);
-        run.visitVarInsn(Opcodes.DLOAD, WAVELENGTH);
-        run.visitVarInsn(Opcodes.ALOAD, CHARTS);
-        run.visitVarInsn(Opcodes.ALOAD, OUT);
-        run.visitVarInsn(Opcodes.ALOAD, ROWS);
-        run.visitVarInsn(Opcodes.ALOAD, CELLS);
-        run.visitMethodInsn(Opcodes.INVOKESPECIAL, NAME, name, DESCRIPTOR, false);
+        return target.file();
     }
 
     /** Computes what does not depend on the place into its cells. */
     private void invariants() {
-        MethodVisitor code = begin(Opcodes.ACC_PRIVATE, "invariants", DESCRIPTOR);
+        MethodVisitor code = target.begin(Opcodes.ACC_PRIVATE, "invariants");
         for (int i = 0; i < program.invariants(); i++) {
             Program.Instruction in = at(i);
             if (in.op() == Op.CONSTANT) {
@@ -321,17 +246,17 @@ final class BlockCompiler {
             code.visitVarInsn(Opcodes.ALOAD, CELLS);
             Compiler.push(code, i);
             if (in.op() == Op.ARGUMENT) {
-                code.visitVarInsn(Opcodes.ALOAD, ARGUMENTS);
+                code.visitVarInsn(Opcodes.ALOAD, KernelClass.ARGUMENTS);
                 Compiler.push(code, in.index());
                 code.visitInsn(Opcodes.DALOAD);
             } else if (in.op() == Op.WAVELENGTH) {
-                code.visitVarInsn(Opcodes.DLOAD, WAVELENGTH);
+                code.visitVarInsn(Opcodes.DLOAD, KernelClass.WAVELENGTH);
             } else {
                 Compiler.operate(code, in, o -> cell(code, o));
             }
             code.visitInsn(Opcodes.DASTORE);
         }
-        end(code);
+        KernelClass.end(code);
     }
 
     private void cell(MethodVisitor code, int o) {
@@ -347,25 +272,21 @@ final class BlockCompiler {
     /** An elementary function of a row into another; outputs are copied from it. */
     private void function(int s, int i) {
         Program.Instruction in = at(i);
-        MethodVisitor code = begin(Opcodes.ACC_PRIVATE, "step" + s, DESCRIPTOR);
+        MethodVisitor code = target.begin(Opcodes.ACC_PRIVATE, "step" + s);
         array(code, in.a());
-        code.visitVarInsn(Opcodes.ILOAD, COUNT);
+        code.visitVarInsn(Opcodes.ILOAD, KernelClass.COUNT);
         rowArray(code, row[i]);
         rowArray(code, 0);
         rowArray(code, 1);
         code.visitMethodInsn(
-                Opcodes.INVOKESTATIC,
-                ELEMENTARY,
-                in.op().name().toLowerCase(java.util.Locale.ROOT),
-                "([DI[D[D[D)V",
-                false);
+                Opcodes.INVOKESTATIC, ELEMENTARY, in.op().name().toLowerCase(Locale.ROOT), "([DI[D[D[D)V", false);
         for (int k = 0; k < program.outputs().size(); k++) {
             if (program.outputs().get(k) == i) {
                 rowArray(code, row[i]);
                 copyToOutput(code, k);
             }
         }
-        end(code);
+        KernelClass.end(code);
     }
 
     /** Copies the array on the stack to an output. */
@@ -373,7 +294,7 @@ final class BlockCompiler {
         code.visitInsn(Opcodes.ICONST_0);
         outArray(code, output);
         code.visitInsn(Opcodes.ICONST_0);
-        code.visitVarInsn(Opcodes.ILOAD, COUNT);
+        code.visitVarInsn(Opcodes.ILOAD, KernelClass.COUNT);
         code.visitMethodInsn(
                 Opcodes.INVOKESTATIC,
                 Type.getInternalName(System.class),
@@ -384,13 +305,13 @@ final class BlockCompiler {
 
     /** Outputs that are invariants or coordinates. */
     private void givenOutputs() {
-        MethodVisitor code = begin(Opcodes.ACC_PRIVATE, "given", DESCRIPTOR);
+        MethodVisitor code = target.begin(Opcodes.ACC_PRIVATE, "given");
         for (int k = 0; k < program.outputs().size(); k++) {
             int o = program.outputs().get(k);
             if (o < program.invariants()) {
                 outArray(code, k);
                 code.visitInsn(Opcodes.ICONST_0);
-                code.visitVarInsn(Opcodes.ILOAD, COUNT);
+                code.visitVarInsn(Opcodes.ILOAD, KernelClass.COUNT);
                 cell(code, o);
                 code.visitMethodInsn(Opcodes.INVOKESTATIC, ARRAYS, "fill", "([DIID)V", false);
             } else if (leaf(at(o).op())) {
@@ -398,12 +319,12 @@ final class BlockCompiler {
                 copyToOutput(code, k);
             }
         }
-        end(code);
+        KernelClass.end(code);
     }
 
     private static void outArray(MethodVisitor code, int output) {
-        code.visitVarInsn(Opcodes.ALOAD, OUT);
-        code.visitFieldInsn(Opcodes.GETFIELD, SAMPLES, Compiler.COMPONENTS.get(output), "[D");
+        code.visitVarInsn(Opcodes.ALOAD, KernelClass.OUT);
+        KernelClass.component(code, output);
     }
 
     private static void rowArray(MethodVisitor code, int number) {
@@ -416,14 +337,11 @@ final class BlockCompiler {
     private void array(MethodVisitor code, int o) {
         Program.Instruction in = at(o);
         switch (in.op()) {
-            case X -> code.visitVarInsn(Opcodes.ALOAD, X);
-            case Y -> code.visitVarInsn(Opcodes.ALOAD, Y);
-            case Z -> code.visitVarInsn(Opcodes.ALOAD, Z);
+            case X -> code.visitVarInsn(Opcodes.ALOAD, KernelClass.X);
+            case Y -> code.visitVarInsn(Opcodes.ALOAD, KernelClass.Y);
+            case Z -> code.visitVarInsn(Opcodes.ALOAD, KernelClass.Z);
             case CHART -> {
-                code.visitVarInsn(Opcodes.ALOAD, CHARTS);
-                Compiler.push(code, in.index() / 10);
-                code.visitInsn(Opcodes.AALOAD);
-                code.visitFieldInsn(Opcodes.GETFIELD, SAMPLES, Compiler.COMPONENTS.get(in.index() % 10), "[D");
+                KernelClass.chart(code, in.index());
             }
             default -> rowArray(code, row[o]);
         }
@@ -437,24 +355,13 @@ final class BlockCompiler {
         /** Locals of arrays and of invariants that are read, and of results. */
         private final Map<Integer, Integer> locals = new LinkedHashMap<>();
 
-        private final List<Object> types = new ArrayList<>(List.of(
-                NAME,
-                "[D",
-                "[D",
-                "[D",
-                Opcodes.INTEGER,
-                "[D",
-                Opcodes.DOUBLE,
-                "[L" + SAMPLES + ";",
-                SAMPLES,
-                "[[D",
-                "[D"));
-        private int next = FIRST_FREE;
+        private final List<Object> types = target.frame();
+        private int next = target.firstFree();
 
         Loop(int number, List<Integer> chosen) {
             this.number = number;
             this.chosen = chosen;
-            this.code = begin(Opcodes.ACC_PRIVATE, "step" + number, DESCRIPTOR);
+            this.code = target.begin(Opcodes.ACC_PRIVATE, "step" + number);
         }
 
         void write() {
@@ -485,7 +392,7 @@ final class BlockCompiler {
             code.visitLabel(head);
             code.visitFrame(Opcodes.F_FULL, frame.length, frame, 0, new Object[0]);
             code.visitVarInsn(Opcodes.ILOAD, point);
-            code.visitVarInsn(Opcodes.ILOAD, COUNT);
+            code.visitVarInsn(Opcodes.ILOAD, KernelClass.COUNT);
             code.visitJumpInsn(Opcodes.IF_ICMPGE, exit);
             for (int i : chosen) {
                 compute(i, point);
@@ -507,7 +414,7 @@ final class BlockCompiler {
             code.visitJumpInsn(Opcodes.GOTO, head);
             code.visitLabel(exit);
             code.visitFrame(Opcodes.F_FULL, frame.length, frame, 0, new Object[0]);
-            end(code);
+            KernelClass.end(code);
         }
 
         private void store(int array, int point, int local) {

@@ -1,6 +1,5 @@
 package org.stillpath.formula;
 
-import java.lang.invoke.MethodHandles;
 import java.util.ArrayDeque;
 import java.util.ArrayList;
 import java.util.Arrays;
@@ -9,7 +8,6 @@ import java.util.Deque;
 import java.util.List;
 import java.util.Optional;
 import java.util.function.IntConsumer;
-import org.objectweb.asm.ClassWriter;
 import org.objectweb.asm.Label;
 import org.objectweb.asm.MethodVisitor;
 import org.objectweb.asm.Opcodes;
@@ -52,38 +50,6 @@ final class Compiler {
     /** Bytes that bring a scratch cell to a local. */
     private static final int FETCH = 10;
 
-    private static final String OBJECT = Type.getInternalName(Object.class);
-
-    private static final String NAME = Type.getInternalName(Kernel.class) + "Compiled";
-    private static final String SAMPLES = Type.getInternalName(Samples.class);
-    private static final String DESCRIPTOR = Type.getMethodDescriptor(
-            Type.VOID_TYPE,
-            Type.getType(double[].class),
-            Type.getType(double[].class),
-            Type.getType(double[].class),
-            Type.INT_TYPE,
-            Type.getType(double[].class),
-            Type.DOUBLE_TYPE,
-            Type.getType(Samples[].class),
-            Type.getType(Samples.class),
-            Type.getType(double[].class));
-
-    // parameters, which the parts of a long program share with the whole; there COUNT is the number of the point
-    private static final int THIS = 0;
-    private static final int X = 1;
-    private static final int Y = 2;
-    private static final int Z = 3;
-    private static final int COUNT = 4;
-    private static final int ARGUMENTS = 5;
-    private static final int WAVELENGTH = 6;
-    private static final int CHARTS = 8;
-    private static final int OUT = 9;
-    private static final int SCRATCH = 10;
-    private static final int FIRST_FREE = 11;
-
-    /** Names of the arrays of {@link Samples}, in the order of a program's outputs. */
-    static final List<String> COMPONENTS = List.of("value", "gx", "gy", "gz", "hxx", "hxy", "hxz", "hyy", "hyz", "hzz");
-
     /**
      * A translated program.
      *
@@ -96,7 +62,7 @@ final class Compiler {
     private record Part(int from, int to) {}
 
     private final Program program;
-    private final ClassWriter writer = new ClassWriter(ClassWriter.COMPUTE_MAXS);
+    private final KernelClass target = new KernelClass(Kernel.class, double[].class);
     /** Which scratch cell a result has that goes from one method to another; -1 for the others. */
     private final int[] cells;
 
@@ -106,17 +72,6 @@ final class Compiler {
         this.program = program;
         this.cells = new int[program.size()];
         Arrays.fill(cells, -1);
-        writer.visit(
-                Opcodes.V17,
-                Opcodes.ACC_FINAL | Opcodes.ACC_SUPER | Opcodes.ACC_SYNTHETIC,
-                NAME,
-                null,
-                OBJECT,
-                new String[] {Type.getInternalName(Kernel.class)});
-        MethodVisitor made = begin(0, "<init>", "()V");
-        made.visitVarInsn(Opcodes.ALOAD, THIS);
-        made.visitMethodInsn(Opcodes.INVOKESPECIAL, OBJECT, "<init>", "()V", false);
-        end(made);
     }
 
     /** The code of a program; none if it is longer than {@link #LARGEST_PROGRAM}. */
@@ -125,16 +80,7 @@ final class Compiler {
             return Optional.empty();
         }
         ClassFile file = translate(program);
-        try {
-            Kernel kernel = (Kernel) MethodHandles.lookup()
-                    .defineHiddenClass(file.code(), true)
-                    .lookupClass()
-                    .getDeclaredConstructor()
-                    .newInstance();
-            return Optional.of(new Compiled(kernel, file.scratch()));
-        } catch (ReflectiveOperationException e) {
-            throw new IllegalStateException("a compiled formula cannot be loaded", e);
-        }
+        return Optional.of(new Compiled((Kernel) KernelClass.load(file.code()), file.scratch()));
     }
 
     /**
@@ -158,31 +104,18 @@ final class Compiler {
     }
 
     private ClassFile file() {
-        writer.visitEnd();
-        return new ClassFile(writer.toByteArray(), scratch);
-    }
-
-    private MethodVisitor begin(int access, String name, String descriptor) {
-        MethodVisitor code = writer.visitMethod(access, name, descriptor, null, null);
-        code.visitCode();
-        return code;
-    }
-
-    private static void end(MethodVisitor code) {
-        code.visitInsn(Opcodes.RETURN);
-        code.visitMaxs(0, 0);
-        code.visitEnd();
+        return new ClassFile(target.file(), scratch);
     }
 
     /** Writes everything into one method a kind of call; gives the greater length in bytes. */
     private int whole() {
-        MethodVisitor one = begin(Opcodes.ACC_PUBLIC, "one", DESCRIPTOR);
-        Body alone = new Body(one, COUNT, FIRST_FREE, 0);
+        MethodVisitor one = target.begin(Opcodes.ACC_PUBLIC, "one");
+        Body alone = new Body(one, KernelClass.COUNT, target.firstFree(), 0);
         alone.compute(0, program.size());
         alone.writeAll();
-        end(one);
-        MethodVisitor run = begin(Opcodes.ACC_PUBLIC, "run", DESCRIPTOR);
-        int point = FIRST_FREE;
+        KernelClass.end(one);
+        MethodVisitor run = target.begin(Opcodes.ACC_PUBLIC, "run");
+        int point = target.firstFree();
         Body body = new Body(run, point, point + 1, 0);
         body.compute(0, program.invariants());
         loop(run, point, body.next, () -> {
@@ -191,7 +124,7 @@ final class Compiler {
         });
         Label last = new Label();
         run.visitLabel(last);
-        end(run);
+        KernelClass.end(run);
         return last.getOffset() + 1;
     }
 
@@ -208,19 +141,23 @@ final class Compiler {
         for (Part part : within) {
             inside.add(part(part, "part" + inside.size(), inside.size() == within.size() - 1));
         }
-        MethodVisitor run = begin(Opcodes.ACC_PUBLIC, "run", DESCRIPTOR);
-        outside.forEach(name -> call(run, name, COUNT));
-        loop(run, FIRST_FREE, FIRST_FREE + 1, () -> inside.forEach(name -> call(run, name, FIRST_FREE)));
-        end(run);
-        MethodVisitor one = begin(Opcodes.ACC_PUBLIC, "one", DESCRIPTOR);
-        outside.forEach(name -> call(one, name, COUNT));
-        inside.forEach(name -> call(one, name, COUNT));
-        end(one);
+        MethodVisitor run = target.begin(Opcodes.ACC_PUBLIC, "run");
+        outside.forEach(name -> target.call(run, name, KernelClass.COUNT));
+        loop(
+                run,
+                target.firstFree(),
+                target.firstFree() + 1,
+                () -> inside.forEach(name -> target.call(run, name, target.firstFree())));
+        KernelClass.end(run);
+        MethodVisitor one = target.begin(Opcodes.ACC_PUBLIC, "one");
+        outside.forEach(name -> target.call(one, name, KernelClass.COUNT));
+        inside.forEach(name -> target.call(one, name, KernelClass.COUNT));
+        KernelClass.end(one);
     }
 
     private String part(Part part, String name, boolean last) {
-        MethodVisitor code = begin(Opcodes.ACC_PRIVATE, name, DESCRIPTOR);
-        Body body = new Body(code, COUNT, FIRST_FREE, part.from());
+        MethodVisitor code = target.begin(Opcodes.ACC_PRIVATE, name);
+        Body body = new Body(code, KernelClass.COUNT, target.firstFree(), part.from());
         body.compute(part.from(), part.to());
         for (int k = 0; k < program.outputs().size(); k++) {
             int o = program.outputs().get(k);
@@ -229,38 +166,14 @@ final class Compiler {
                 body.write(k);
             }
         }
-        end(code);
+        KernelClass.end(code);
         return name;
     }
 
-    private static void call(MethodVisitor run, String name, int number) {
-        run.visitVarInsn(Opcodes.ALOAD, THIS);
-        run.visitVarInsn(Opcodes.ALOAD, X);
-        run.visitVarInsn(Opcodes.ALOAD, Y);
-        run.visitVarInsn(Opcodes.ALOAD, Z);
-        run.visitVarInsn(Opcodes.ILOAD, number);
-        run.visitVarInsn(Opcodes.ALOAD, ARGUMENTS);
-        run.visitVarInsn(Opcodes.DLOAD, WAVELENGTH);
-        run.visitVarInsn(Opcodes.ALOAD, CHARTS);
-        run.visitVarInsn(Opcodes.ALOAD, OUT);
-        run.visitVarInsn(Opcodes.ALOAD, SCRATCH);
-        run.visitMethodInsn(Opcodes.INVOKESPECIAL, NAME, name, DESCRIPTOR, false);
-    }
-
     /** A loop over the points; {@code next} is the first local without a value before it, those behind {@code point} numbers. */
-    private static void loop(MethodVisitor run, int point, int next, Runnable inside) {
-        List<Object> locals = new ArrayList<>(List.of(
-                NAME,
-                "[D",
-                "[D",
-                "[D",
-                Opcodes.INTEGER,
-                "[D",
-                Opcodes.DOUBLE,
-                "[L" + SAMPLES + ";",
-                SAMPLES,
-                "[D",
-                Opcodes.INTEGER));
+    private void loop(MethodVisitor run, int point, int next, Runnable inside) {
+        List<Object> locals = target.frame();
+        locals.add(Opcodes.INTEGER);
         locals.addAll(Collections.nCopies((next - point - 1) / 2, Opcodes.DOUBLE));
         Object[] frame = locals.toArray();
         Label head = new Label();
@@ -270,7 +183,7 @@ final class Compiler {
         run.visitLabel(head);
         run.visitFrame(Opcodes.F_FULL, frame.length, frame, 0, new Object[0]);
         run.visitVarInsn(Opcodes.ILOAD, point);
-        run.visitVarInsn(Opcodes.ILOAD, COUNT);
+        run.visitVarInsn(Opcodes.ILOAD, KernelClass.COUNT);
         run.visitJumpInsn(Opcodes.IF_ICMPGE, exit);
         inside.run();
         run.visitIincInsn(point, 1);
@@ -392,7 +305,7 @@ final class Compiler {
                 locals[i] = free.isEmpty() ? fresh() : free.pop();
                 code.visitVarInsn(Opcodes.DSTORE, locals[i]);
                 if (cells[i] >= 0) {
-                    code.visitVarInsn(Opcodes.ALOAD, SCRATCH);
+                    code.visitVarInsn(Opcodes.ALOAD, KernelClass.ROOM);
                     push(code, cells[i]);
                     code.visitVarInsn(Opcodes.DLOAD, locals[i]);
                     code.visitInsn(Opcodes.DASTORE);
@@ -408,7 +321,7 @@ final class Compiler {
         /** Brings a result of another method into a local. */
         private void fetch(int o) {
             if (locals[o] < 0 && o < start && cells[o] >= 0) {
-                code.visitVarInsn(Opcodes.ALOAD, SCRATCH);
+                code.visitVarInsn(Opcodes.ALOAD, KernelClass.ROOM);
                 push(code, cells[o]);
                 code.visitInsn(Opcodes.DALOAD);
                 locals[o] = free.isEmpty() ? fresh() : free.pop();
@@ -444,8 +357,8 @@ final class Compiler {
         void write(int output) {
             int o = program.outputs().get(output);
             fetch(o);
-            code.visitVarInsn(Opcodes.ALOAD, OUT);
-            code.visitFieldInsn(Opcodes.GETFIELD, SAMPLES, COMPONENTS.get(output), "[D");
+            code.visitVarInsn(Opcodes.ALOAD, KernelClass.OUT);
+            KernelClass.component(code, output);
             code.visitVarInsn(Opcodes.ILOAD, point);
             load(o);
             if (output == 0) {
@@ -460,19 +373,16 @@ final class Compiler {
         private void operation(Program.Instruction in) {
             switch (in.op()) {
                 case ARGUMENT -> {
-                    code.visitVarInsn(Opcodes.ALOAD, ARGUMENTS);
+                    code.visitVarInsn(Opcodes.ALOAD, KernelClass.ARGUMENTS);
                     push(code, in.index());
                     code.visitInsn(Opcodes.DALOAD);
                 }
-                case WAVELENGTH -> code.visitVarInsn(Opcodes.DLOAD, WAVELENGTH);
-                case X -> coordinate(X);
-                case Y -> coordinate(Y);
-                case Z -> coordinate(Z);
+                case WAVELENGTH -> code.visitVarInsn(Opcodes.DLOAD, KernelClass.WAVELENGTH);
+                case X -> coordinate(KernelClass.X);
+                case Y -> coordinate(KernelClass.Y);
+                case Z -> coordinate(KernelClass.Z);
                 case CHART -> {
-                    code.visitVarInsn(Opcodes.ALOAD, CHARTS);
-                    push(code, in.index() / 10);
-                    code.visitInsn(Opcodes.AALOAD);
-                    code.visitFieldInsn(Opcodes.GETFIELD, SAMPLES, COMPONENTS.get(in.index() % 10), "[D");
+                    KernelClass.chart(code, in.index());
                     code.visitVarInsn(Opcodes.ILOAD, point);
                     code.visitInsn(Opcodes.DALOAD);
                 }

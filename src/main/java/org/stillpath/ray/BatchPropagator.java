@@ -18,12 +18,6 @@ final class BatchPropagator {
     /** Rays in a batch: rows of this length fill vector units and stay in the nearest cache. */
     private static final int LANES = 64;
 
-    /** A step reaches at most this part of the scene, as that of {@link NystromPropagator} does. */
-    private static final double LONGEST = 0.5;
-
-    private static final double SHORTEST = 1e-15;
-    /** An aimed step goes this much beyond its goal, so that the goal lies inside it. */
-    private static final double BEYOND = 1.02;
     /** What is left before a target, as a part of the scene, when the last step onto it is a short series. */
     private static final double NEAR = 1e-9;
 
@@ -33,7 +27,6 @@ final class BatchPropagator {
     private static final double EVEN = 0.05;
 
     private static final int LANDING_ROUNDS = 6;
-    private static final int MOST_STEPS = 2_000_000;
 
     private static final int GOES_ON = Integer.MIN_VALUE;
 
@@ -118,8 +111,7 @@ final class BatchPropagator {
         this.now = new double[State.COLUMNS];
         this.ahead = new double[State.COLUMNS];
         this.samples = new double[LANES];
-        this.opening =
-                3 * scale * Math.pow(NystromPropagator.estimateTolerance(tolerance, pair), 1.0 / (pair.lower() + 1));
+        this.opening = scale * NystromPropagator.opening(tolerance, pair);
     }
 
     /**
@@ -193,7 +185,7 @@ final class BatchPropagator {
         Lane<L> lane = new Lane<>(leg, bias, values, new double[] {rate[3], rate[4], rate[5]});
         double n = Math.sqrt(square(y[3]) + square(y[4]) + square(y[5]));
         double force = Math.sqrt(square(rate[3]) + square(rate[4]) + square(rate[5]));
-        lane.wanted = Math.min(Math.min(stride * LONGEST * scale, opening) / n, n / force);
+        lane.wanted = Math.min(Math.min(stride * NystromPropagator.LONGEST * scale, opening) / n, n / force);
         return lane;
     }
 
@@ -206,21 +198,21 @@ final class BatchPropagator {
         if (lane.landing >= 0) {
             return;
         }
-        gather(lane, i, batch.place(), batch.slope(), batch.excess(), batch.stretch(), lane.tau, now);
+        gather(lane, i, batch.start(), lane.tau, now);
         double n = Math.sqrt(square(now[3]) + square(now[4]) + square(now[5]));
         double nearest = lane.wanted;
         int which = -1;
         for (int t = 0; t < lane.targets.length; t++) {
             lane.slopes[t] = lane.targets[t].rate(now, n);
             double first = -lane.values[t] / lane.slopes[t];
-            if (first > 0 && BEYOND * first < nearest) {
-                nearest = BEYOND * first;
+            if (first > 0 && NystromPropagator.BEYOND * first < nearest) {
+                nearest = NystromPropagator.BEYOND * first;
                 which = t;
             }
         }
         batch.steps()[i] = nearest;
         if (which >= 0 && !lane.wary && !lane.targets[which].needsForce()) {
-            guess(lane, i, which, nearest / BEYOND, n);
+            guess(lane, i, which, nearest / NystromPropagator.BEYOND, n);
         }
     }
 
@@ -245,21 +237,10 @@ final class BatchPropagator {
         }
     }
 
-    private void gather(
-            Lane<?> lane,
-            int i,
-            double[][] place,
-            double[][] slope,
-            double[] excess,
-            double[] stretch,
-            double tau,
-            double[] out) {
-        for (int c = 0; c < 3; c++) {
-            out[c] = place[c][i];
-            out[3 + c] = slope[c][i];
-        }
-        out[State.EXCESS] = lane.excess + (excess[i] - stretch[i]);
-        out[State.LENGTH] = lane.length + (tau + stretch[i]);
+    private static void gather(Lane<?> lane, int i, RayBatch.Rays rays, double tau, double[] out) {
+        rays.ray(out, 0, i);
+        out[State.EXCESS] = lane.excess + (rays.excess[i] - rays.stretch[i]);
+        out[State.LENGTH] = lane.length + (tau + rays.stretch[i]);
     }
 
     /** Looks at the end of a step before it is taken: where a target was passed the step is refused and a shorter one set. */
@@ -268,7 +249,7 @@ final class BatchPropagator {
             return;
         }
         double h = batch.steps()[i];
-        gather(lane, i, batch.endPlace(), batch.endSlope(), batch.endExcess(), batch.endStretch(), lane.tau + h, ahead);
+        gather(lane, i, batch.end(), lane.tau + h, ahead);
         if (lane.landing >= 0) {
             landed(lane, i, h);
             return;
@@ -276,7 +257,7 @@ final class BatchPropagator {
         if (clear(lane, h)) {
             return;
         }
-        gather(lane, i, batch.place(), batch.slope(), batch.excess(), batch.stretch(), lane.tau, now);
+        gather(lane, i, batch.start(), lane.tau, now);
         rates(
                 batch.startForce(0, i),
                 batch.startForce(1, i),
@@ -284,7 +265,8 @@ final class BatchPropagator {
                 batch.startForce(3, i),
                 startRates);
         if (!endRates(i, field)) {
-            batch.refuse(i);
+            // the step ends where the field is undefined
+            giveUp(lane, i);
             return;
         }
         path.begin(now, startRates);
@@ -381,10 +363,16 @@ final class BatchPropagator {
             return;
         }
         if (lane.rounds > LANDING_ROUNDS || !(Math.abs(dt) <= 0.1 * h)) {
-            lane.rounds = LANDING_ROUNDS + 1;
-        } else {
-            batch.steps()[i] = h + dt;
+            giveUp(lane, i);
+            return;
         }
+        batch.steps()[i] = h + dt;
+        batch.refuse(i);
+    }
+
+    /** Takes the step back and leaves the rest of the way to the engine for one ray. */
+    private void giveUp(Lane<?> lane, int i) {
+        lane.rounds = LANDING_ROUNDS + 1;
         batch.refuse(i);
     }
 
@@ -400,7 +388,7 @@ final class BatchPropagator {
     /** What becomes of a lane after a step: what it has met, or that it goes on. */
     private int after(Lane<?> lane, int i, IndexField field) {
         double h = batch.steps()[i];
-        double n = Math.sqrt(square(batch.slope()[0][i]) + square(batch.slope()[1][i]) + square(batch.slope()[2][i]));
+        double n = batch.start().index(i);
         if (lane.rounds > LANDING_ROUNDS) {
             return alone(lane, i, field);
         }
@@ -411,7 +399,9 @@ final class BatchPropagator {
             // undefined places and steps that cannot be kept are rare enough for the engine that knows about them
             lane.wanted = h * batch.growth(i);
             lane.landing = -1;
-            boolean hopeless = batch.undefined(i) || ++lane.steps > MOST_STEPS || !(lane.wanted * n > SHORTEST * scale);
+            boolean hopeless = batch.undefined(i)
+                    || ++lane.steps > NystromPropagator.MOST_STEPS
+                    || !(lane.wanted * n > NystromPropagator.SHORTEST * scale);
             return hopeless ? alone(lane, i, field) : GOES_ON;
         }
         lane.tau += h;
@@ -419,26 +409,26 @@ final class BatchPropagator {
         if (lane.landing >= 0) {
             return land(lane, i, field);
         }
-        gather(lane, i, batch.place(), batch.slope(), batch.excess(), batch.stretch(), lane.tau, now);
+        gather(lane, i, batch.start(), lane.tau, now);
         for (int t = 0; t < lane.targets.length; t++) {
             lane.values[t] = lane.targets[t].value(now) + lane.bias[t];
         }
         boolean aimed = h < lane.wanted;
         double grown = h * batch.growth(i);
-        lane.wanted = Math.min(aimed ? Math.max(lane.wanted, grown) : grown, stride * LONGEST * scale / n);
-        return ++lane.steps > MOST_STEPS ? alone(lane, i, field) : GOES_ON;
+        lane.wanted =
+                Math.min(aimed ? Math.max(lane.wanted, grown) : grown, stride * NystromPropagator.LONGEST * scale / n);
+        return ++lane.steps > NystromPropagator.MOST_STEPS ? alone(lane, i, field) : GOES_ON;
     }
 
-    /** The state of a lane into that of its ray. */
-    private void unload(Lane<?> lane, int i) {
-        gather(lane, i, batch.place(), batch.slope(), batch.excess(), batch.stretch(), lane.tau, now);
-        System.arraycopy(now, 0, lane.leg.state(), 0, State.COLUMNS);
-        batch.columns(i, batch.place(), batch.slope(), lane.leg.state());
+    /** The state of a lane into that of its ray: where it is, or was at the start of the step just made. */
+    private static void unload(Lane<?> lane, int i, RayBatch.Rays rays, double tau) {
+        gather(lane, i, rays, tau, lane.leg.state());
+        rays.columns(lane.leg.state(), 0, i);
     }
 
     /** The last trifle onto the target, by a short series. */
     private int land(Lane<?> lane, int i, IndexField field) {
-        unload(lane, i);
+        unload(lane, i, batch.start(), lane.tau);
         double[] y = lane.leg.state();
         Target target = lane.targets[lane.landing];
         flow.polish(y, field, target, rate);
@@ -455,16 +445,13 @@ final class BatchPropagator {
             return lane.landing;
         }
         // two targets together: the engine for one ray sorts them out, from the start of the step
-        double before = lane.tau - batch.steps()[i];
-        gather(lane, i, batch.endPlace(), batch.endSlope(), batch.endExcess(), batch.endStretch(), before, now);
-        System.arraycopy(now, 0, y, 0, State.COLUMNS);
-        batch.columns(i, batch.endPlace(), batch.endSlope(), y);
+        unload(lane, i, batch.end(), lane.tau - batch.steps()[i]);
         return run(lane, field);
     }
 
     /** Leaves the rest of a lane's way to the engine for one ray. */
     private int alone(Lane<?> lane, int i, IndexField field) {
-        unload(lane, i);
+        unload(lane, i, batch.start(), lane.tau);
         return run(lane, field);
     }
 

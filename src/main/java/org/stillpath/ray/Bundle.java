@@ -11,12 +11,6 @@ public final class Bundle {
     /** Rays in a batch: rows of this length fill vector units and stay in the nearest cache. */
     private static final int LANES = 64;
 
-    private static final int MOST_STEPS = 2_000_000;
-    /** A ray whose step shrinks to this part of the scene is stuck. */
-    private static final double SHORTEST = 1e-15;
-    /** A step reaches at most this part of the scene, as that of {@link NystromPropagator} does. */
-    private static final double LONGEST = 0.5;
-
     private final RayBatch batch;
     private final int width;
     private final double scale;
@@ -40,11 +34,7 @@ public final class Bundle {
         this.batch = new RayBatch(pair, LANES, columns, lengths, tolerance, scale);
         this.width = State.size(columns);
         this.scale = scale;
-        this.opening = LONGEST
-                * scale
-                * Math.min(
-                        1,
-                        3 * Math.pow(NystromPropagator.estimateTolerance(tolerance, pair), 1.0 / (pair.lower() + 1)));
+        this.opening = NystromPropagator.LONGEST * scale * Math.min(1, NystromPropagator.opening(tolerance, pair));
     }
 
     /** Number of points at which fields were sampled so far. */
@@ -91,22 +81,16 @@ public final class Bundle {
                         continue;
                     }
                 }
-                double n = Math.sqrt(square(batch.slope()[0][lane])
-                        + square(batch.slope()[1][lane])
-                        + square(batch.slope()[2][lane]));
+                double n = batch.start().index(lane);
                 double wanted = h * (batch.undefined(lane) ? 0.1 : batch.growth(lane));
-                if (!(wanted * n > SHORTEST * scale) || steps > MOST_STEPS) {
+                if (!(wanted * n > NystromPropagator.SHORTEST * scale) || steps > NystromPropagator.MOST_STEPS) {
                     Arrays.fill(states, rays[lane] * width, (rays[lane] + 1) * width, Double.NaN);
                     drop(lane);
                     continue;
                 }
-                batch.steps()[lane] = portion(Math.min(wanted, LONGEST * scale / n), left[lane]);
+                batch.steps()[lane] = portion(Math.min(wanted, NystromPropagator.LONGEST * scale / n), left[lane]);
             }
         }
-    }
-
-    private static double square(double v) {
-        return v * v;
     }
 
     /** A step that leaves no crumbs: all that is left, or half of it, or as wanted. */
@@ -116,19 +100,11 @@ public final class Bundle {
 
     private void end(int lane, double[] states, double tau) {
         int to = rays[lane] * width;
-        double optical = batch.excess()[lane];
-        double stretch = batch.stretch()[lane];
-        for (int i = 0; i < 3; i++) {
-            states[to + i] = batch.place()[i][lane];
-            states[to + 3 + i] = batch.slope()[i][lane];
-        }
-        for (int s = State.COLUMNS, c = 3; s < width; s += State.COLUMN, c += 3) {
-            for (int i = 0; i < 3; i++) {
-                states[to + s + i] = batch.place()[c + i][lane];
-                states[to + s + 3 + i] = batch.slope()[c + i][lane];
-            }
-        }
-        states[to + State.EXCESS] += optical - stretch;
+        RayBatch.Rays rays = batch.start();
+        double stretch = rays.stretch[lane];
+        rays.ray(states, to, lane);
+        rays.columns(states, to, lane);
+        states[to + State.EXCESS] += rays.excess[lane] - stretch;
         states[to + State.LENGTH] += tau + stretch;
         drop(lane);
     }

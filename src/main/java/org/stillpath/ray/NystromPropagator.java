@@ -26,12 +26,14 @@ public final class NystromPropagator implements Propagator {
     private static final double LEAST_FACTOR = 0.1;
     private static final double MOST_FACTOR = 6;
     /** A step reaches at most this part of the scene, so that what is small in it is not stepped over. */
-    private static final double LONGEST = 0.5;
+    static final double LONGEST = 0.5;
     /** An aimed step goes this much beyond its goal, so that the goal lies inside it. */
-    private static final double BEYOND = 1.02;
+    static final double BEYOND = 1.02;
 
-    private static final double SHORTEST = 1e-15;
-    private static final int MOST_STEPS = 2_000_000;
+    /** A step that shrinks to this part of the scene is no step. */
+    static final double SHORTEST = 1e-15;
+
+    static final int MOST_STEPS = 2_000_000;
     private static final int LANDING_ROUNDS = 12;
     private static final int TRAIL_POINTS_PER_STEP = 8;
 
@@ -39,6 +41,7 @@ public final class NystromPropagator implements Propagator {
     private final double stride;
     private final double tolerance;
     private final double estimateTolerance;
+    private final double opening;
     private final NystromPair pair;
     private final Flow flow = new Flow();
     private final double[] x = new double[1];
@@ -85,6 +88,12 @@ public final class NystromPropagator implements Propagator {
         this.scale = scale;
         this.pair = pair;
         this.estimateTolerance = estimateTolerance(tolerance, pair);
+        this.opening = opening(tolerance, pair);
+    }
+
+    /** The first step as a part of the length over which the force changes. */
+    static double opening(double tolerance, NystromPair pair) {
+        return 3 * Math.pow(estimateTolerance(tolerance, pair), 1.0 / (pair.lower() + 1));
     }
 
     /** The pair that serves a tolerance best. */
@@ -232,8 +241,12 @@ public final class NystromPropagator implements Propagator {
     }
 
     private double factor(double error) {
-        double f = SAFETY * Math.pow(error, -1.0 / (pair.lower() + 1));
-        return Math.min(Math.max(f, LEAST_FACTOR), MOST_FACTOR);
+        return held(Math.pow(error, -1.0 / (pair.lower() + 1)));
+    }
+
+    /** What a step is to be multiplied with, from what would just do. */
+    static double held(double growth) {
+        return Math.min(Math.max(SAFETY * growth, LEAST_FACTOR), MOST_FACTOR);
     }
 
     /** Makes the rates at the step's end those of the next start; false where the field is undefined. */
@@ -277,7 +290,7 @@ public final class NystromPropagator implements Propagator {
         // also no faster than the force itself turns the ray
         double force = Math.sqrt(f[0] * f[0] + f[1] * f[1] + f[2] * f[2]);
         double span = Math.min(1 / Math.sqrt(stiffness), n / force);
-        double reach = 3 * Math.pow(estimateTolerance, 1.0 / (pair.lower() + 1)) * span;
+        double reach = opening * span;
         double h = Math.min(longest, reach);
         return suggested < h ? suggested : h;
     }

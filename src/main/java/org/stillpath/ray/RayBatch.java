@@ -12,14 +12,68 @@ import org.stillpath.medium.IndexField;
  * {@code BundleBenchmark} holds the two against each other.
  *
  * <p>A lane's numbers do not depend on the lanes beside it. Besides place, momentum and Jacobi columns it carries ∫(n² − 1) dτ,
- * the optical length less τ, and if asked for, which costs a root a sample, ∫(n − 1) dτ, the length less τ. Mutable, one a thread; nothing is allocated once it is made.
+ * the optical length less τ, and if asked for, which costs a root a sample, ∫(n − 1) dτ, the length less τ.
+ *
+ * <p>Mutable, one a thread; nothing is allocated once it is made.
  */
 final class RayBatch {
-    private static final double SAFETY = 0.9;
-    private static final double LEAST_FACTOR = 0.1;
-    private static final double MOST_FACTOR = 6;
     private static final double REFUSED = Double.MAX_VALUE;
     private static final long ONE = Double.doubleToRawLongBits(1);
+
+    /** Where rays are: rows over the lanes. */
+    static final class Rays {
+        /** Places by component; those of the columns follow. */
+        final double[][] place;
+        /** Momenta likewise. */
+        final double[][] slope;
+        /** ∫(n² − 1) dτ. */
+        final double[] excess;
+        /** ∫(n − 1) dτ, 0 if it is not carried. */
+        final double[] stretch;
+
+        private Rays(int components, int capacity) {
+            place = new double[components][capacity];
+            slope = new double[components][capacity];
+            excess = new double[capacity];
+            stretch = new double[capacity];
+        }
+
+        /** Copies a lane of other rays into one of these. */
+        private void copy(Rays other, int from, int to) {
+            for (int c = 0; c < place.length; c++) {
+                place[c][to] = other.place[c][from];
+                slope[c][to] = other.slope[c][from];
+            }
+            excess[to] = other.excess[from];
+            stretch[to] = other.stretch[from];
+        }
+
+        /** Length of a lane's momentum. */
+        double index(int lane) {
+            double x = slope[0][lane];
+            double y = slope[1][lane];
+            double z = slope[2][lane];
+            return Math.sqrt(x * x + y * y + z * z);
+        }
+
+        /** Copies the columns of a lane into a state that begins at {@code offset}. */
+        void columns(double[] state, int offset, int lane) {
+            for (int s = offset + State.COLUMNS, c = 3; c < place.length; s += State.COLUMN, c += 3) {
+                for (int i = 0; i < 3; i++) {
+                    state[s + i] = place[c + i][lane];
+                    state[s + 3 + i] = slope[c + i][lane];
+                }
+            }
+        }
+
+        /** Copies place and momentum of a lane likewise. */
+        void ray(double[] state, int offset, int lane) {
+            for (int i = 0; i < 3; i++) {
+                state[offset + i] = place[i][lane];
+                state[offset + 3 + i] = slope[i][lane];
+            }
+        }
+    }
 
     private final NystromPair pair;
     private final int components;
@@ -29,12 +83,8 @@ final class RayBatch {
     private final double shrink;
     private final double caution;
 
-    private double[][] place;
-    private double[][] slope;
-    private double[] excess;
-    private double[][] endPlace;
-    private double[][] endSlope;
-    private double[] endExcess;
+    private Rays start;
+    private Rays end;
     private final double[] h;
     private final Samples[] samples;
     /** Forces by component, then stage; the last component is n² − 1. */
@@ -48,8 +98,6 @@ final class RayBatch {
     private final double[] growth;
     private final Samples some;
     private final boolean lengths;
-    private double[] stretch;
-    private double[] endStretch;
     /** n − 1 by stage. */
     private final double[][] more;
 
@@ -66,8 +114,6 @@ final class RayBatch {
     RayBatch(NystromPair pair, int capacity, int columns, boolean lengths, double tolerance, double scale) {
         this.pair = pair;
         this.lengths = lengths;
-        this.stretch = new double[capacity];
-        this.endStretch = new double[capacity];
         this.more = new double[pair.stages()][lengths ? capacity : 0];
         this.components = 3 + 3 * columns;
         this.order = columns > 0 ? Order.HESSIAN : Order.GRADIENT;
@@ -75,12 +121,8 @@ final class RayBatch {
         this.allowed = NystromPropagator.estimateTolerance(tolerance, pair);
         this.caution = NystromPropagator.CAUTION * tolerance;
         this.shrink = -0.5 / (pair.lower() + 1);
-        this.place = new double[components][capacity];
-        this.slope = new double[components][capacity];
-        this.excess = new double[capacity];
-        this.endPlace = new double[components][capacity];
-        this.endSlope = new double[components][capacity];
-        this.endExcess = new double[capacity];
+        this.start = new Rays(components, capacity);
+        this.end = new Rays(components, capacity);
         this.h = new double[capacity];
         this.samples = new Samples[pair.stages()];
         this.some = new Samples(capacity);
@@ -113,41 +155,14 @@ final class RayBatch {
         return evaluations;
     }
 
-    /** Places by component, then lane; those of the columns follow. */
-    double[][] place() {
-        return place;
+    /** Where the rays are. */
+    Rays start() {
+        return start;
     }
 
-    /** Momenta likewise. */
-    double[][] slope() {
-        return slope;
-    }
-
-    /** ∫(n² − 1) dτ by lane. */
-    double[] excess() {
-        return excess;
-    }
-
-    /** ∫(n − 1) dτ by lane, 0 if it is not carried. */
-    double[] stretch() {
-        return stretch;
-    }
-
-    /** Places at the end of the step just made; after {@link #settle}, at its start. Likewise the others. */
-    double[][] endPlace() {
-        return endPlace;
-    }
-
-    double[][] endSlope() {
-        return endSlope;
-    }
-
-    double[] endExcess() {
-        return endExcess;
-    }
-
-    double[] endStretch() {
-        return endStretch;
+    /** Where the step just made ends; after {@link #settle}, where it started. */
+    Rays end() {
+        return end;
     }
 
     /** A component of the force at the start of the step just made; component 3 is n² − 1. */
@@ -160,16 +175,6 @@ final class RayBatch {
         return k[component < 3 ? component : components][pair.stages() - 1][lane];
     }
 
-    /** Copies the Jacobi columns of a lane into a state. */
-    void columns(int lane, double[][] places, double[][] slopes, double[] state) {
-        for (int s = State.COLUMNS, c = 3; c < components; s += State.COLUMN, c += 3) {
-            for (int i = 0; i < 3; i++) {
-                state[s + i] = places[c + i][lane];
-                state[s + 3 + i] = slopes[c + i][lane];
-            }
-        }
-    }
-
     /** The next steps by lane, to be set by the caller. */
     double[] steps() {
         return h;
@@ -177,7 +182,7 @@ final class RayBatch {
 
     /** What the step just made is to be multiplied with for the next one, or for a second try. */
     double growth(int lane) {
-        return Math.min(Math.max(SAFETY * growth[lane], LEAST_FACTOR), MOST_FACTOR);
+        return NystromPropagator.held(growth[lane]);
     }
 
     /** Whether the step just made by a lane is good enough; false also where the field was undefined. */
@@ -213,17 +218,17 @@ final class RayBatch {
     /** Puts a ray into a lane; {@link #prepare} must follow. */
     void load(int lane, double[] state, int offset, double step) {
         for (int c = 0; c < 3; c++) {
-            place[c][lane] = state[offset + c];
-            slope[c][lane] = state[offset + 3 + c];
+            start.place[c][lane] = state[offset + c];
+            start.slope[c][lane] = state[offset + 3 + c];
         }
         for (int c = 3, s = State.COLUMNS; c < components; c += 3, s += State.COLUMN) {
             for (int i = 0; i < 3; i++) {
-                place[c + i][lane] = state[offset + s + i];
-                slope[c + i][lane] = state[offset + s + 3 + i];
+                start.place[c + i][lane] = state[offset + s + i];
+                start.slope[c + i][lane] = state[offset + s + 3 + i];
             }
         }
-        excess[lane] = 0;
-        stretch[lane] = 0;
+        start.excess[lane] = 0;
+        start.stretch[lane] = 0;
         h[lane] = step;
         lanes = Math.max(lanes, lane + 1);
     }
@@ -234,15 +239,10 @@ final class RayBatch {
         if (lane == lanes) {
             return;
         }
-        for (int c = 0; c < components; c++) {
-            place[c][lane] = place[c][lanes];
-            slope[c][lane] = slope[c][lanes];
-        }
+        start.copy(start, lanes, lane);
         for (int c = 0; c <= components; c++) {
             k[c][0][lane] = k[c][0][lanes];
         }
-        excess[lane] = excess[lanes];
-        stretch[lane] = stretch[lanes];
         if (lengths) {
             more[0][lane] = more[0][lanes];
         }
@@ -256,30 +256,43 @@ final class RayBatch {
         if (!pair.last() || count == 0) {
             return;
         }
-        for (int i = 0; i < count; i++) {
-            for (int c = 0; c < 3; c++) {
-                at[c][i] = place[c][fresh[i]];
+        for (int c = 0; c < components; c++) {
+            for (int i = 0; i < count; i++) {
+                at[c][i] = start.place[c][fresh[i]];
             }
         }
         field.sample(at[0], at[1], at[2], count, order, some);
         evaluations += count;
+        scatter(some.gx, fresh, count, k[0][0]);
+        scatter(some.gy, fresh, count, k[1][0]);
+        scatter(some.gz, fresh, count, k[2][0]);
+        scatter(some.value, fresh, count, k[components][0]);
+        if (lengths) {
+            Rows.lessOne(some.value, count, sum);
+            scatter(sum, fresh, count, more[0]);
+        }
+        for (int c = 3; c < components; c++) {
+            bend(c, at, count, sum);
+            scatter(sum, fresh, count, k[c][0]);
+        }
+    }
+
+    private static void scatter(double[] from, int[] lanes, int count, double[] to) {
         for (int i = 0; i < count; i++) {
-            int lane = fresh[i];
-            k[0][0][lane] = some.gx[i];
-            k[1][0][lane] = some.gy[i];
-            k[2][0][lane] = some.gz[i];
-            k[components][0][lane] = some.value[i];
-            if (lengths) {
-                more[0][lane] = some.value[i] / (1 + Math.sqrt(1 + some.value[i]));
-            }
-            for (int c = 3; c < components; c += 3) {
-                double x = place[c][lane];
-                double y = place[c + 1][lane];
-                double z = place[c + 2][lane];
-                k[c][0][lane] = Math.fma(some.hxz[i], z, Math.fma(some.hxy[i], y, some.hxx[i] * x));
-                k[c + 1][0][lane] = Math.fma(some.hyz[i], z, Math.fma(some.hyy[i], y, some.hxy[i] * x));
-                k[c + 2][0][lane] = Math.fma(some.hzz[i], z, Math.fma(some.hyz[i], y, some.hxz[i] * x));
-            }
+            to[lanes[i]] = from[i];
+        }
+    }
+
+    /** The rate of a component of a column: its row of the Hessian sampled last, times the column. */
+    private void bend(int component, double[][] where, int n, double[] out) {
+        int first = component - component % 3;
+        double[] x = where[first];
+        double[] y = where[first + 1];
+        double[] z = where[first + 2];
+        switch (component % 3) {
+            case 0 -> Rows.product(some.hxx, x, some.hxy, y, some.hxz, z, n, out);
+            case 1 -> Rows.product(some.hxy, x, some.hyy, y, some.hyz, z, n, out);
+            default -> Rows.product(some.hxz, x, some.hyz, y, some.hzz, z, n, out);
         }
     }
 
@@ -287,7 +300,7 @@ final class RayBatch {
     void step(IndexField field) {
         int n = lanes;
         if (!pair.last()) {
-            sample(field, place, 0, n);
+            sample(field, start.place, 0, n);
         }
         int stages = pair.stages();
         for (int s = 1; s < stages; s++) {
@@ -295,7 +308,7 @@ final class RayBatch {
             int[] used = pair.used()[s];
             for (int c = 0; c < components; c++) {
                 Rows.sum(a, used, k[c], n, sum);
-                Rows.place(place[c], slope[c], sum, h, pair.c()[s], n, at[c]);
+                Rows.place(start.place[c], start.slope[c], sum, h, pair.c()[s], n, at[c]);
             }
             sample(field, at, s, n);
         }
@@ -304,13 +317,13 @@ final class RayBatch {
         for (int c = 0; c < components; c++) {
             // the last stage of such pairs stands where the step ends
             if (pair.last()) {
-                System.arraycopy(at[c], 0, endPlace[c], 0, n);
+                System.arraycopy(at[c], 0, end.place[c], 0, n);
             } else {
                 Rows.sum(pair.b(), pair.inPlace(), k[c], n, sum);
-                Rows.place(place[c], slope[c], sum, h, 1, n, endPlace[c]);
+                Rows.place(start.place[c], start.slope[c], sum, h, 1, n, end.place[c]);
             }
             Rows.sum(pair.bp(), pair.inMomentum(), k[c], n, sum);
-            Rows.slope(slope[c], sum, h, n, endSlope[c]);
+            Rows.slope(start.slope[c], sum, h, n, end.slope[c]);
             if (c < 3) {
                 Rows.sum(pair.be(), pair.usedInPlace(), k[c], n, sum);
                 Rows.addSquare(sum, 1 / (scale * allowed), n, placeError);
@@ -320,12 +333,12 @@ final class RayBatch {
         }
         double[][] e = k[components];
         Rows.sum(pair.bp(), pair.inMomentum(), e, n, sum);
-        Rows.slope(excess, sum, h, n, endExcess);
+        Rows.slope(start.excess, sum, h, n, end.excess);
         Rows.sum(pair.bpe(), pair.usedInMomentum(), e, n, sum);
         Rows.addSquare(sum, 1 / (scale * allowed), n, slopeError);
         if (lengths) {
             Rows.sum(pair.bp(), pair.inMomentum(), more, n, sum);
-            Rows.slope(stretch, sum, h, n, endStretch);
+            Rows.slope(start.stretch, sum, h, n, end.stretch);
         }
         Rows.error(placeError, slopeError, h, n, error);
         for (int i = 0; i < n; i++) {
@@ -342,27 +355,16 @@ final class RayBatch {
         if (lengths && pair.bp()[s] != 0) {
             Rows.lessOne(samples[s].value, n, more[s]);
         }
-        for (int c = 3; c < components; c += 3) {
-            Rows.product(some.hxx, where[c], some.hxy, where[c + 1], some.hxz, where[c + 2], n, k[c][s]);
-            Rows.product(some.hxy, where[c], some.hyy, where[c + 1], some.hyz, where[c + 2], n, k[c + 1][s]);
-            Rows.product(some.hxz, where[c], some.hyz, where[c + 1], some.hzz, where[c + 2], n, k[c + 2][s]);
+        for (int c = 3; c < components; c++) {
+            bend(c, where, n, k[c][s]);
         }
     }
 
     /** Makes the ends of the step just made the new starts, but for lanes whose step was not good. */
     void settle() {
-        double[][] keepPlace = place;
-        double[][] keepSlope = slope;
-        double[] keepExcess = excess;
-        place = endPlace;
-        slope = endSlope;
-        excess = endExcess;
-        endPlace = keepPlace;
-        endSlope = keepSlope;
-        endExcess = keepExcess;
-        double[] keepStretch = stretch;
-        stretch = endStretch;
-        endStretch = keepStretch;
+        Rays ended = end;
+        end = start;
+        start = ended;
         int last = pair.stages() - 1;
         if (pair.last()) {
             Samples kept = samples[0];
@@ -383,12 +385,7 @@ final class RayBatch {
         }
         for (int i = 0; i < lanes; i++) {
             if (!good(i)) {
-                for (int c = 0; c < components; c++) {
-                    place[c][i] = endPlace[c][i];
-                    slope[c][i] = endSlope[c][i];
-                }
-                excess[i] = endExcess[i];
-                stretch[i] = endStretch[i];
+                start.copy(end, i, i);
                 for (int c = 0; c <= components && pair.last(); c++) {
                     k[c][0][i] = k[c][last][i];
                 }

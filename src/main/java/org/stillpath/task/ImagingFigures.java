@@ -7,7 +7,6 @@ import java.util.Optional;
 import java.util.stream.IntStream;
 import org.stillpath.unit.Display;
 import org.stillpath.wave.Wavefront;
-import org.stillpath.wave.Zernike;
 import org.stillpath.wave.ZernikeFit;
 
 /** Figures of what real rays over the pupil say: each answers one question about the image. */
@@ -283,16 +282,6 @@ final class ImagingFigures {
                 flat,
                 Math.min(
                         BARS, v.judged().fit().map(f -> f.coefficients().length).orElse(BARS)));
-        double[] c = fit.coefficients();
-        double wavelength = wavelengths[v.colour()];
-        int first = Math.min(4, c.length);
-        int largest = first;
-        for (int j = first; j <= c.length; j++) {
-            largest = Math.abs(c[j - 1]) > Math.abs(c[largest - 1]) ? j : largest;
-        }
-        String answer = "The largest term" + fieldWords(v) + " is "
-                + Zernike.mode(largest).name() + ": "
-                + WaveFigures.waves(c[largest - 1], wavelength);
-        return WaveFigures.zernike(answer, fit, first, wavelength);
+        return WaveFigures.zernike(fieldWords(v), fit, wavelengths[v.colour()]);
     }
 }

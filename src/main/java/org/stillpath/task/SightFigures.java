@@ -523,6 +523,16 @@ final class SightFigures {
 
     // ---- transfer
 
+    /** The mark of an image: its sort, and its number where there are several. */
+    private static Mark image(Found f, int number, double x, double y) {
+        List<ImageRow> images = f.images();
+        return new Mark(
+                images.get(number).orientation().equals("erect") ? Style.ERECT : Style.INVERTED,
+                images.size() == 1 ? "" : Integer.toString(number),
+                x,
+                y);
+    }
+
     /** The foot and the top of what stands at the target, metres above the datum. */
     private double[] object(Found f) {
         if (f.span().isPresent()) {
@@ -600,14 +610,8 @@ final class SightFigures {
             curves.add(new Curve(Style.GUIDE, "", new double[] {j[0], j[0]}, new double[] {j[1], j[2]}));
             marks.add(new Mark(Style.NOTE, "jump", j[0], 0.5 * (j[1] + j[2])));
         }
-        int count = f.images().size();
-        for (int i = 0; i < count; i++) {
-            ImageRow row = f.images().get(i);
-            marks.add(new Mark(
-                    row.orientation().equals("erect") ? Style.ERECT : Style.INVERTED,
-                    count == 1 ? "" : Integer.toString(i),
-                    row.launch(),
-                    f.height()));
+        for (int i = 0; i < f.images().size(); i++) {
+            marks.add(image(f, i, f.images().get(i).launch(), f.height()));
         }
         for (Shape s : shapes) {
             double left = Math.max(s.x()[0], across.low());
@@ -744,14 +748,8 @@ final class SightFigures {
         seen.addAll(gaps(curve, -wide, wide, up, false));
         List<Mark> marks = new ArrayList<>();
         double side = 0.93 * half;
-        int count = f.images().size();
-        for (int i = 0; i < count; i++) {
-            ImageRow row = f.images().get(i);
-            marks.add(new Mark(
-                    row.orientation().equals("erect") ? Style.ERECT : Style.INVERTED,
-                    count == 1 ? "" : Integer.toString(i),
-                    side,
-                    row.launch()));
+        for (int i = 0; i < f.images().size(); i++) {
+            marks.add(image(f, i, side, f.images().get(i).launch()));
         }
         Chord aim = new Chord(radius, eye, f.distance(), f.height());
         List<Mark> aimed = List.of(new Mark(Style.ERECT, "target", side, aim.elevation()));

@@ -12,6 +12,8 @@ import org.stillpath.wave.ZernikeFit;
 /** The figures of a wavefront, for every task that has one. */
 final class WaveFigures {
     private static final int SIDE = 101;
+    /** Noll's number of the first term that is an aberration: piston and tilts come before it. */
+    private static final int FIRST = 4;
     /** Bars that are always drawn where there are no more. */
     private static final int FEW = 4;
     /** Size of a term over the largest below which it has no bar. */
@@ -93,19 +95,24 @@ final class WaveFigures {
     }
 
     /**
-     * The bars {@code zernike}: each term from Noll's number {@code first} on that is not next to nothing, and what all of them
+     * The bars {@code zernike}: each term behind piston and tilt that is not next to nothing, and what all of them
      * leave.
      *
-     * @param answer the title
-     * @param first Noll's number of the first bar; those before it were removed
+     * @param where what the title says of the place behind "the largest term", empty or with a blank first
      */
-    static BarFigure zernike(String answer, ZernikeFit fit, int first, double wavelength) {
+    static BarFigure zernike(String where, ZernikeFit fit, double wavelength) {
         double[] c = fit.coefficients();
         List<BarFigure.Bar> bars = new ArrayList<>();
-        double largest = fit.residual();
+        int first = Math.min(FIRST, c.length);
+        int most = first;
         for (int j = first; j <= c.length; j++) {
-            largest = Math.max(largest, Math.abs(c[j - 1]));
+            most = Math.abs(c[j - 1]) > Math.abs(c[most - 1]) ? j : most;
         }
+        String answer = c.length < FIRST
+                ? "The sampling tells no aberrations apart"
+                : "The largest term" + where + " is " + Zernike.mode(most).name() + ", "
+                        + waves(c[most - 1], wavelength) + " rms";
+        double largest = Math.max(fit.residual(), Math.abs(c[most - 1]));
         for (int j = first; j <= c.length; j++) {
             if (c.length - first > FEW && Math.abs(c[j - 1]) < SMALL * largest) {
                 continue;

@@ -39,9 +39,6 @@ final class WindowRun {
     /** A sampling is coarse where it changes the rms by this part of it, and of a wave. */
     private static final double COARSE = 0.01;
 
-    /** Noll's number of the first term that is not piston or tilt. */
-    private static final int FIRST = 4;
-
     private static final double EPSILON = 0x1p-53;
 
     private final Scene scene;
@@ -142,7 +139,7 @@ final class WindowRun {
                             .temperature()
                             .ifPresent(drawn::add);
                 case "wavefront" -> drawn.add(mapped(s));
-                default -> drawn.add(bars(fit, s.wavelength()));
+                default -> drawn.add(WaveFigures.zernike("", fit, s.wavelength()));
             }
         }
         return result(headline, tables, drawn, accurate);
@@ -454,19 +451,6 @@ final class WindowRun {
                 lost,
                 beam.pupilRadius(),
                 s.wavelength());
-    }
-
-    private static Figure bars(ZernikeFit fit, double wavelength) {
-        double[] c = fit.coefficients();
-        int largest = Math.min(FIRST, c.length);
-        for (int j = FIRST; j <= c.length; j++) {
-            largest = Math.abs(c[j - 1]) > Math.abs(c[largest - 1]) ? j : largest;
-        }
-        String answer = c.length < FIRST
-                ? "The sampling tells no aberrations apart"
-                : "The largest term is " + Zernike.mode(largest).name() + ", "
-                        + WaveFigures.waves(c[largest - 1], wavelength) + " rms";
-        return WaveFigures.zernike(answer, fit, FIRST, wavelength);
     }
 
     // ---- tables
